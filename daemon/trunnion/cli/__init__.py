@@ -1,0 +1,1 @@
+"""Command line: one file a group of commands."""

@@ -1,0 +1,1 @@
+"""Files: text on disk to typed values, errors with line numbers."""

@@ -1,0 +1,1 @@
+"""Mount: what the antenna is, two hinges and their travel."""

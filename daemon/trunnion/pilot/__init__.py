@@ -1,0 +1,1 @@
+"""Pilot: what to do now, one state machine. Standard library only."""

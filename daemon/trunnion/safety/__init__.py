@@ -1,0 +1,1 @@
+"""Safety: what may never happen. Standard library only."""

@@ -1,0 +1,1 @@
+"""Service: all that touches the outside."""

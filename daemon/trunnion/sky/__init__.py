@@ -1,0 +1,1 @@
+"""Sky: where a target stands, seen from the station."""

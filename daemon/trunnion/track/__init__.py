@@ -1,0 +1,1 @@
+"""Track: which joint path follows a target best."""

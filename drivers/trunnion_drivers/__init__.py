@@ -1,0 +1,1 @@
+"""Drivers: one package a kind of hardware."""

@@ -1,0 +1,1 @@
+"""Conformance: the test kit that any driver must pass."""

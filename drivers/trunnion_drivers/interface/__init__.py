@@ -1,0 +1,1 @@
+"""Interface: the contract of a driver."""

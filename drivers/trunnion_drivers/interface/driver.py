@@ -1,0 +1,119 @@
+"""The contract of a driver: construct without hardware, open, read, move, halt, close.
+
+The public methods here own the life cycle and the checks; a driver fills the hooks whose names
+begin with an underscore. A driver is called from one thread at a time.
+"""
+
+from abc import ABC, abstractmethod
+from collections.abc import Mapping
+from math import isfinite
+from typing import ClassVar, Self
+
+from trunnion_drivers.interface.errors import Garbled, WrongState
+from trunnion_drivers.interface.values import (
+    Capabilities,
+    Clock,
+    DriverMotion,
+    DriverReading,
+    MountFacts,
+)
+
+
+class Driver(ABC):
+    """One mount at the end of one link."""
+
+    capabilities: ClassVar[Capabilities] = Capabilities()
+
+    def __init__(self, facts: MountFacts, clock: Clock) -> None:
+        self._facts = facts
+        self._clock = clock
+        self._is_open = False
+
+    @classmethod
+    @abstractmethod
+    def from_settings(cls, settings: Mapping[str, object], facts: MountFacts, clock: Clock) -> Self:
+        """Build from the station file's `driver:` section less `kind`; touches no hardware.
+
+        Raises BadSettings with every problem at once.
+        """
+
+    @property
+    def is_open(self) -> bool:
+        """Whether the link is open."""
+        return self._is_open
+
+    def open(self) -> None:
+        """Open the link; orders no motion. Does nothing when open. Raises LinkLost."""
+        if not self._is_open:
+            self._open()
+            self._is_open = True
+
+    def close(self) -> None:
+        """Close the link; idempotent, never raises for a link that is already gone."""
+        if self._is_open:
+            self._is_open = False
+            self._close()
+
+    def read(self) -> DriverReading:
+        """Ask the mount where it is. Raises LinkLost, NoReply, Garbled, WrongState."""
+        self._must_be_open("read")
+        reading = self._read()
+        if not (isfinite(reading.first_deg) and isfinite(reading.second_deg)):
+            raise Garbled(f"expected two finite joint angles, got {reading[1:3]}")
+        return reading
+
+    def move(self, motion: DriverMotion) -> None:
+        """Send the joints there. Raises LinkLost, NoReply, Garbled, Refused, WrongState.
+
+        Angles outside the travel are refused here too, whoever asks.
+        """
+        self._must_be_open("move")
+        self._must_be_within_travel(motion)
+        self._move(motion)
+
+    def halt(self) -> None:
+        """Bring both joints to rest at full deceleration; may be repeated."""
+        self._must_be_open("halt")
+        self._halt()
+
+    def cut_power(self) -> None:
+        """Remove power from the actuators, where the hardware has such an output."""
+        if not self.capabilities.cuts_power:
+            raise WrongState("this driver has no power-cut output")
+        self._must_be_open("cut power")
+        self._cut_power()
+
+    @abstractmethod
+    def _open(self) -> None: ...
+
+    @abstractmethod
+    def _close(self) -> None: ...
+
+    @abstractmethod
+    def _read(self) -> DriverReading: ...
+
+    @abstractmethod
+    def _move(self, motion: DriverMotion) -> None: ...
+
+    @abstractmethod
+    def _halt(self) -> None: ...
+
+    def _cut_power(self) -> None:
+        raise WrongState("this driver says it can cut power, and does not")
+
+    def _must_be_open(self, call: str) -> None:
+        if not self._is_open:
+            raise WrongState(f"{call}: expected an open driver, got a closed one")
+
+    def _must_be_within_travel(self, motion: DriverMotion) -> None:
+        if not all(isfinite(value) for value in motion):
+            raise WrongState(f"move: expected finite values, got {motion}")
+        for name, angle, facts in (
+            ("first", motion.first_deg, self._facts.first),
+            ("second", motion.second_deg, self._facts.second),
+        ):
+            if not facts.lower_deg <= angle <= facts.upper_deg:
+                raise WrongState(
+                    f"move: expected the {name} joint within "
+                    f"{facts.lower_deg}…{facts.upper_deg}°, got {angle}°"
+                )

@@ -1,0 +1,1 @@
+"""Simulator: a mount with inertia and limits."""
