@@ -1,0 +1,1 @@
+"""Tests: they mirror the rooms; published/ holds the checks against outside sources."""
