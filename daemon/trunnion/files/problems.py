@@ -37,8 +37,10 @@ class FileProblems(Exception):  # noqa: N818 - it carries problems, and is named
 def did_you_mean(word: str, known: Iterable[str]) -> str:
     """Return the end of a sentence that names the nearest known word, or nothing if none is near.
 
-    Upper and lower case do not matter.
+    A word that lacks only its ending (`rate` for `rate_deg_s`) is near; upper and lower case do not
+    matter.
     """
     spelt = {name.casefold(): name for name in known}
-    near = get_close_matches(word.casefold(), spelt, n=1, cutoff=0.6)
+    begun = [name for name in spelt if name.startswith(f"{word.casefold()}_")]
+    near = begun or get_close_matches(word.casefold(), spelt, n=1, cutoff=0.75)
     return f"; did you mean {spelt[near[0]]!r}?" if near else ""
