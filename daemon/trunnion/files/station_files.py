@@ -1,0 +1,47 @@
+"""Station file: where the other files of the station are."""
+
+from pathlib import Path
+from typing import Annotated
+
+from pydantic import BeforeValidator, WithJsonSchema, field_validator
+
+from trunnion.files.fields import FilePath
+from trunnion.files.section import Section
+
+_LONGEST_SOCKET_PATH_BYTES = 107  # sun_path of unix(7), less the byte that ends it
+
+
+def _one_or_many(value: object) -> object:
+    return (value,) if isinstance(value, str) else value
+
+
+class FilesSection(Section):
+    """Paths of the station's other files; a relative one begins at the station file's folder."""
+
+    plan: FilePath = Path("plan.yaml")
+    """The pass plan."""
+    elements: Annotated[
+        tuple[FilePath, ...],
+        BeforeValidator(_one_or_many),
+        WithJsonSchema(
+            {"anyOf": [{"type": "string"}, {"type": "array", "items": {"type": "string"}}]}
+        ),
+    ] = ()
+    """Orbit elements: a file, a folder of them, or a list of both."""
+    records: FilePath = Path("records.sqlite3")
+    """The database in which every contact leaves its summary and its samples."""
+    latch: FilePath = Path("emergency-stop.latch")
+    """The file that remembers an emergency stop over a restart."""
+    control_socket: FilePath = Path("control.sock")
+    """The socket by which `trunnion status`, `stop` and the others reach the running daemon."""
+
+    @field_validator("control_socket")
+    @classmethod
+    def _short_enough_for_a_socket(cls, control_socket: Path) -> Path:
+        length = len(bytes(control_socket))
+        if length > _LONGEST_SOCKET_PATH_BYTES:
+            raise ValueError(
+                f"expected a path of at most {_LONGEST_SOCKET_PATH_BYTES} bytes, the longest that "
+                f"a socket can have, got {length}; give a shorter absolute path"
+            )
+        return control_socket

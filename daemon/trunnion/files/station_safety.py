@@ -1,0 +1,88 @@
+"""Station file: what may never happen, and what counts as too old or too late."""
+
+from typing import Annotated
+
+from pydantic import Field, ValidationInfo, field_validator
+
+from trunnion.files.fields import (
+    ElevationDeg,
+    FilePath,
+    Interval,
+    Name,
+    Pair,
+    PositiveFloat,
+    listed,
+)
+from trunnion.files.section import Section
+
+_LEGAL_TRANSMIT_FLOOR_DEG = 3.0  # No. 21.14 of the ITU Radio Regulations
+
+
+class KeepOutSection(Section):
+    """A box of the sky that the beam's centre never enters: a mast, a roof door."""
+
+    name: Name
+    """What is there, for the operator to read when it keeps the antenna away."""
+    azimuth_deg: Pair
+    """From and to, clockwise, in degrees of azimuth from 0 to 360; may cross north: [350, 20]."""
+    elevation_deg: Interval
+    """Lower and upper edge in degrees of elevation."""
+
+    @field_validator("azimuth_deg")
+    @classmethod
+    def _within_a_turn(cls, azimuth_deg: tuple[float, float]) -> tuple[float, float]:
+        begin, end = azimuth_deg
+        if not (0 <= begin <= 360 and 0 <= end <= 360) or begin == end:
+            raise ValueError(
+                f"expected two different azimuths of 0 to 360, got {listed(azimuth_deg)}"
+            )
+        return azimuth_deg
+
+    @field_validator("elevation_deg")
+    @classmethod
+    def _within_the_sky(cls, elevation_deg: tuple[float, float]) -> tuple[float, float]:
+        if min(elevation_deg) < -90 or max(elevation_deg) > 90:
+            raise ValueError(f"expected elevations of -90 to 90, got {listed(elevation_deg)}")
+        return elevation_deg
+
+
+class SafetySection(Section):
+    """The limits that the gate holds against everybody, the pass plan included.
+
+    A software limit is no substitute for hard-wired limit switches and a hard-wired emergency stop.
+    """
+
+    elevation_floor_deg: ElevationDeg
+    """Elevation in degrees below which the beam's centre never goes, whatever is asked."""
+    horizon_mask: FilePath | None = None
+    """Path of a text file with azimuth and elevation of the obstacles round the station; the beam's
+    centre stays above it as well."""
+    transmit_floor_deg: ElevationDeg = Field(
+        default_factory=lambda data: max(
+            _LEGAL_TRANSMIT_FLOOR_DEG, data.get("elevation_floor_deg", 90.0)
+        )
+    )
+    """Elevation in degrees below which transmitting is never permitted; by default 3 (No. 21.14 of
+    the ITU Radio Regulations) or the elevation floor, whichever is higher. Raise it to what your
+    licence says."""
+    keep_outs: tuple[KeepOutSection, ...] = ()
+    """Boxes of the sky that the beam's centre never enters, nor crosses on its way."""
+    reading_max_age_s: Annotated[float, Field(gt=0, le=10)] = 1.0
+    """Seconds after which the mount's last reading is too old to move by: the mount is halted."""
+    turn_max_lateness_s: Annotated[float, Field(gt=0, le=10)] = 0.5
+    """Seconds by which a control turn may be late; beyond that the mount is halted."""
+    element_max_age_days: PositiveFloat = 7.0
+    """Days from the epoch of orbit elements after which nothing is tracked by them."""
+    stow_on_exit: bool = False
+    """Whether the mount moves to its stow position when the daemon is told to end; otherwise it
+    halts where it is."""
+
+    @field_validator("transmit_floor_deg")
+    @classmethod
+    def _not_below_the_floor(cls, transmit_floor_deg: float, info: ValidationInfo) -> float:
+        floor_deg = info.data.get("elevation_floor_deg", -90.0)
+        if transmit_floor_deg < floor_deg:
+            raise ValueError(
+                f"expected the elevation floor, {floor_deg:g}, or more, got {transmit_floor_deg:g}"
+            )
+        return transmit_floor_deg
