@@ -25,7 +25,7 @@ def test_everything_wrong_is_told_with_its_line(tmp_path: Path) -> None:
     with pytest.raises(FileProblems) as caught:
         load_mask(file)
     assert [(p.line, p.message) for p in caught.value.problems] == [
-        (1, "expected an azimuth of 0 to 360, got 370"),
+        (1, "expected an azimuth from 0 to below 360, got 370"),
         (2, "expected an elevation of -90 to 90, got 95"),
         (3, "expected azimuth and elevation in degrees, got '30'"),
         (4, "expected azimuth and elevation in degrees, got '40 x'"),
@@ -48,4 +48,4 @@ def test_any_text_is_a_mask_or_a_list_of_problems(
     file.write_text(text, encoding="utf-8", errors="replace")
     with suppress(FileProblems):
         points = load_mask(file)
-        assert all(0 <= azimuth <= 360 and -90 <= elevation <= 90 for azimuth, elevation in points)
+        assert all(0 <= azimuth < 360 and -90 <= elevation <= 90 for azimuth, elevation in points)

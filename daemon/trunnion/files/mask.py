@@ -16,7 +16,7 @@ MaskPoints = tuple[tuple[float, float], ...]
 def load_mask(path: Path) -> MaskPoints:
     """Return the points of a horizon mask: pairs of azimuth and elevation in degrees.
 
-    Azimuths are 0 to 360 and never decrease; two points at one azimuth make a step. A line may end
+    Azimuths go from 0 to below 360 and never decrease; two points at one azimuth make a step. A line may end
     with a comment after `#`; the numbers stand apart by blanks or a comma. Raises FileProblems with
     everything that is wrong with it.
     """
@@ -47,8 +47,8 @@ def _lines_with_content(text: str) -> Iterator[tuple[int, str]]:
 
 def _next_point(text: str, earlier: list[tuple[float, float]]) -> tuple[float, float]:
     azimuth_deg, elevation_deg = _two_numbers(text)
-    if not 0 <= azimuth_deg <= 360:
-        raise ValueError(f"expected an azimuth of 0 to 360, got {azimuth_deg:g}")
+    if not 0 <= azimuth_deg < 360:
+        raise ValueError(f"expected an azimuth from 0 to below 360, got {azimuth_deg:g}")
     if not -90 <= elevation_deg <= 90:
         raise ValueError(f"expected an elevation of -90 to 90, got {elevation_deg:g}")
     if earlier and azimuth_deg < earlier[-1][0]:
