@@ -19,7 +19,7 @@ class Path(Protocol):
         ...
 
 
-@dataclass(frozen=True, slots=True)
+@dataclass(frozen=True, slots=True, eq=False)
 class Assignment:
     """One stretch of time in which one contact has the mount.
 

@@ -1,0 +1,55 @@
+"""Where in the sky the boresight may be: above the floor and the horizon, outside the keep-outs."""
+
+from dataclasses import dataclass
+
+from trunnion.mount.horizon import HorizonMask
+
+
+@dataclass(frozen=True, slots=True)
+class Sector:
+    """A box of the sky that the boresight stays out of, edges included (degrees).
+
+    It reaches clockwise from one azimuth (0 to 360) to the other, and may cross north.
+    """
+
+    name: str
+    from_azimuth_deg: float
+    to_azimuth_deg: float
+    lower_elevation_deg: float
+    upper_elevation_deg: float
+
+    def contains(self, azimuth_deg: float, elevation_deg: float) -> bool:
+        """Whether this direction lies in the box."""
+        if not self.lower_elevation_deg <= elevation_deg <= self.upper_elevation_deg:
+            return False
+        width_deg = (self.to_azimuth_deg - self.from_azimuth_deg) % 360.0 or 360.0
+        return (azimuth_deg - self.from_azimuth_deg) % 360.0 <= width_deg
+
+
+@dataclass(frozen=True, slots=True)
+class Clearance:
+    """Elevation floor (deg), horizon mask if there is one, keep-out sectors."""
+
+    floor_deg: float
+    mask: HorizonMask | None
+    keep_outs: tuple[Sector, ...] = ()
+
+    def lowest_deg(self, azimuth_deg: float) -> float:
+        """Lowest elevation that floor and mask allow in this direction."""
+        if self.mask is None:
+            return self.floor_deg
+        return max(self.floor_deg, self.mask.elevation_deg(azimuth_deg))
+
+    def keep_out(self, azimuth_deg: float, elevation_deg: float) -> Sector | None:
+        """The keep-out that this direction lies in, if any."""
+        for sector in self.keep_outs:
+            if sector.contains(azimuth_deg, elevation_deg):
+                return sector
+        return None
+
+    def is_clear(self, azimuth_deg: float, elevation_deg: float) -> bool:
+        """Whether the boresight may be there."""
+        return (
+            elevation_deg >= self.lowest_deg(azimuth_deg)
+            and self.keep_out(azimuth_deg, elevation_deg) is None
+        )
