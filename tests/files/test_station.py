@@ -263,7 +263,7 @@ def test_a_file_that_is_no_mapping_is_told(tmp_path: Path, text: str, got: str) 
 def test_a_socket_path_too_long_for_the_system_is_told(tmp_path: Path) -> None:
     section = f"files:\n  control_socket: /run/{'x' * 120}.sock\n"
     (found,) = problems_of(tmp_path, RIGHT + section)
-    assert "expected a path of at most 107 bytes" in found
+    assert "expected a path of at most 102 bytes" in found
 
 
 def test_the_drivers_own_settings_are_kept_and_its_complaints_get_their_lines(

@@ -16,9 +16,9 @@ MaskPoints = tuple[tuple[float, float], ...]
 def load_mask(path: Path) -> MaskPoints:
     """Return the points of a horizon mask: pairs of azimuth and elevation in degrees.
 
-    Azimuths go from 0 to below 360 and never decrease; two points at one azimuth make a step. A line may end
-    with a comment after `#`; the numbers stand apart by blanks or a comma. Raises FileProblems with
-    everything that is wrong with it.
+    Azimuths go from 0 to below 360 and never decrease; two points at one azimuth make a step. A
+    line may end with a comment after `#`; the numbers stand apart by blanks or a comma. Raises
+    FileProblems with everything that is wrong with it.
     """
     file = str(path)
     points: list[tuple[float, float]] = []

@@ -5,10 +5,12 @@ from typing import Annotated
 
 from pydantic import BeforeValidator, WithJsonSchema, field_validator
 
+from trunnion.files.control_path import DEFAULT_CONTROL_SOCKET
 from trunnion.files.fields import FilePath
 from trunnion.files.section import Section
 
-_LONGEST_SOCKET_PATH_BYTES = 107  # sun_path of unix(7), less the byte that ends it
+# sun_path of unix(7), less the byte that ends it, less the `.stop` of the stop's own socket
+_LONGEST_SOCKET_PATH_BYTES = 107 - len(".stop")
 
 
 def _one_or_many(value: object) -> object:
@@ -32,7 +34,7 @@ class FilesSection(Section):
     """The database in which every contact leaves its summary and its samples."""
     latch: FilePath = Path("emergency-stop.latch")
     """The file that remembers an emergency stop over a restart."""
-    control_socket: FilePath = Path("control.sock")
+    control_socket: FilePath = Path(DEFAULT_CONTROL_SOCKET)
     """The socket by which `trunnion status`, `stop` and the others reach the running daemon."""
 
     @field_validator("control_socket")
