@@ -7,7 +7,7 @@ begin with an underscore. A driver is called from one thread at a time.
 from abc import ABC, abstractmethod
 from collections.abc import Mapping
 from math import isfinite
-from typing import ClassVar, Self
+from typing import Self
 
 from trunnion_drivers.interface.errors import Garbled, WrongState
 from trunnion_drivers.interface.values import (
@@ -22,7 +22,8 @@ from trunnion_drivers.interface.values import (
 class Driver(ABC):
     """One mount at the end of one link."""
 
-    capabilities: ClassVar[Capabilities] = Capabilities()
+    capabilities: Capabilities = Capabilities()
+    """Told by the class, or by the instance where its settings decide."""
 
     def __init__(self, facts: MountFacts, clock: Clock) -> None:
         self._facts = facts

@@ -1,6 +1,7 @@
 """What passes between the daemon and a driver: plain values. Standard library only."""
 
 from dataclasses import dataclass
+from pathlib import Path
 from typing import NamedTuple, Protocol
 
 
@@ -28,12 +29,16 @@ class JointFacts:
 
 @dataclass(frozen=True, slots=True)
 class MountFacts:
-    """What the station file says of the mount, for a driver to scale and bound its commands."""
+    """What the station file says of the mount, for a driver to scale and bound its commands.
+
+    `folder` is where relative paths among the driver's settings begin.
+    """
 
     first: JointFacts
     second: JointFacts
     stow_first_deg: float
     stow_second_deg: float
+    folder: Path = Path()
 
 
 class DriverMotion(NamedTuple):
@@ -62,9 +67,13 @@ class DriverReading(NamedTuple):
 
 @dataclass(frozen=True, slots=True)
 class Capabilities:
-    """What this hardware can do beyond moving to a position and halting."""
+    """What this hardware can do beyond moving to a position and halting.
+
+    `has_link` is False only for a mount in this very process, which no cable can lose.
+    """
 
     follows_rate: bool = False
     cuts_power: bool = False
     reports_stop_input: bool = False
     reports_limits: bool = False
+    has_link: bool = True
