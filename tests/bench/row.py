@@ -1,0 +1,20 @@
+"""One figure of the benchmark: ours against a baseline, measured in the same run."""
+
+from dataclasses import dataclass
+
+
+@dataclass(frozen=True, slots=True)
+class Row:
+    """A line of the table: the ratio must not pass its limit, or must reach it where it is a least."""
+
+    figure: str
+    ours: str
+    baseline: str
+    ratio: float
+    limit: float
+    is_at_least: bool
+
+    @property
+    def holds(self) -> bool:
+        """Whether the figure is met."""
+        return self.ratio >= self.limit if self.is_at_least else self.ratio <= self.limit
