@@ -1,0 +1,182 @@
+"""The records file as its one writer has it: entries in, whole batches to disk."""
+
+import json
+import sqlite3
+from collections.abc import Iterable, Mapping
+from dataclasses import dataclass
+from pathlib import Path
+
+from trunnion.service.records.presence import Presence
+from trunnion.service.records.schema import SAMPLE_COLUMNS, prepare
+from trunnion.service.records.values import (
+    ContactEnd,
+    ContactStart,
+    Entry,
+    Event,
+    Outcome,
+    Sample,
+)
+
+_INSERT_SAMPLE = f"INSERT INTO sample VALUES (?, ?, {', '.join('?' * len(SAMPLE_COLUMNS))})"  # noqa: S608 - constants alone
+_PRAGMAS = (
+    "PRAGMA journal_mode = WAL",
+    "PRAGMA synchronous = NORMAL",
+    f"PRAGMA journal_size_limit = {4 * 1024 * 1024}",
+)
+_BUSY_S = 2.0
+_SAMPLES_A_TURN = 10_000
+_EVENTS_A_TURN = 1_000
+_DAY_S = 86_400.0
+
+
+@dataclass(frozen=True, slots=True)
+class Retention:
+    """How much is kept: contacts and events of so many days, and a file of about so many bytes.
+
+    Beyond the size, the oldest samples go; the summaries of their contacts stay. The file keeps the
+    room that it has had once, and uses it again.
+    """
+
+    longest_days: float | None = None
+    largest_bytes: int = 512 * 1024 * 1024
+
+
+class RecordStore:
+    """One connection to the file; every method may raise sqlite3.Error, OSError or ForeignFile."""
+
+    def __init__(self, path: Path) -> None:
+        path.parent.mkdir(parents=True, exist_ok=True)
+        self._presence = Presence(path)
+        self._connection = sqlite3.connect(path, timeout=_BUSY_S, isolation_level=None)
+        self._contact_id: int | None = None
+        self._number = 0
+        try:
+            for pragma in _PRAGMAS:
+                self._connection.execute(pragma)
+            prepare(self._connection)
+            self._end_what_was_interrupted()
+        except BaseException:
+            self.close()
+            raise
+
+    def write(self, batch: Iterable[Entry]) -> None:
+        """Write all of it, or nothing."""
+        before = self._contact_id, self._number
+        self._connection.execute("BEGIN IMMEDIATE")
+        try:
+            for entry in batch:
+                self._write(entry)
+            self._connection.execute("COMMIT")
+        except BaseException:
+            self._contact_id, self._number = before
+            if self._connection.in_transaction:
+                self._connection.execute("ROLLBACK")
+            raise
+
+    def forget(self, retention: Retention, now_utc_s: float) -> None:
+        """Remove a little of what is beyond the retention; to be called again and again."""
+        if retention.longest_days is not None:
+            self._forget_older(now_utc_s - retention.longest_days * _DAY_S)
+        if self._used_bytes() > retention.largest_bytes:
+            self._forget_oldest()
+
+    def close(self) -> None:
+        """Let go of the file."""
+        self._connection.close()
+        self._presence.close()
+
+    def _write(self, entry: Entry) -> None:
+        match entry:
+            case Sample():
+                self._write_sample(entry)
+            case ContactStart():
+                self._begin(entry)
+            case ContactEnd():
+                self._end(entry)
+            case Event():
+                self._connection.execute(
+                    "INSERT INTO event (utc_s, kind, sentence, contact_id) VALUES (?, ?, ?, ?)",
+                    (entry.utc_s, entry.kind.value, entry.sentence, self._contact_id),
+                )
+
+    def _begin(self, start: ContactStart) -> None:
+        if self._contact_id is not None:
+            self._end(ContactEnd(start.utc_s, Outcome.CUT_SHORT, {}))
+        cursor = self._connection.execute(
+            "INSERT INTO contact (begin_utc_s, contact, target, planned_begin_s, planned_end_s)"
+            " VALUES (?, ?, ?, ?, ?)",
+            start,
+        )
+        self._contact_id, self._number = cursor.lastrowid, 0
+
+    def _write_sample(self, sample: Sample) -> None:
+        if self._contact_id is not None:
+            self._number += 1
+            key = self._contact_id, self._number
+            self._connection.execute(_INSERT_SAMPLE, key + _row(sample))
+
+    def _end(self, end: ContactEnd) -> None:
+        self._connection.execute(
+            "UPDATE contact SET end_utc_s = ?, outcome = ?, summary = ? WHERE id = ?",
+            (end.utc_s, end.outcome.value, _json(end.summary), self._contact_id),
+        )
+        self._contact_id = None
+
+    def _end_what_was_interrupted(self) -> None:
+        self._connection.execute(
+            "UPDATE contact SET outcome = ?, end_utc_s ="
+            " (SELECT max(utc_s) FROM sample WHERE contact_id = contact.id) WHERE outcome IS NULL",
+            (Outcome.INTERRUPTED.value,),
+        )
+
+    def _forget_older(self, utc_s: float) -> None:
+        row = self._connection.execute(
+            "SELECT id FROM contact WHERE begin_utc_s < ? AND outcome IS NOT NULL LIMIT 1", (utc_s,)
+        ).fetchone()
+        self._connection.execute("BEGIN IMMEDIATE")
+        if row is not None:
+            self._connection.execute("DELETE FROM sample WHERE contact_id = ?", row)
+            self._connection.execute("DELETE FROM contact WHERE id = ?", row)
+        self._connection.execute("DELETE FROM event WHERE utc_s < ?", (utc_s,))
+        self._connection.execute("COMMIT")
+
+    def _forget_oldest(self) -> None:
+        gone = self._connection.execute(
+            "DELETE FROM sample WHERE (contact_id, number) IN (SELECT contact_id, number"
+            " FROM sample ORDER BY contact_id, number LIMIT ?)",
+            (_SAMPLES_A_TURN,),
+        ).rowcount
+        if not gone:
+            self._connection.execute(
+                "DELETE FROM event WHERE id IN (SELECT id FROM event ORDER BY id LIMIT ?)",
+                (_EVENTS_A_TURN,),
+            )
+
+    def _used_bytes(self) -> int:
+        pages, free, size = (
+            self._connection.execute(f"PRAGMA {name}").fetchone()[0]
+            for name in ("page_count", "freelist_count", "page_size")
+        )
+        return int((pages - free) * size)
+
+
+def _json(summary: Mapping[str, object]) -> str:
+    try:
+        return json.dumps(dict(summary), ensure_ascii=False, allow_nan=False)
+    except (TypeError, ValueError) as error:
+        return json.dumps({"unwritable": f"{error}: {summary!r}"}, ensure_ascii=False)
+
+
+def _row(sample: Sample) -> tuple[object, ...]:
+    look, reading = sample.look, sample.reading
+    return (
+        sample.utc_s,
+        sample.phase,
+        *((look.azimuth_deg, look.elevation_deg, look.range_km) if look else (None,) * 3),
+        sample.error_deg,
+        *(sample.demand or (None,) * 4),
+        *(sample.order or (None,) * 4),
+        *((reading.first_deg, reading.second_deg) if reading else (None,) * 2),
+        sample.mono_s - reading.taken_s if reading else None,
+        " ".join(sample.rules),
+    )
