@@ -2,10 +2,12 @@
 
 from collections.abc import Mapping
 from enum import Enum
-from typing import NamedTuple
+from typing import TYPE_CHECKING, NamedTuple
 
 from trunnion.mount.joints import Motion, Reading
-from trunnion.sky.look import Look
+
+if TYPE_CHECKING:
+    from trunnion.sky.look import Look  # brings numpy, which reading the records needs not
 
 
 class Outcome(Enum):
@@ -48,7 +50,7 @@ class Sample(NamedTuple):
     utc_s: float
     mono_s: float
     phase: str
-    look: Look | None
+    look: "Look | None"
     error_deg: float | None
     demand: Motion | None
     order: Motion | None
