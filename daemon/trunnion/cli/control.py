@@ -1,0 +1,78 @@
+"""`trunnion status`, `stop`, `reset`, `stow`, `resume`: talk to the running daemon."""
+
+from pathlib import Path
+from typing import TYPE_CHECKING, Annotated
+
+import typer
+
+from trunnion.cli.arguments import AsJson
+from trunnion.cli.output import flattened, print_json, print_table, print_text, say
+
+if TYPE_CHECKING:
+    from trunnion.service.control.client import ControlClient
+
+_CAUTION = "If the antenna moves and must not, use the hardware emergency stop."
+
+Daemon = Annotated[
+    Path,
+    typer.Argument(
+        metavar="[STATION]", help="The station file of the daemon, or its control socket."
+    ),
+]
+
+
+def status(daemon: Daemon = Path("station.yaml"), *, as_json: AsJson = False) -> None:
+    """Print what the daemon is doing, and what keeps it from doing more."""
+    with _client(daemon) as client:
+        result = client.request("status")
+    if as_json:
+        print_json(result)
+    else:
+        print_table(f"Daemon of {daemon}", ("what", "how"), flattened(result))
+
+
+def stop(
+    daemon: Daemon = Path("station.yaml"),
+    *,
+    cause: Annotated[str, typer.Option(help="Why, for the records.")] = "",
+) -> None:
+    """Stop the antenna now, and keep it stopped until a reset: the emergency stop by software.
+
+    It is no substitute for the hardware emergency stop: whoever is in danger presses that one.
+    """
+    from trunnion.service.errors import ServiceError
+
+    try:
+        with _client(daemon) as client:
+            print_text(client.emergency_stop(cause))
+    except ServiceError:
+        say(_CAUTION)
+        raise
+
+
+def reset(daemon: Daemon = Path("station.yaml")) -> None:
+    """Lift an emergency stop whose cause is gone; starts no motion, `resume` does."""
+    _ask(daemon, "reset", "The emergency stop is lifted. Nothing moves until told to.")
+
+
+def stow(daemon: Daemon = Path("station.yaml")) -> None:
+    """Send the antenna to its stow position, and keep it there until `resume`."""
+    _ask(daemon, "stow", "The antenna goes to its stow position and stays there.")
+
+
+def resume(daemon: Daemon = Path("station.yaml")) -> None:
+    """Follow the pass plan again. The antenna may move at once: see that nobody is near it."""
+    _ask(daemon, "resume", "The antenna follows the pass plan again.")
+
+
+def _ask(daemon: Path, command: str, done: str) -> None:
+    with _client(daemon) as client:
+        client.request(command)
+    print_text(done)
+
+
+def _client(daemon: Path) -> "ControlClient":
+    from trunnion.files.control_path import control_socket_of
+    from trunnion.service.control.client import ControlClient
+
+    return ControlClient(control_socket_of(daemon))
