@@ -21,7 +21,6 @@ from trunnion.service.control import (
     DaemonSilent,
     ErrorKind,
     NoDaemon,
-    Peer,
     RequestFailed,
     SocketInUse,
 )
@@ -40,12 +39,12 @@ class Desk:
     def stop(self, cause: str) -> None:
         self.causes.append(cause)
 
-    def echo(self, arguments: Mapping[str, object], peer: Peer) -> Mapping[str, object]:
+    def echo(self, arguments: Mapping[str, object]) -> Mapping[str, object]:
         if "bad" in arguments:
             raise BadArguments("expected nothing bad")
-        return {**arguments, "pid": peer.pid}
+        return arguments
 
-    def dawdle(self, arguments: Mapping[str, object], peer: Peer) -> Mapping[str, object]:
+    def dawdle(self, arguments: Mapping[str, object]) -> Mapping[str, object]:
         self.let_go.wait(30.0)
         return {}
 
@@ -88,12 +87,9 @@ def ask(
 
 
 @pytest.mark.usefixtures("server")
-def test_a_command_is_fulfilled_and_the_caller_known(path: Path) -> None:
+def test_a_command_is_fulfilled_or_refused_by_type(path: Path) -> None:
     with ControlClient(path) as client:
-        assert client.request("echo", azimuth_deg=123.4) == {
-            "azimuth_deg": 123.4,
-            "pid": os.getpid(),
-        }
+        assert client.request("echo", azimuth_deg=123.4) == {"azimuth_deg": 123.4}
         with pytest.raises(RequestFailed, match="expected nothing bad") as failed:
             client.request("echo", bad=1)
         assert failed.value.kind is ErrorKind.BAD_ARGUMENTS

@@ -15,19 +15,19 @@ from trunnion.service.errors import ServiceError
 PEER = Peer(pid=4711, uid=1003, gid=1007)
 
 
-def echo(arguments: Mapping[str, object], peer: Peer) -> Mapping[str, object]:
-    return {"heard": dict(arguments), "uid": peer.uid}
+def echo(arguments: Mapping[str, object]) -> Mapping[str, object]:
+    return {"heard": dict(arguments)}
 
 
-def refuse(arguments: Mapping[str, object], peer: Peer) -> Mapping[str, object]:
+def refuse(arguments: Mapping[str, object]) -> Mapping[str, object]:
     raise ServiceError("expected the button released, got it pressed")
 
 
-def dislike(arguments: Mapping[str, object], peer: Peer) -> Mapping[str, object]:
+def dislike(arguments: Mapping[str, object]) -> Mapping[str, object]:
     raise BadArguments("expected no arguments")
 
 
-def fail(arguments: Mapping[str, object], peer: Peer) -> Mapping[str, object]:
+def fail(arguments: Mapping[str, object]) -> Mapping[str, object]:
     raise ZeroDivisionError
 
 
@@ -43,11 +43,9 @@ def replies(said: bytes) -> list[dict[str, Any]]:
 def test_each_line_has_its_reply_in_order() -> None:
     conversation = talk()
     first = b'{"v":1,"id":1,"command":"echo","arguments":{"a":2.5}}\n{"v":1,"id":"b","comm'
-    assert replies(conversation.hear(first)) == [
-        {"v": 1, "id": 1, "result": {"heard": {"a": 2.5}, "uid": 1003}}
-    ]
+    assert replies(conversation.hear(first)) == [{"v": 1, "id": 1, "result": {"heard": {"a": 2.5}}}]
     assert replies(conversation.hear(b'and":"echo"}\n')) == [
-        {"v": 1, "id": "b", "result": {"heard": {}, "uid": 1003}}
+        {"v": 1, "id": "b", "result": {"heard": {}}}
     ]
     assert not conversation.is_over
 
@@ -137,3 +135,13 @@ def test_anything_else_stops_nothing(line: bytes) -> None:
 def test_a_stop_that_fails_is_answered_all_the_same() -> None:
     conversation = StopConversation(Stops(is_broken=True), PEER)
     assert b"not whole" in conversation.hear(b"stop")
+
+
+@pytest.mark.parametrize(("command", "is_noted"), [("echo", True), ("status", False)])
+def test_who_asked_for_a_change_is_noted(
+    command: str, is_noted: bool, caplog: pytest.LogCaptureFixture
+) -> None:
+    caplog.set_level("INFO")
+    conversation = RequestConversation({"echo": echo, "status": echo}, PEER)
+    conversation.hear(json.dumps({"v": 1, "command": command}).encode() + b"\n")
+    assert ("echo, asked for by user 1003, process 4711" in caplog.text) is is_noted

@@ -20,8 +20,14 @@ from trunnion.service.errors import ServiceError
 
 _log = logging.getLogger(__name__)
 
-Handler = Callable[[Mapping[str, object], Peer], Mapping[str, object]]
-"""Fulfils one command; quick, since others wait. Raises BadArguments or another ServiceError."""
+Handler = Callable[[Mapping[str, object]], Mapping[str, object]]
+"""Fulfils one command with its arguments; quick, since others wait.
+
+Raises BadArguments or another ServiceError.
+"""
+
+LOOKING_ON = frozenset({"status"})
+"""Commands that change nothing, and are not worth a line in the log."""
 
 
 class Conversation(Protocol):
@@ -80,8 +86,10 @@ class RequestConversation:
             known = ", ".join(sorted(self._handlers))
             message = f"expected one of the commands {known}, got {request.command!r}"
             return encode_error(request.request_id, ErrorKind.UNKNOWN_COMMAND, message)
+        if request.command not in LOOKING_ON:
+            _log.info("%s, asked for by %s", request.command, self._peer)
         try:
-            return encode_result(request.request_id, handler(request.arguments, self._peer))
+            return encode_result(request.request_id, handler(request.arguments))
         except BadArguments as error:
             return encode_error(request.request_id, ErrorKind.BAD_ARGUMENTS, str(error))
         except ServiceError as error:
