@@ -71,12 +71,13 @@ class Hinges:
         return cls(0.0, latitude_deg, is_clockwise=True)
 
     @property
-    def _is_upright(self) -> bool:
+    def is_upright(self) -> bool:
+        """Whether the joints are azimuth and elevation as they stand."""
         return self.axis_elevation_deg >= UPRIGHT_DEG and self.is_clockwise
 
     def boresight(self, joints: Joints) -> tuple[float, float]:
         """Azimuth (0 <= azimuth < 360) and elevation (deg) of the beam at these joint angles."""
-        if self._is_upright:
+        if self.is_upright:
             return _upright(joints)
         r, s, a = self._frame
         first, second = radians(joints.first_deg), radians(joints.second_deg)
@@ -95,7 +96,7 @@ class Hinges:
         and its second at 180° less the plain one. First joints are 0 <= angle < 360: whole turns
         are the caller's choice.
         """
-        if self._is_upright:
+        if self.is_upright:
             plain = Joints(principal_deg(azimuth_deg), elevation_deg)
         else:
             along_r, along_s, along_a = self._components(unit_vector(azimuth_deg, elevation_deg))
@@ -121,7 +122,7 @@ class Hinges:
         """
         joints = self.solutions(azimuth_deg, elevation_deg)[is_tipped]
         sign = -1.0 if is_tipped else 1.0
-        if self._is_upright:
+        if self.is_upright:
             return Motion(*joints, azimuth_rate_deg_s, sign * elevation_rate_deg_s)
         along_r, along_s, along_a = self._components(unit_vector(azimuth_deg, elevation_deg))
         d_r, d_s, d_a = self._components(

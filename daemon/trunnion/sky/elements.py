@@ -1,0 +1,121 @@
+"""Satellites by their orbit elements: SGP4, seen from a viewpoint."""
+
+from dataclasses import dataclass, field
+from typing import Any
+
+import numpy as np
+from sgp4.api import SGP4_ERRORS, WGS72, Satrec
+
+from trunnion.sky.earth_fixed import (
+    earth_fixed,
+    earth_fixed_many,
+    sidereal_angle,
+    sidereal_angles,
+)
+from trunnion.sky.errors import NoPosition
+from trunnion.sky.instants import SECONDS_A_DAY, UNIX_EPOCH_JD, julian_date
+from trunnion.sky.look import FloatArray, Look, Looks
+from trunnion.sky.site import Vector
+from trunnion.sky.topocentric import topocentric, topocentric_many
+from trunnion.sky.viewpoint import Viewpoint
+
+
+@dataclass(frozen=True, slots=True)
+class ElementSet:
+    """Two-line elements as they were issued, checked by whoever read them."""
+
+    name: str
+    catalogue_number: int
+    epoch_utc_s: float
+    line_1: str
+    line_2: str
+
+    def age_days(self, utc_s: float) -> float:
+        """Days from the epoch to this instant; negative before the epoch."""
+        return (utc_s - self.epoch_utc_s) / SECONDS_A_DAY
+
+
+class Propagator:
+    """SGP4 for one element set: the state in the true equator, mean equinox frame (TEME).
+
+    Elements are issued with the gravity constants of WGS 72, the default; others are for checks.
+    """
+
+    def __init__(self, element_set: ElementSet, gravity: int = WGS72) -> None:
+        self._element_set = element_set
+        self._satrec: Any = Satrec.twoline2rv(element_set.line_1, element_set.line_2, gravity)
+
+    def at(self, jd_midnight: float, fraction: float) -> tuple[Vector, Vector]:
+        """Position (km) and velocity (km/s); raises NoPosition by SGP4's own error code.
+
+        The code counts, not the numbers: for a decayed orbit those look like any others.
+        """
+        error, position_km, velocity_km_s = self._satrec.sgp4(jd_midnight, fraction)
+        if error:
+            raise NoPosition(self._sentence(error))
+        return position_km, velocity_km_s
+
+    def at_many(
+        self, jd_midnight: FloatArray, fraction: FloatArray
+    ) -> tuple[FloatArray, FloatArray]:
+        """The same for arrays of shape (n,); states of shape (3, n)."""
+        errors, positions_km, velocities_km_s = self._satrec.sgp4_array(jd_midnight, fraction)
+        if errors.any():
+            raise NoPosition(self._sentence(int(errors[np.flatnonzero(errors)[0]])))
+        return positions_km.T, velocities_km_s.T
+
+    def _sentence(self, error: int) -> str:
+        reason = SGP4_ERRORS.get(error, f"error {error}")
+        return f"{self._element_set.name}: expected an orbit, got none from SGP4: {reason}"
+
+
+@dataclass(frozen=True, slots=True, eq=False)
+class Satellite:
+    """An element set seen from a viewpoint: a Target."""
+
+    element_set: ElementSet
+    viewpoint: Viewpoint
+    _propagator: Propagator = field(init=False, repr=False)
+
+    def __post_init__(self) -> None:
+        object.__setattr__(self, "_propagator", Propagator(self.element_set))
+
+    def __reduce__(self) -> tuple[type["Satellite"], tuple[ElementSet, Viewpoint]]:
+        return Satellite, (self.element_set, self.viewpoint)
+
+    @property
+    def name(self) -> str:
+        """The satellite's name, or its catalogue number where it has none."""
+        return self.element_set.name
+
+    def look(self, utc_s: float) -> Look:
+        """Where it stands; raises NoPosition."""
+        view = self.viewpoint
+        jd_midnight, fraction = julian_date(utc_s)
+        position_km, velocity_km_s = self._propagator.at(jd_midnight, fraction)
+        turned = view.earth.at(utc_s)
+        sidereal = sidereal_angle(jd_midnight, fraction + turned.ut1_minus_utc_s / SECONDS_A_DAY)
+        position_km, velocity_km_s = earth_fixed(position_km, velocity_km_s, sidereal, turned)
+        look = topocentric(position_km, velocity_km_s, view.site, is_apparent=view.is_apparent)
+        seen, slope = view.refraction.seen(look[1])
+        return Look(look[0], seen, look[2], look[3], look[4] * slope, look[5])
+
+    def looks(self, utc_s: FloatArray) -> Looks:
+        """Where it stands at many instants; raises NoPosition when it has none at any of them."""
+        view = self.viewpoint
+        days = np.floor(utc_s / SECONDS_A_DAY)
+        fraction = (utc_s - days * SECONDS_A_DAY) / SECONDS_A_DAY
+        jd_midnight = UNIX_EPOCH_JD + days
+        position_km, velocity_km_s = self._propagator.at_many(jd_midnight, fraction)
+        ut1_s, pole_x, pole_y = view.earth.at_many(utc_s)
+        sidereal = sidereal_angles(jd_midnight, fraction + ut1_s / SECONDS_A_DAY)
+        position_km, velocity_km_s = earth_fixed_many(
+            position_km, velocity_km_s, sidereal, pole_x, pole_y
+        )
+        looks = topocentric_many(
+            position_km, velocity_km_s, view.site, is_apparent=view.is_apparent
+        )
+        seen_deg, slope = view.refraction.seen_many(looks.elevation_deg)
+        return looks._replace(
+            elevation_deg=seen_deg, elevation_rate_deg_s=looks.elevation_rate_deg_s * slope
+        )

@@ -1,0 +1,77 @@
+"""From an Earth-fixed position and velocity to azimuth, elevation, range, and their rates.
+
+Apparent look angles are those of where the target was when its signal left. Counted in the
+station's own, Earth-fixed frame, that one step holds light time and the aberration by the Earth's
+rotation together.
+"""
+
+from math import atan2, degrees, hypot, pi, sqrt
+
+import numpy as np
+
+from trunnion.sky.look import FloatArray, Look, Looks
+from trunnion.sky.site import Site, Vector
+
+LIGHT_KM_S = 299_792.458
+
+ZENITH_KM2 = 1e-18
+"""Closer to the zenith (squared level distance) azimuth has no rate worth the name."""
+
+
+def topocentric(
+    position_km: Vector, velocity_km_s: Vector, site: Site, *, is_apparent: bool
+) -> Look:
+    """Look angles of an Earth-fixed position (km) that moves with this velocity (km/s)."""
+    sx, sy, sz = site.position_km
+    x, y, z = position_km[0] - sx, position_km[1] - sy, position_km[2] - sz
+    vx, vy, vz = velocity_km_s
+    if is_apparent:
+        travel_s = sqrt(x * x + y * y + z * z) / LIGHT_KM_S
+        x, y, z = x - vx * travel_s, y - vy * travel_s, z - vz * travel_s
+    (ex, ey, _), (nx, ny, nz), (ux, uy, uz) = site.east, site.north, site.up
+    east, north, up = ex * x + ey * y, nx * x + ny * y + nz * z, ux * x + uy * y + uz * z
+    v_east, v_north = ex * vx + ey * vy, nx * vx + ny * vy + nz * vz
+    v_up = ux * vx + uy * vy + uz * vz
+    level2 = east * east + north * north
+    level = sqrt(level2)
+    range_km = hypot(level, up)
+    range_rate = (east * v_east + north * v_north + up * v_up) / range_km
+    azimuth = atan2(east, north)
+    if level2 > ZENITH_KM2:
+        azimuth_rate = (v_east * north - v_north * east) / level2
+        elevation_rate = (v_up - range_rate * up / range_km) / level
+    else:
+        azimuth_rate = elevation_rate = 0.0
+    return Look(
+        degrees(azimuth if azimuth >= 0.0 else azimuth + 2.0 * pi) % 360.0,
+        degrees(atan2(up, level)),
+        range_km,
+        degrees(azimuth_rate),
+        degrees(elevation_rate),
+        range_rate,
+    )
+
+
+def topocentric_many(
+    position_km: FloatArray, velocity_km_s: FloatArray, site: Site, *, is_apparent: bool
+) -> Looks:
+    """The same for arrays of shape (3, n)."""
+    axes = np.array((site.east, site.north, site.up))
+    relative_km = position_km - np.array(site.position_km)[:, np.newaxis]
+    if is_apparent:
+        travel_s = np.sqrt(np.einsum("in,in->n", relative_km, relative_km)) / LIGHT_KM_S
+        relative_km = relative_km - velocity_km_s * travel_s
+    east, north, up = axes @ relative_km
+    v_east, v_north, v_up = axes @ velocity_km_s
+    level2 = np.maximum(east * east + north * north, ZENITH_KM2)
+    level = np.sqrt(level2)
+    range_km = np.hypot(level, up)
+    range_rate = (east * v_east + north * v_north + up * v_up) / range_km
+    return Looks(
+        np.degrees(np.arctan2(east, north)) % 360.0,
+        np.degrees(np.arctan2(up, level)),
+        range_km,
+        np.degrees((v_east * north - v_north * east) / level2),
+        np.degrees((v_up - range_rate * up / range_km) / level),
+        range_rate,
+    )

@@ -1,0 +1,77 @@
+"""Whether everything between two places of the joints is clear of floor, mask and keep-outs.
+
+The joints do not arrive together, and how they are late depends on the mount; so a move of both is
+clear only where every pair of angles between the two places is.
+"""
+
+from math import ceil
+from typing import NamedTuple
+
+from trunnion.mount.clearance import Clearance, Sector
+from trunnion.mount.joints import Joints
+from trunnion.mount.mount import Mount
+
+GRID_DEG = 0.25
+"""Spacing at which a box of a mount that does not stand upright is looked at."""
+
+
+def is_box_clear(one: Joints, other: Joints, mount: Mount, clearance: Clearance) -> bool:
+    """Whether the boresight is clear at every pair of joint angles between these two."""
+    if mount.hinges.is_upright:
+        return all(_is_patch_clear(patch, clearance) for patch in _patches(one, other))
+    return _is_grid_clear(one, other, mount, clearance)
+
+
+class _Patch(NamedTuple):
+    """A patch of sky: azimuths clockwise from begin to end (deg), elevations (deg)."""
+
+    begin_deg: float
+    end_deg: float
+    lower_deg: float
+    upper_deg: float
+
+
+def _patches(one: Joints, other: Joints) -> list[_Patch]:
+    """The sky between two places: once upright, and once tipped over where the box goes there."""
+    begin_deg, end_deg = sorted((one.first_deg, other.first_deg))
+    low_deg, high_deg = sorted((one.second_deg, other.second_deg))
+    patches = []
+    if low_deg <= 90.0:
+        patches.append(_Patch(begin_deg, end_deg, low_deg, min(high_deg, 90.0)))
+    if high_deg > 90.0:
+        over = _Patch(
+            begin_deg + 180.0, end_deg + 180.0, 180.0 - high_deg, 180.0 - max(low_deg, 90.0)
+        )
+        patches.append(over)
+    return patches
+
+
+def _is_patch_clear(patch: _Patch, clearance: Clearance) -> bool:
+    if patch.lower_deg < clearance.floor_deg:
+        return False
+    mask = clearance.mask
+    if mask is not None and patch.lower_deg < mask.highest_deg(patch.begin_deg, patch.end_deg):
+        return False
+    return not any(_touches(patch, sector) for sector in clearance.keep_outs)
+
+
+def _touches(patch: _Patch, sector: Sector) -> bool:
+    if patch.upper_deg < sector.lower_elevation_deg or patch.lower_deg > sector.upper_elevation_deg:
+        return False
+    width_deg = (sector.to_azimuth_deg - sector.from_azimuth_deg) % 360.0 or 360.0
+    is_begin_within = (patch.begin_deg - sector.from_azimuth_deg) % 360.0 <= width_deg
+    span_deg = patch.end_deg - patch.begin_deg
+    return is_begin_within or (sector.from_azimuth_deg - patch.begin_deg) % 360.0 <= span_deg
+
+
+def _is_grid_clear(one: Joints, other: Joints, mount: Mount, clearance: Clearance) -> bool:
+    return all(
+        clearance.is_clear(*mount.hinges.boresight(Joints(first_deg, second_deg)))
+        for first_deg in _between(one.first_deg, other.first_deg)
+        for second_deg in _between(one.second_deg, other.second_deg)
+    )
+
+
+def _between(begin_deg: float, end_deg: float) -> list[float]:
+    steps = max(1, ceil(abs(end_deg - begin_deg) / GRID_DEG))
+    return [begin_deg + (end_deg - begin_deg) * step / steps for step in range(steps + 1)]
