@@ -1,0 +1,1 @@
+"""Control: the laws that do for a mount what it cannot do itself."""
