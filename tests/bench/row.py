@@ -5,7 +5,7 @@ from dataclasses import dataclass
 
 @dataclass(frozen=True, slots=True)
 class Row:
-    """A line of the table: the ratio must not pass its limit, or must reach it where it is a least."""
+    """A line of the table; the ratio may not pass its limit, or must reach it if `is_at_least`."""
 
     figure: str
     ours: str

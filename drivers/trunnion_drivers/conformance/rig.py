@@ -16,9 +16,9 @@ class Rig:
     every call, in the clock's seconds. `home` is an angle pair well inside the travel, where a
     motion of 5° in either joint and either sense is harmless.
 
-    `pull` takes the link away and `plug` brings it back, `press` and `release` work the hardware
-    stop input, `is_powered` tells whether the actuators have power: None where there is no such
-    thing, which the driver's capabilities must agree with.
+    `pull` takes the link away and `plug` brings it back. `stop_input` presses (True) and releases
+    the hardware stop, `is_powered` tells whether the actuators have power: None where there is no
+    such thing, which the driver's capabilities must agree with.
     """
 
     driver: Driver
@@ -28,8 +28,7 @@ class Rig:
     accuracy_deg: float = 0.01
     lag_s: float = 0.0
     longest_call_s: float = 1.0
-    pull: Callable[[], None] | None = None
-    plug: Callable[[], None] | None = None
-    press: Callable[[], None] | None = None
-    release: Callable[[], None] | None = None
+    pull: Callable[[], None]
+    plug: Callable[[], None]
+    stop_input: Callable[[bool], None] | None = None
     is_powered: Callable[[], bool] | None = None

@@ -21,6 +21,7 @@ def settle(rig: Rig, goal: DriverMotion) -> None:
     until_s = rig.clock.monotonic_s() + _longest_slew_s(rig, reading, goal) + 5 * rig.lag_s + 1.0
     while rig.clock.monotonic_s() < until_s:
         rig.driver.move(goal)
+        rig.driver.read()
         rig.clock.sleep(_RENEWAL_S)
 
 

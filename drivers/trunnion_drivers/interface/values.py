@@ -67,13 +67,9 @@ class DriverReading(NamedTuple):
 
 @dataclass(frozen=True, slots=True)
 class Capabilities:
-    """What this hardware can do beyond moving to a position and halting.
-
-    `has_link` is False only for a mount in this very process, which no cable can lose.
-    """
+    """What this hardware can do beyond moving to a position and halting."""
 
     follows_rate: bool = False
     cuts_power: bool = False
     reports_stop_input: bool = False
     reports_limits: bool = False
-    has_link: bool = True

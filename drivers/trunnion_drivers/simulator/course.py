@@ -27,11 +27,42 @@ class Leg(NamedTuple):
         """The leg that takes over from this one at that second."""
         return Leg(begin_s, *self.at(begin_s), acceleration_deg_s2)
 
+    def rest_s(self) -> float:
+        """The second, perhaps past, at which the rate passes zero; infinite where it never does."""
+        if self.acceleration_deg_s2 == 0.0:
+            return inf
+        return self.begin_s - self.rate_deg_s / self.acceleration_deg_s2
+
+    def until_s(self, angle_deg: float) -> float:
+        """Seconds from the beginning until the angle is first reached; infinite for never."""
+        ahead, rate, acceleration = angle_deg - self.angle_deg, self.rate_deg_s, self[3]
+        if acceleration == 0.0:
+            roots: tuple[float, ...] = (ahead / rate,) if rate != 0.0 else ()
+        else:
+            radicand = rate * rate + 2.0 * acceleration * ahead
+            root = sqrt(radicand) if radicand >= 0.0 else inf
+            roots = ((-rate - root) / acceleration, (-rate + root) / acceleration)
+        return min((t for t in roots if t >= 0.0), default=inf)
+
 
 class Course(NamedTuple):
     """Legs in the order of their beginnings; the last one never ends."""
 
     legs: tuple[Leg, ...]
+
+    def turns(self, from_s: float, until_s: float) -> list[float]:
+        """Seconds in between at which the joint may turn back, in order."""
+        seconds = [s for leg in self.legs for s in (leg.begin_s, leg.rest_s())]
+        return sorted(s for s in seconds if from_s < s < until_s)
+
+    def reaches_s(self, angle_deg: float) -> float:
+        """The second at which the angle is first reached; infinite for never."""
+        ends_s = [leg.begin_s for leg in self.legs[1:]] + [inf]
+        for leg, end_s in zip(self.legs, ends_s, strict=True):
+            at_s = leg.begin_s + leg.until_s(angle_deg)
+            if at_s <= end_s and at_s < inf:
+                return at_s
+        return inf
 
     def at(self, mono_s: float) -> tuple[float, float]:
         """Angle (deg) and rate (deg/s) at this second, no earlier than the course begins."""
@@ -40,12 +71,26 @@ class Course(NamedTuple):
                 return leg.at(mono_s)
         return self.legs[0].at(self.legs[0].begin_s)
 
+    def heads_s(self, sense: float) -> float:
+        """The second at which it first moves this way (1 up, -1 down); infinite for never."""
+        for leg in self.legs:
+            if (leg.rate_deg_s or leg.acceleration_deg_s2) * sense > 0.0:
+                return leg.begin_s
+        return inf
+
 
 class Bounds(NamedTuple):
     """The highest rate (deg/s) and acceleration (deg/s²) of a joint, both above zero."""
 
     rate_deg_s: float
     acceleration_deg_s2: float
+
+
+def cut_short(course: Course, mono_s: float, bounds: Bounds) -> Course:
+    """The same course until that second, then to rest at full deceleration."""
+    kept = tuple(leg for leg in course.legs if leg.begin_s < mono_s) or course.legs[:1]
+    rest = course_to_rate(Leg(mono_s, *kept[-1].at(mono_s)), 0.0, bounds)
+    return Course(kept + rest.legs)
 
 
 def resting_course(mono_s: float, angle_deg: float) -> Course:

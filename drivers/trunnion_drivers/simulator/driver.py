@@ -1,138 +1,142 @@
-"""The simulated mount as a driver like any other.
+"""The simulated mount as a driver like any other. What it does not model: see `machine.py`.
 
-It models rate and acceleration limits, hard stops, encoders, latency and a watchdog. It does not
-model bending, vibration, heat or the grip of brakes; while no daemon runs its time stands still.
+While no daemon runs its time stands still.
 """
 
+from collections import deque
 from collections.abc import Mapping
 from contextlib import ExitStack, closing
 from typing import Self
 
-from trunnion_drivers.interface.driver import Driver
-from trunnion_drivers.interface.errors import BadSettings, SettingProblem
+from trunnion_drivers.control.command import Command, CommandMode
+from trunnion_drivers.control.steered import SteeredDriver
 from trunnion_drivers.interface.values import (
     Capabilities,
     Clock,
     DriverMotion,
     DriverReading,
-    JointFacts,
     MountFacts,
 )
 from trunnion_drivers.settings import checked
-from trunnion_drivers.simulator.course import Bounds
-from trunnion_drivers.simulator.encoder import Encoder
-from trunnion_drivers.simulator.joint import SimulatedJoint
+from trunnion_drivers.simulator.faults import Faults, FaultSchedule, healthy, timetable
+from trunnion_drivers.simulator.line import SimulatedLine
+from trunnion_drivers.simulator.machine import SimulatedMachine, start_problems
 from trunnion_drivers.simulator.memory import Memory
-from trunnion_drivers.simulator.mount import SimulatedMount
 from trunnion_drivers.simulator.settings import SimulatorSettings
 
 
-class SimulatorDriver(Driver):
+class SimulatorDriver(SteeredDriver):
     """Steel that exists as long as this object does, whether the link to it is open or not."""
 
-    capabilities = Capabilities(follows_rate=True, reports_limits=True, has_link=False)
-
     def __init__(self, settings: SimulatorSettings, facts: MountFacts, clock: Clock) -> None:
-        super().__init__(facts, clock)
-        self._settings = settings
-        self._encoders = tuple(
-            Encoder(
-                settings.encoder_resolution_deg,
-                settings.encoder_noise_deg,
-                f"{settings.seed}, joint {joint}",
-            )
-            for joint in (1, 2)
+        follows_rate = settings.follows_rate and settings.command is CommandMode.POSITION
+        steering = settings.control.steering(settings.command, facts, follows_rate=follows_rate)
+        super().__init__(steering, facts, clock)
+        self.capabilities = Capabilities(
+            follows_rate=follows_rate or settings.command is CommandMode.RATE,
+            cuts_power=True,
+            reports_stop_input=True,
+            reports_limits=True,
         )
-        start = settings.start_deg or (facts.stow_first_deg, facts.stow_second_deg)
-        self._mount = self._mount_at(*start)
+        now_s = clock.monotonic_s()
+        self._settings = settings
+        self._machine = SimulatedMachine(settings, facts, now_s)
+        self._line = SimulatedLine(clock, settings.order_loss, settings.reply_loss, settings.seed)
+        self._past: deque[DriverReading] = deque(maxlen=600)
         self._memory: Memory | None = None
         self._has_recalled = False
+        episodes = [episode.episode(now_s) for episode in settings.faults]
+        self._schedule: FaultSchedule = timetable(episodes) if episodes else healthy
 
     @classmethod
     def from_settings(cls, settings: Mapping[str, object], facts: MountFacts, clock: Clock) -> Self:
         """Build a simulated mount; see SimulatorSettings for the keys. Raises BadSettings."""
         read = checked(SimulatorSettings, settings)
-        _start_must_be_reachable(read, facts)
+        start_problems(read, facts)
         return cls(read, facts, clock)
 
+    def inject(self, schedule: FaultSchedule) -> None:
+        """Let this go wrong from now on, instead of what the settings say."""
+        self._schedule = schedule
+
     def true_motion(self) -> DriverMotion:
-        """Where both joints truly are now (deg) and how fast they move (deg/s), open or not."""
-        return self._mount.motion(self._clock.monotonic_s())
+        """Where the antenna truly is now (deg) and how fast it moves (deg/s), open or not."""
+        now_s, _ = self._now()
+        return self._machine.true_motion(now_s)
+
+    @property
+    def is_powered(self) -> bool:
+        """Whether the motors have power."""
+        self._now()
+        return self._machine.is_powered
 
     def _open(self) -> None:
+        now_s, faults = self._now()
+        self._line.connect(faults)
         if self._settings.memory is not None:
             self._memory = self._remembered(self._settings.memory)
+        self._machine.cut_power(now_s, is_cut=False)
+        self._start_anew()
 
     def _close(self) -> None:
         if self._memory is not None:
-            self._keep(self.true_motion())
+            self._keep()
             self._memory.close()
             self._memory = None
 
-    def _read(self) -> DriverReading:
+    def _look(self) -> DriverReading:
+        now_s, faults = self._now()
+        self._line.carry_reply(faults)
+        if faults.call_lasts_s > 0.0:
+            now_s, faults = self._now()
+        self._keep()
+        reading = DriverReading(now_s, *self._machine.look(now_s))
+        self._past.append(reading)
+        return self._aged(reading, faults.reading_age_s) if faults.reading_age_s else reading
+
+    def _tell(self, command: Command) -> None:
+        if self._reaches_the_mount(is_motion=True):
+            self._machine.command(self._clock.monotonic_s(), command)
+
+    def _rest(self) -> None:
+        if self._reaches_the_mount(is_motion=False):
+            self._machine.halt(self._clock.monotonic_s())
+
+    def _cut_power(self) -> None:
+        if self._reaches_the_mount(is_motion=False):
+            self._machine.cut_power(self._clock.monotonic_s(), is_cut=True)
+
+    def _reaches_the_mount(self, *, is_motion: bool) -> bool:
+        _, faults = self._now()
+        return self._line.carries_order(faults, is_motion=is_motion)
+
+    def _now(self) -> tuple[float, Faults]:
+        """What time it is, and what is wrong now; the machine knows of it from here on."""
         now_s = self._clock.monotonic_s()
-        motion = self._mount.motion(now_s)
-        self._keep(motion)
-        return DriverReading(
-            now_s,
-            self._encoders[0].reading_deg(motion.first_deg),
-            self._encoders[1].reading_deg(motion.second_deg),
-            at_limit=self._mount.is_at_stop(now_s),
-        )
+        faults = self._schedule(now_s)
+        self._machine.suffer(now_s, faults)
+        return now_s, faults
 
-    def _move(self, motion: DriverMotion) -> None:
-        now_s = self._clock.monotonic_s()
-        self._mount.move(now_s, motion)
-        self._keep(self._mount.motion(now_s))
+    def _aged(self, newest: DriverReading, age_s: float) -> DriverReading:
+        until_s = newest.taken_s - age_s
+        return next((old for old in reversed(self._past) if old.taken_s <= until_s), self._past[0])
 
-    def _halt(self) -> None:
-        self._mount.halt(self._clock.monotonic_s())
-
-    def _keep(self, motion: DriverMotion) -> None:
+    def _keep(self) -> None:
         if self._memory is not None:
+            motion = self._machine.true_motion(self._clock.monotonic_s())
             self._memory.keep(motion.first_deg, motion.second_deg)
 
     def _remembered(self, path: str) -> Memory:
         with ExitStack() as undo:
             memory = undo.enter_context(closing(Memory(self._facts.folder / path)))
             if not self._has_recalled:
-                angles = memory.recall()
-                self._mount = self._mount_at(*angles) if angles else self._mount
+                self._recall(memory)
                 self._has_recalled = True
             undo.pop_all()
         return memory
 
-    def _mount_at(self, first_deg: float, second_deg: float) -> SimulatedMount:
-        now_s = self._clock.monotonic_s()
-        first, second = (
-            SimulatedJoint(
-                now_s,
-                angle_deg,
-                Bounds(facts.rate_deg_s, facts.acceleration_deg_s2),
-                _stops_deg(facts, self._settings.overtravel_deg),
-            )
-            for angle_deg, facts in (
-                (first_deg, self._facts.first),
-                (second_deg, self._facts.second),
-            )
-        )
-        return SimulatedMount(first, second, self._settings.latency_s, self._settings.watchdog_s)
-
-
-def _stops_deg(facts: JointFacts, overtravel_deg: float) -> tuple[float, float]:
-    return facts.lower_deg - overtravel_deg, facts.upper_deg + overtravel_deg
-
-
-def _start_must_be_reachable(settings: SimulatorSettings, facts: MountFacts) -> None:
-    if settings.start_deg is None:
-        return
-    joints = (facts.first, facts.second)
-    found = [
-        SettingProblem("start_deg", f"expected joint {n} between its hard stops, got {angle:g}")
-        for n, (angle, joint) in enumerate(zip(settings.start_deg, joints, strict=True), 1)
-        if not joint.lower_deg - settings.overtravel_deg
-        <= angle
-        <= joint.upper_deg + settings.overtravel_deg
-    ]
-    if found:
-        raise BadSettings(tuple(found))
+    def _recall(self, memory: Memory) -> None:
+        angles_deg = memory.recall()
+        if angles_deg is not None:
+            now_s = self._clock.monotonic_s()
+            self._machine = SimulatedMachine(self._settings, self._facts, now_s, angles_deg)
