@@ -4,8 +4,9 @@ import logging
 import os
 import sys
 from collections.abc import Mapping
-from datetime import UTC, datetime
 from typing import Any, TextIO
+
+from trunnion.sky.instants import format_utc
 
 _SYSLOG_PRIORITY = (
     (logging.CRITICAL, 2),
@@ -64,8 +65,7 @@ class LineFormatter(logging.Formatter):
     def _prefix(self, record: logging.LogRecord) -> str:
         if self._is_for_journal:
             return f"<{_priority(record.levelno)}>"
-        utc = datetime.fromtimestamp(record.created, UTC)
-        return f"time={utc.replace(tzinfo=None).isoformat(timespec='milliseconds')}Z "
+        return f"time={format_utc(record.created)} "
 
 
 def _priority(level: int) -> int:

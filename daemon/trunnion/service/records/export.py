@@ -3,9 +3,9 @@
 import csv
 import io
 from collections.abc import Iterable, Iterator
-from datetime import UTC, datetime
 
 from trunnion.service.records.queries import SampleRecord
+from trunnion.sky.instants import format_utc
 
 
 def csv_lines(samples: Iterable[SampleRecord]) -> Iterator[str]:
@@ -15,15 +15,10 @@ def csv_lines(samples: Iterable[SampleRecord]) -> Iterator[str]:
     """
     yield _line(("utc", *SampleRecord._fields[1:]))
     for sample in samples:
-        yield _line((_utc(sample.utc_s), *sample[1:]))
+        yield _line((format_utc(sample.utc_s), *sample[1:]))
 
 
 def _line(values: Iterable[object]) -> str:
     line = io.StringIO()
     csv.writer(line, lineterminator="").writerow(values)
     return line.getvalue()
-
-
-def _utc(utc_s: float) -> str:
-    utc = datetime.fromtimestamp(utc_s, UTC).replace(tzinfo=None)
-    return utc.isoformat(timespec="milliseconds") + "Z"
