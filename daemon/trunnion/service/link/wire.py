@@ -1,0 +1,119 @@
+"""The driver as both links use it: it never raises, and it comes back by itself."""
+
+from collections.abc import Callable
+from typing import NamedTuple, TypeVar
+
+from trunnion.mount.joints import Reading
+from trunnion.safety.verdict import Move
+from trunnion.service.clock import Clock
+from trunnion.service.link.backoff import Backoff
+from trunnion.service.link.outbox import Outbox
+from trunnion.service.link.status import LinkState, LinkStatus, sentence, state_after
+from trunnion_drivers.interface.driver import Driver
+from trunnion_drivers.interface.values import DriverMotion, DriverReading
+
+Answer = TypeVar("Answer")
+
+REOPEN_AFTER = {
+    LinkState.DOWN: 1,
+    LinkState.BROKEN: 1,
+    LinkState.SILENT: 5,
+    LinkState.GARBLED: 5,
+}
+"""So many failures in a row make the link close and open anew; a refusal never does."""
+
+
+class Sighting(NamedTuple):
+    """A reading, and the number of the connection it came over."""
+
+    reading: Reading
+    connection: int
+
+
+class Wire:
+    """One driver, opened and reopened, used by one thread at a time."""
+
+    def __init__(self, driver: Driver, clock: Clock, outbox: Outbox) -> None:
+        self._driver = driver
+        self._clock = clock
+        self._outbox = outbox
+        self._backoff = Backoff()
+        self._order_trouble: LinkState | None = None
+        self.sighting: Sighting | None = None
+        self.status = LinkStatus()
+
+    def send(self) -> None:
+        """Send what waits in the outbox; after a reconnect a halt comes before everything."""
+        if not self._is_ready():
+            return
+        order = self._outbox.take(self.status.connections)
+        if isinstance(order, Move):
+            motion = DriverMotion(*order.motion)
+            self._order(lambda: self._driver.move(motion))
+        elif order is not None:
+            self._order(self._driver.halt)
+
+    def look(self) -> None:
+        """Read where the mount is."""
+        if not self._is_ready():
+            return
+        taken = self._attempt(self._driver.read)
+        if taken is not None:
+            self._publish(taken)
+
+    def close(self) -> None:
+        """Halt the mount where it can be reached, and close."""
+        if self._driver.is_open:
+            self._attempt(self._driver.halt)
+        self._attempt(self._driver.close)
+        self.status = self.status._replace(state=LinkState.CLOSED)
+
+    def _is_ready(self) -> bool:
+        if self._driver.is_open:
+            return True
+        now_s = self._clock.monotonic_s()
+        if not self._backoff.is_over(now_s):
+            return False
+        self._backoff.begin(now_s)
+        self._attempt(self._driver.open)
+        if not self._driver.is_open:
+            return False
+        self.status = self.status._replace(connections=self.status.connections + 1)
+        self._order(self._driver.halt)
+        return self._driver.is_open
+
+    def _order(self, call: Callable[[], None]) -> None:
+        failures = self.status.failures
+        self._attempt(call)
+        failed = self.status.failures > failures
+        self._order_trouble = self.status.state if failed else None
+
+    def _publish(self, taken: DriverReading) -> None:
+        self._backoff.reset()
+        reading = Reading(taken.taken_s, taken.first_deg, taken.second_deg)
+        self.sighting = Sighting(reading, self.status.connections)
+        self.status = self.status._replace(
+            state=self._order_trouble or LinkState.UP,
+            failures_in_row=self.status.failures_in_row if self._order_trouble else 0,
+            stop_pressed=taken.stop_pressed,
+            at_limit=taken.at_limit,
+            fault=taken.fault,
+        )
+
+    def _attempt(self, call: Callable[[], Answer]) -> Answer | None:
+        try:
+            return call()
+        except Exception as error:  # noqa: BLE001 - other people's drivers: the link must outlive any
+            self._blame(error)
+            return None
+
+    def _blame(self, error: Exception) -> None:
+        state, in_row = state_after(error), self.status.failures_in_row + 1
+        self.status = self.status._replace(
+            state=state,
+            failures_in_row=in_row,
+            failures=self.status.failures + 1,
+            last_error=sentence(error),
+        )
+        if self._driver.is_open and in_row >= REOPEN_AFTER.get(state, in_row + 1):
+            self._attempt(self._driver.close)
