@@ -1,10 +1,10 @@
 """The emergency stop on disk, so that neither a restart nor a power cut lifts it."""
 
-import os
 from contextlib import suppress
 from pathlib import Path
 
 from trunnion.safety.emergency import EmergencyStop, decode, encode
+from trunnion.service.durable_file import draft_of, remove_durably, write_durably
 
 _LONGEST_BYTES = 64 * 1024
 
@@ -12,17 +12,15 @@ _LONGEST_BYTES = 64 * 1024
 class EmergencyLatch:
     """One small file: there while stopped, gone while not; no method raises.
 
-    The file is replaced whole, and both it and its folder are flushed to the disk before `write`
-    returns. A draft that was left behind, by a power cut or on a full disk, counts as a stop too.
+    A draft that was left behind, by a power cut or on a full disk, counts as a stop too.
     """
 
     def __init__(self, path: Path) -> None:
         self._path = path
-        self._draft = path.with_name(path.name + ".new")
 
     def read(self) -> EmergencyStop | None:
         """The stop that is latched; a file that cannot be read or understood counts as one."""
-        for path in (self._path, self._draft):
+        for path in (self._path, draft_of(self._path)):
             with suppress(FileNotFoundError):
                 return decode(_text(path))
         return None
@@ -30,7 +28,7 @@ class EmergencyLatch:
     def write(self, stop: EmergencyStop) -> str | None:
         """Keep the stop over a restart; says what went wrong, if anything did."""
         try:
-            self._replace_by(encode(stop).encode(errors="replace"))
+            write_durably(self._path, encode(stop))
         except OSError as error:
             return f"cannot write {self._path}: {error.strerror or error}"
         return None
@@ -38,27 +36,10 @@ class EmergencyLatch:
     def clear(self) -> str | None:
         """Lift the stop; says what went wrong, if anything did, and then the stop stays."""
         try:
-            self._draft.unlink(missing_ok=True)
-            self._path.unlink(missing_ok=True)
-            self._flush_folder()
+            remove_durably(self._path)
         except OSError as error:
             return f"cannot remove {self._path}: {error.strerror or error}"
         return None
-
-    def _replace_by(self, content: bytes) -> None:
-        with self._draft.open("wb") as file:
-            file.write(content)
-            file.flush()
-            os.fsync(file.fileno())
-        self._draft.replace(self._path)
-        self._flush_folder()
-
-    def _flush_folder(self) -> None:
-        folder = os.open(self._path.parent, os.O_RDONLY | os.O_DIRECTORY)
-        try:
-            os.fsync(folder)
-        finally:
-            os.close(folder)
 
 
 def _text(path: Path) -> str:
