@@ -1,18 +1,20 @@
 """Daemon and command over real sockets."""
 
 import os
+import resource
 import socket
 import stat
 import subprocess
 import sys
 import threading
+import time
 from collections.abc import Iterator, Mapping
 from contextlib import suppress
 from pathlib import Path
 
 import pytest
 
-from trunnion.service.clock import SystemClock
+from trunnion.service.clock import SystemClock, VirtualClock
 from trunnion.service.control import (
     BadArguments,
     ControlClient,
@@ -26,7 +28,7 @@ from trunnion.service.control import (
 )
 from trunnion.service.control.endpoint import stop_path
 from trunnion.service.control.errors import SocketUnusable
-from trunnion.service.control.lane import MOST_CONNECTIONS
+from trunnion.service.control.lane import LONGEST_SILENCE_S, MOST_CONNECTIONS
 
 
 class Desk:
@@ -229,3 +231,46 @@ def answer_oddly(listener: socket.socket) -> None:
     connection.recv(4096)
     connection.sendall(b"220 hello\n")
     connection.close()
+
+
+def test_a_connection_that_says_nothing_is_closed_in_time(path: Path, desk: Desk) -> None:
+    clock = VirtualClock(1_893_456_123.75)
+    served = ControlServer(path, {"echo": desk.echo}, desk.stop, clock)
+    silent = connected(path)
+    ask(path, "echo")
+    clock.sleep(LONGEST_SILENCE_S + 1.0)
+    ask(path, "echo")
+    assert silent.recv(4096) == b""
+    silent.close()
+    served.close()
+
+
+@pytest.mark.usefixtures("server")
+def test_who_asks_and_does_not_listen_keeps_nobody_waiting(path: Path) -> None:
+    deaf = connected(path)
+    deaf.settimeout(0.5)
+    request = b'{"v":1,"command":"echo","arguments":{"x":"' + b"y" * 3000 + b'"}}\n'
+    with pytest.raises(TimeoutError):
+        deaf.sendall(1000 * request)
+    assert ask(path, "echo", fine=1)["fine"] == 1
+    deaf.close()
+
+
+@pytest.mark.usefixtures("server")
+def test_a_stop_is_taken_as_soon_as_there_is_a_file_descriptor_again(
+    path: Path, desk: Desk
+) -> None:
+    waiting = [socket.socket(socket.AF_UNIX) for _ in range(2)]
+    limits = resource.getrlimit(resource.RLIMIT_NOFILE)
+    resource.setrlimit(resource.RLIMIT_NOFILE, (waiting[-1].fileno() + 1, limits[1]))
+    try:
+        for each in waiting:
+            each.connect(str(stop_path(path)))
+        waiting[0].sendall(b"stop")
+        time.sleep(0.1)
+        assert desk.causes == []
+    finally:
+        resource.setrlimit(resource.RLIMIT_NOFILE, limits)
+    assert waiting[0].recv(100) == b"stopped\n"
+    for each in waiting:
+        each.close()
