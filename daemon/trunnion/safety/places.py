@@ -1,0 +1,79 @@
+"""Where the mount may be: travel of both joints, and the sky its beam may look at."""
+
+from collections.abc import Iterator
+from math import ceil
+
+from trunnion.mount.joints import Joints, Motion
+from trunnion.mount.motion import stopping_distance_deg
+from trunnion.safety.hazard import Hazard
+from trunnion.safety.limits import SafetyLimits
+from trunnion.safety.verdict import Rule
+
+SPACING_DEG = 0.5
+"""The way is looked at in steps of this size: no narrower than obstacles are surveyed."""
+
+ROUNDING_DEG = 1e-9
+
+
+def find_at(
+    place: Joints, limits: SafetyLimits, allowance_deg: float = ROUNDING_DEG
+) -> Hazard | None:
+    """What forbids this place, if anything; `allowance_deg` forgives that much below or outside."""
+    for name, angle_deg, joint in (
+        ("first", place.first_deg, limits.mount.first),
+        ("second", place.second_deg, limits.mount.second),
+    ):
+        if not joint.lower_deg - allowance_deg <= angle_deg <= joint.upper_deg + allowance_deg:
+            travel = f"{joint.lower_deg:g}…{joint.upper_deg:g}°"
+            return Hazard(Rule.TRAVEL, f"{name} joint at {angle_deg:.2f}°, its travel is {travel}")
+    return _find_in_sky(*limits.mount.hinges.boresight(place), limits, allowance_deg)
+
+
+def find_on_the_way(begin: Joints, end: Joints, limits: SafetyLimits) -> Hazard | None:
+    """What forbids the straight way between two places, its end included and its begin left out."""
+    for place in _steps(begin, end):
+        found = find_at(place, limits)
+        if found is not None:
+            return found
+    return None
+
+
+def stopping_place(motion: Motion, limits: SafetyLimits) -> Joints:
+    """Where both joints come to rest if they brake fully from this motion."""
+    first, second = limits.mount.first, limits.mount.second
+    first_deg = stopping_distance_deg(motion.first_rate_deg_s, first)
+    second_deg = stopping_distance_deg(motion.second_rate_deg_s, second)
+    return Joints(
+        motion.first_deg + (first_deg if motion.first_rate_deg_s > 0.0 else -first_deg),
+        motion.second_deg + (second_deg if motion.second_rate_deg_s > 0.0 else -second_deg),
+    )
+
+
+def _find_in_sky(
+    azimuth_deg: float, elevation_deg: float, limits: SafetyLimits, allowance_deg: float
+) -> Hazard | None:
+    clearance = limits.clearance
+    if elevation_deg < clearance.floor_deg - allowance_deg:
+        finding = f"elevation {elevation_deg:.2f}°, the floor is {clearance.floor_deg:g}°"
+        return Hazard(Rule.FLOOR, finding)
+    lowest_deg = clearance.lowest_deg(azimuth_deg)
+    if elevation_deg < lowest_deg - allowance_deg:
+        finding = (
+            f"elevation {elevation_deg:.2f}° at azimuth {azimuth_deg:.1f}°, "
+            f"the horizon mask stands at {lowest_deg:.2f}°"
+        )
+        return Hazard(Rule.MASK, finding)
+    sector = clearance.keep_out(azimuth_deg, elevation_deg)
+    if sector is not None:
+        finding = f"azimuth {azimuth_deg:.1f}°, elevation {elevation_deg:.1f}° is in {sector.name}"
+        return Hazard(Rule.KEEP_OUT, finding)
+    return None
+
+
+def _steps(begin: Joints, end: Joints) -> Iterator[Joints]:
+    first_deg, second_deg = end.first_deg - begin.first_deg, end.second_deg - begin.second_deg
+    steps = max(1, ceil(max(abs(first_deg), abs(second_deg)) / SPACING_DEG))
+    for step in range(1, steps):
+        share = step / steps
+        yield Joints(begin.first_deg + share * first_deg, begin.second_deg + share * second_deg)
+    yield end

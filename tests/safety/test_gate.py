@@ -1,0 +1,235 @@
+"""The gate: what passes, what is slowed, what is halted, and what it says."""
+
+from dataclasses import replace
+from typing import Any
+
+import pytest
+from hypothesis import given
+from hypothesis import strategies as st
+
+from tests.mount.mounts import MOUNT
+from tests.safety.bench_mount import CALM, LIMITS, Bench, rules
+from trunnion.mount.joints import Joints, Motion, Reading
+from trunnion.mount.motion import approach
+from trunnion.safety.emergency import EmergencyStop
+from trunnion.safety.gate import Gate
+from trunnion.safety.places import find_at, find_on_the_way, stopping_place
+from trunnion.safety.verdict import Halt, Move, Rule
+from trunnion.safety.world import World
+
+STILL = Motion(201.7, 41.3)
+
+
+def test_a_demand_within_all_limits_leaves_as_it_is() -> None:
+    bench = Bench()
+    bench.turn(STILL)
+    demand = Motion(201.7101, 41.3023, 0.202, 0.046)
+    assert bench.turn(demand) == (Move(demand), (), False, None)
+
+
+def test_rest_is_no_intervention() -> None:
+    assert Bench().turn(None) == (Halt(), (), False, None)
+
+
+def test_a_demand_that_leaps_is_slowed_to_what_the_joints_can_do() -> None:
+    bench = Bench()
+    bench.turn(STILL)
+    verdict = bench.turn(Motion(250.3, 60.1))
+    assert isinstance(verdict.order, Move)
+    expected = approach(STILL, Motion(250.3, 60.1), MOUNT, 0.1)
+    assert tuple(verdict.order.motion) == pytest.approx(tuple(expected), abs=1e-9)
+    assert rules(verdict) == {Rule.RATE}
+
+
+@pytest.mark.parametrize(
+    ("demand", "rule"),
+    [
+        (Motion(268.1, 41.3), Rule.TRAVEL),
+        (Motion(201.7, 91.2), Rule.TRAVEL),
+        (Motion(201.7, 5.2), Rule.FLOOR),
+        (Motion(90.1, 8.7), Rule.MASK),
+        (Motion(143.9, 20.3), Rule.KEEP_OUT),
+        (Motion(float("nan"), 41.3), Rule.NOT_FINITE),
+        (Motion(201.7, 41.3, float("inf"), 0.0), Rule.NOT_FINITE),
+    ],
+)
+def test_a_demand_outside_is_halted(demand: Motion, rule: Rule) -> None:
+    bench = Bench()
+    bench.turn(STILL)
+    verdict = bench.turn(demand)
+    assert verdict.order == Halt()
+    assert rule in rules(verdict)
+
+
+def test_the_way_counts_and_not_only_its_end() -> None:
+    """The encoder says one side of the mast, the order is on the other."""
+    gate = Gate(LIMITS)
+    reading = Reading(99.9, 140.9, 20.3)
+    beyond = Motion(147.1, 20.3)
+    assert find_at(beyond.joints, LIMITS) is None
+    gate.judge(99.9, Motion(140.9, 20.3), reading, CALM)
+    found = find_on_the_way(reading.joints, beyond.joints, LIMITS)
+    assert found is not None
+    assert found.rule is Rule.KEEP_OUT
+
+
+def test_a_descent_onto_the_floor_brakes_in_time() -> None:
+    bench = Bench(place=Joints(201.7, 9.3))
+    demand = Motion(201.7, 9.3)
+    lowest_deg = 90.0
+    seen = set()
+    for _ in range(80):
+        demand = approach(demand, Motion(201.7, 5.3, 0.0, -4.0), MOUNT, 0.1)
+        verdict = bench.turn(demand)
+        seen |= rules(verdict)
+        if isinstance(verdict.order, Move):
+            lowest_deg = min(lowest_deg, stopping_place(verdict.order.motion, LIMITS).second_deg)
+    assert lowest_deg >= 5.3 - 1e-6
+    assert Rule.STOPPING in seen
+
+
+@pytest.mark.parametrize(
+    ("change", "rule"),
+    [
+        ({"emergency": EmergencyStop("somebody pressed it", 17.3)}, Rule.EMERGENCY_STOP),
+        ({"is_link_up": False}, Rule.LINK_DOWN),
+        ({"lateness_s": 0.51}, Rule.TURN_LATE),
+        ({"mount_fault": "drive too hot"}, Rule.MOUNT_FAULT),
+    ],
+)
+def test_what_is_wrong_around_halts_and_the_end_of_it_lets_go(
+    change: dict[str, object], rule: Rule
+) -> None:
+    bench = Bench()
+    bench.turn(STILL)
+    verdict = bench.turn(STILL, World(**{**CALM._asdict(), **change}))
+    assert verdict.order == Halt()
+    assert rules(verdict) == {rule}
+    assert bench.turn(STILL).order == Move(STILL)
+
+
+def test_an_old_reading_halts_and_a_missing_one_too() -> None:
+    bench = Bench()
+    assert rules(bench.turn(STILL, age_s=1.01)) == {Rule.READING_OLD}
+    assert rules(bench.gate.judge(bench.mono_s, STILL, None, CALM)) == {Rule.NO_READING}
+
+
+def test_one_impossible_reading_halts_for_one_turn() -> None:
+    bench = Bench()
+    bench.turn(STILL)
+    place, bench.place = bench.place, Joints(311.7, 41.3)
+    assert rules(bench.turn(STILL)) == {Rule.READING_IMPOSSIBLE}
+    bench.place = Joints(231.7, 41.3)
+    assert rules(bench.turn(STILL)) == {Rule.READING_JUMPED}
+    bench.place = place
+    assert bench.turn(STILL).order == Move(STILL)
+
+
+def test_a_mount_that_stays_behind_is_stopped_for_good() -> None:
+    bench = Bench()
+    demand, stuck, latched = STILL, bench.place, None
+    for _ in range(60):
+        demand = approach(demand, Motion(231.7, 41.3), MOUNT, 0.1)
+        verdict = bench.turn(demand)
+        bench.place = stuck
+        latched = latched or verdict.latch
+    assert latched is not None
+    assert "from where it was ordered to be" in latched
+
+
+def test_a_mount_that_moves_by_itself_is_stopped_for_good() -> None:
+    bench = Bench()
+    for _ in range(80):
+        assert bench.turn(None).latch is None
+    bench.place = Joints(201.7, 41.1)
+    for _ in range(9):
+        bench.place = Joints(201.7, bench.place.second_deg - 0.2)
+        verdict = bench.turn(None)
+    assert verdict.latch is not None
+    assert rules(verdict) == {Rule.SLIPPED}
+
+
+def test_a_mount_wired_the_wrong_way_is_stopped_for_good() -> None:
+    bench = Bench()
+    demand, latched = STILL, False
+    for _ in range(20):
+        demand = approach(demand, Motion(231.7, 41.3), MOUNT, 0.1)
+        verdict = bench.turn(demand)
+        bench.place = Joints(2 * STILL.first_deg - demand.first_deg, 41.3)
+        latched = latched or Rule.WRONG_WAY in rules(verdict)
+    assert latched
+
+
+def test_a_mount_outside_moves_only_inwards_slowly_and_with_leave() -> None:
+    outside = Joints(201.7, 4.9)
+    leave = CALM._replace(may_recover=True)
+    up, down = Motion(201.7, 5.0, 0.0, 0.3), Motion(201.7, 4.8, 0.0, -0.3)
+    assert rules(Bench(place=outside).turn(up)) == {Rule.OUTSIDE}
+    assert rules(Bench(place=outside).turn(down, leave)) == {Rule.OUTSIDE}
+    assert rules(Bench(place=outside).turn(up._replace(second_rate_deg_s=0.6), leave))
+    assert Bench(place=outside).turn(up, leave).order == Move(up)
+
+
+@pytest.mark.parametrize(
+    ("limits", "world", "rule"),
+    [
+        ({"wind_stow_gust_m_s": 17.0}, {"wind_gust_m_s": 17.2}, Rule.WIND),
+        ({"wind_stow_mean_m_s": 12.0}, {"wind_mean_m_s": 12.3}, Rule.WIND),
+        ({"wind_stow_gust_m_s": 17.0}, {}, Rule.WIND_UNKNOWN),
+        ({"heartbeat_max_age_s": 5.0}, {"heartbeat_age_s": 5.2}, Rule.HEARTBEAT_LOST),
+        ({"heartbeat_max_age_s": 5.0}, {}, Rule.HEARTBEAT_LOST),
+    ],
+)
+def test_what_asks_for_stow_lets_the_mount_go_there(
+    limits: dict[str, float], world: dict[str, Any], rule: Rule
+) -> None:
+    bench = Bench(gate=Gate(replace(LIMITS, **limits)))  # type: ignore[arg-type]
+    verdict = bench.turn(STILL, CALM._replace(**world))
+    assert (verdict.order, verdict.wants_stow, rules(verdict)) == (Move(STILL), True, {rule})
+
+
+@pytest.mark.parametrize("error_s", [0.31, None])
+def test_a_clock_that_may_be_wrong_halts(error_s: float | None) -> None:
+    bench = Bench(gate=Gate(replace(LIMITS, clock_max_error_s=0.3)))
+    verdict = bench.turn(STILL, CALM._replace(clock_error_s=error_s))
+    assert (verdict.order, rules(verdict)) == (Halt(), {Rule.CLOCK_UNTRUSTED})
+
+
+wild = st.floats(-400.0, 400.0)
+demands = st.one_of(
+    st.none(),
+    st.builds(Motion, wild, wild, wild, wild),
+    st.builds(Motion, st.floats(-271.0, 268.0), st.floats(1.5, 91.0), wild, wild),
+)
+
+
+@given(st.lists(st.tuples(demands, st.sampled_from([0.05, 0.1, 0.13, 1.0])), max_size=40))
+def test_whatever_is_asked_what_leaves_is_within_every_limit(
+    asked: list[tuple[Motion | None, float]],
+) -> None:
+    bench = Bench()
+    before: Motion | None = None
+    for demand, dt_s in asked:
+        place = bench.place
+        order = bench.turn(demand, dt_s=dt_s).order
+        if isinstance(order, Move):
+            base = before or Motion(*place)
+            assert find_at(order.motion.joints, LIMITS) is None
+            assert find_on_the_way(place, order.motion.joints, LIMITS) is None
+            assert find_at(stopping_place(order.motion, LIMITS), LIMITS, 1e-6) is None
+            for joint, limits in enumerate((MOUNT.first, MOUNT.second)):
+                assert abs(order.motion[2 + joint]) <= limits.rate_deg_s + 1e-9
+                change = abs(order.motion[2 + joint] - base[2 + joint])
+                assert change <= limits.acceleration_deg_s2 * dt_s + 1e-9
+        before = order.motion if isinstance(order, Move) else None
+
+
+def test_an_intervention_says_what_was_found_what_is_done_and_until_when() -> None:
+    bench = Bench()
+    bench.turn(STILL)
+    verdict = bench.turn(STILL, CALM._replace(lateness_s=0.73))
+    (intervention,) = verdict.interventions
+    assert intervention.sentence == (
+        "the control turn came 0.73 s late, 0.5 s are allowed (control turn late): "
+        "halted until the turns come in time"
+    )
