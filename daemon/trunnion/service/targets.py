@@ -1,0 +1,118 @@
+"""Targets by name: what a plan or a command line calls them, as something to point at."""
+
+from collections.abc import Iterable, Sequence
+from functools import cached_property
+from pathlib import Path
+
+from trunnion.files.elements import load_elements
+from trunnion.files.problems import FileProblems, Problem, did_you_mean
+from trunnion.files.station import StationFile
+from trunnion.files.target_text import SUN, fixed_direction, is_builtin, is_sun
+from trunnion.service.errors import ServiceError
+from trunnion.sky.elements import ElementSet, Satellite
+from trunnion.sky.fixed import FixedDirection
+from trunnion.sky.look import Target
+from trunnion.sky.sun import Sun
+from trunnion.sky.viewpoint import Viewpoint
+
+_MOST_LISTED = 12
+
+
+class UnknownTarget(ServiceError):  # noqa: N818 - named for what happened
+    """Nothing goes by this name, or more than one thing does."""
+
+
+class TargetBook:
+    """All targets of one station, seen from one viewpoint; reads the elements when first needed."""
+
+    def __init__(self, station: StationFile, viewpoint: Viewpoint) -> None:
+        self._station = station
+        self._viewpoint = viewpoint
+
+    @cached_property
+    def elements(self) -> tuple[ElementSet, ...]:
+        """The station's orbit elements, all files together; raises FileProblems."""
+        return _all_elements(self._station.files.elements)
+
+    def resolve(self, text: str) -> Target:
+        """Find the target that a plan means by this text.
+
+        The station's own names come first, then `sun` and `fixed:AZIMUTH,ELEVATION`, then name or
+        catalogue number of orbit elements, of which the newest count. Raises UnknownTarget, and
+        FileProblems for elements that cannot be read.
+        """
+        meant = self._station.targets.get(text, text)
+        if is_builtin(meant):
+            return _builtin(meant, self._viewpoint)
+        return Satellite(_newest(self._called(meant), meant), self._viewpoint)
+
+    def resolve_or_read(self, text: str) -> Target:
+        """Find what a command line means: a target as above, or a file with one set of elements."""
+        path = Path(text)
+        if text in self._station.targets or is_builtin(text) or not path.is_file():
+            return self.resolve(text)
+        return Satellite(_newest(load_elements(path), text), self._viewpoint)
+
+    def _called(self, name: str) -> Sequence[ElementSet]:
+        found = [each for each in self.elements if _is_called(each, name)]
+        if not found:
+            raise UnknownTarget(f"expected a known target, got {name!r}{self._suggestion(name)}")
+        return found
+
+    def _suggestion(self, name: str) -> str:
+        known = [SUN, *self._station.targets, *(each.name for each in self.elements)]
+        listed = ", ".join(known[:_MOST_LISTED]) + (", …" if len(known) > _MOST_LISTED else "")
+        return did_you_mean(name, known) or f"; known here: {listed}"
+
+
+def resolve_target(text: str, station: StationFile, viewpoint: Viewpoint) -> Target:
+    """Find one target; a TargetBook finds many without reading the elements again and again."""
+    return TargetBook(station, viewpoint).resolve(text)
+
+
+def _builtin(text: str, viewpoint: Viewpoint) -> Target:
+    if is_sun(text):
+        return Sun(viewpoint)
+    try:
+        direction = fixed_direction(text)
+    except ValueError as error:
+        raise UnknownTarget(str(error)) from None
+    if direction is None:
+        raise UnknownTarget(f"expected a target that has a meaning of its own, got {text!r}")
+    return FixedDirection(*direction)
+
+
+def _is_called(element_set: ElementSet, name: str) -> bool:
+    if name.isascii() and name.isdigit() and int(name) == element_set.catalogue_number:
+        return True
+    number_as_written = element_set.line_1[2:7].strip()
+    return name.casefold() in (element_set.name.casefold(), number_as_written.casefold())
+
+
+def _newest(sets: Iterable[ElementSet], text: str) -> ElementSet:
+    """Return the newest set of the one object that they are all of."""
+    by_number = {each.catalogue_number: each for each in sorted(sets, key=_epoch)}
+    if len(by_number) != 1:
+        listed = ", ".join(f"{each.name} ({number})" for number, each in by_number.items())
+        raise UnknownTarget(
+            f"expected {text!r} to mean one spacecraft, got {len(by_number)}: {listed[:400]}"
+        )
+    (newest,) = by_number.values()
+    return newest
+
+
+def _epoch(element_set: ElementSet) -> float:
+    return element_set.epoch_utc_s
+
+
+def _all_elements(paths: Iterable[Path]) -> tuple[ElementSet, ...]:
+    found: list[ElementSet] = []
+    problems: list[Problem] = []
+    for path in paths:
+        try:
+            found.extend(load_elements(path))
+        except FileProblems as trouble:
+            problems.extend(trouble.problems)
+    if problems:
+        raise FileProblems(problems)
+    return tuple(found)
