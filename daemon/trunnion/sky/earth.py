@@ -96,15 +96,13 @@ class EarthOrientation:
             nothing = np.zeros_like(utc_s)
             return nothing, nothing, nothing
         is_covered = (utc_s >= self.day_s[0]) & (utc_s <= self.day_s[-1])
-        index = np.searchsorted(self.leap_seconds.from_s, utc_s, side="right") - 1
-        tai_minus_utc_s = np.array(self.leap_seconds.tai_minus_utc_s)[np.maximum(index, 0)]
         days = np.array(self.day_s)
         ut1, x, y = (
             np.interp(utc_s, days, column)
             for column in (self.ut1_minus_tai_s, self.pole_x, self.pole_y)
         )
         return (
-            np.where(is_covered, ut1 + tai_minus_utc_s, 0.0),
+            np.where(is_covered, ut1 + self.leap_seconds.at_many(utc_s), 0.0),
             np.where(is_covered, x, 0.0),
             np.where(is_covered, y, 0.0),
         )

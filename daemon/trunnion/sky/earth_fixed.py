@@ -30,6 +30,13 @@ def sidereal_angle(jd_midnight: float, ut1_fraction: float) -> float:
     return fmod(seconds, SECONDS_A_DAY) * (2.0 * pi / SECONDS_A_DAY)
 
 
+def rotation_angle(jd_midnight: float, ut1_fraction: float) -> float:
+    """Earth rotation angle (rad, within one turn): IAU 2000, Capitaine, Guinot, McCarthy."""
+    days = (jd_midnight - J2000_JD) + ut1_fraction
+    turns = 0.7790572732640 + 0.00273781191135448 * days + (ut1_fraction + 0.5)
+    return fmod(turns, 1.0) * (2.0 * pi)
+
+
 def earth_fixed(
     position_km: Vector, velocity_km_s: Vector, sidereal: float, turned: Turned
 ) -> tuple[Vector, Vector]:
@@ -71,3 +78,10 @@ def sidereal_angles(jd_midnight: FloatArray, ut1_fraction: FloatArray) -> FloatA
     a, b, c, d = _GMST_S
     seconds = a + (b + (c + d * centuries) * centuries) * centuries + SECONDS_A_DAY * ut1_fraction
     return np.fmod(seconds, SECONDS_A_DAY) * (2.0 * pi / SECONDS_A_DAY)
+
+
+def rotation_angles(jd_midnight: FloatArray, ut1_fraction: FloatArray) -> FloatArray:
+    """The same as `rotation_angle` for arrays of shape (n,)."""
+    days = (jd_midnight - J2000_JD) + ut1_fraction
+    turns = 0.7790572732640 + 0.00273781191135448 * days + (ut1_fraction + 0.5)
+    return np.fmod(turns, 1.0) * (2.0 * pi)

@@ -6,8 +6,11 @@ from datetime import UTC, datetime
 from pathlib import Path
 from typing import Self
 
+import numpy as np
+
 from trunnion.sky.errors import SkyError
 from trunnion.sky.instants import SECONDS_A_DAY
+from trunnion.sky.look import FloatArray
 
 MJD_UNIX_EPOCH = 40587
 TT_MINUS_TAI_S = 32.184
@@ -46,6 +49,11 @@ class LeapSeconds:
     def at(self, utc_s: float) -> float:
         """TAI − UTC in seconds; before 1972 that of 1972, since nothing is tracked there."""
         return self.tai_minus_utc_s[max(0, bisect_right(self.from_s, utc_s) - 1)]
+
+    def at_many(self, utc_s: FloatArray) -> FloatArray:
+        """The same for an array of instants."""
+        index = np.searchsorted(self.from_s, utc_s, side="right") - 1
+        return np.array(self.tai_minus_utc_s)[np.maximum(index, 0)]
 
 
 def mjd_to_utc_s(mjd: float) -> float:
