@@ -1,0 +1,134 @@
+"""When a target is up: rise, culmination and set over a window of time.
+
+The elevation of anything in orbit has one maximum and one minimum a revolution, many minutes
+apart. So a grid of a minute brackets every maximum by the sign of the elevation's rate; each is
+refined and joins the grid before rise and set are looked for. A pass that reaches the threshold
+for a second only is therefore found like any other.
+"""
+
+from collections.abc import Callable
+from dataclasses import dataclass
+
+import numpy as np
+from numpy.typing import NDArray
+
+from trunnion.sky.errors import SkyError
+from trunnion.sky.look import FloatArray, Target
+from trunnion.sky.roots import changes
+
+GRID_S = 60.0
+LONGEST_WINDOW_S = 366.0 * 86400.0
+MASK_STEP_DEG = 0.25
+"""A gap in a horizon mask that a target crosses in a smaller angle than this can be overlooked."""
+
+Threshold = float | Callable[[float], float]
+
+
+@dataclass(frozen=True, slots=True)
+class Pass:
+    """One stretch of time above the threshold.
+
+    Instants are UTC as POSIX seconds. `rise_s` is None for a target that is up when the window
+    opens, `set_s` for one that is up when it closes, and `culmination_s`, the instant of the
+    highest elevation, where the window cuts the pass at its highest.
+    """
+
+    rise_s: float | None
+    culmination_s: float | None
+    set_s: float | None
+    highest_elevation_deg: float
+
+
+def find_passes(
+    target: Target, from_s: float, until_s: float, above: Threshold
+) -> tuple[Pass, ...]:
+    """All passes of a target within a window, in order of time.
+
+    `above` is an elevation in degrees, or a function from azimuth to elevation: a horizon mask. The
+    pieces into which a mask cuts a pass are passes of their own. Raises SkyError for a window that
+    is empty or longer than a year, NoPosition where the target has none in it.
+    """
+    if not 0.0 < until_s - from_s <= LONGEST_WINDOW_S:
+        raise SkyError(
+            f"expected a window of more than 0 and at most {LONGEST_WINDOW_S / 86400.0:g} days, "
+            f"got {(until_s - from_s) / 86400.0:g} days"
+        )
+
+    def is_up(utc_s: FloatArray) -> NDArray[np.bool_]:
+        looks = target.looks(utc_s)
+        return _is_above(looks.azimuth_deg, looks.elevation_deg, above)
+
+    nodes_s = _nodes(target, from_s, until_s, above)
+    ups = is_up(nodes_s)
+    turns = np.flatnonzero(ups[1:] != ups[:-1])
+    turns_s = changes(is_up, nodes_s[turns], nodes_s[turns + 1])
+    rises = [None] * bool(ups[0]) + [float(s) for s in turns_s[~ups[turns]]]
+    sets = [float(s) for s in turns_s[ups[turns]]] + [None] * bool(ups[-1])
+    return tuple(
+        _pass(target, nodes_s, (from_s, until_s), rise_s, set_s)
+        for rise_s, set_s in zip(rises, sets, strict=True)
+    )
+
+
+def _nodes(target: Target, from_s: float, until_s: float, above: Threshold) -> FloatArray:
+    """Instants between which the target crosses the threshold once at most."""
+    grid_s = np.linspace(from_s, until_s, max(2, int((until_s - from_s) / GRID_S) + 2))
+    nodes_s = np.union1d(grid_s, _culminations(target, grid_s))
+    return _finer_at_mask(target, nodes_s, above) if callable(above) else nodes_s
+
+
+def _culminations(target: Target, grid_s: FloatArray) -> FloatArray:
+    """The maxima of the elevation between the nodes of a grid."""
+
+    def is_rising(utc_s: FloatArray) -> NDArray[np.bool_]:
+        rising: NDArray[np.bool_] = target.looks(utc_s).elevation_rate_deg_s > 0.0
+        return rising
+
+    rising = is_rising(grid_s)
+    before = np.flatnonzero(rising[:-1] & ~rising[1:])
+    return changes(is_rising, grid_s[before], grid_s[before + 1])
+
+
+def _finer_at_mask(
+    target: Target, nodes_s: FloatArray, mask: Callable[[float], float]
+) -> FloatArray:
+    """The nodes, with others between them where the target moves far along or across a mask."""
+    looks = target.looks(nodes_s)
+    lowest_deg = min(map(mask, np.arange(0.0, 360.0, MASK_STEP_DEG).tolist()))
+    is_near = np.maximum(looks.elevation_deg[1:], looks.elevation_deg[:-1]) >= lowest_deg
+    turn_deg = np.abs((np.diff(looks.azimuth_deg) + 180.0) % 360.0 - 180.0)
+    climb_deg = np.abs(np.diff(looks.elevation_deg))
+    pieces = np.where(is_near, np.ceil(np.maximum(turn_deg, climb_deg) / MASK_STEP_DEG), 1.0)
+    finer = [
+        np.linspace(before, after, int(count) + 1)[1:]
+        for before, after, count in zip(
+            nodes_s[:-1], nodes_s[1:], np.maximum(pieces, 1.0), strict=True
+        )
+    ]
+    return np.concatenate([nodes_s[:1], *finer])
+
+
+def _is_above(
+    azimuth_deg: FloatArray, elevation_deg: FloatArray, above: Threshold
+) -> NDArray[np.bool_]:
+    if not callable(above):
+        return elevation_deg >= above
+    return elevation_deg >= np.array([above(float(azimuth)) for azimuth in azimuth_deg])
+
+
+def _pass(
+    target: Target,
+    nodes_s: FloatArray,
+    window: tuple[float, float],
+    rise_s: float | None,
+    set_s: float | None,
+) -> Pass:
+    begin_s = window[0] if rise_s is None else rise_s
+    end_s = window[1] if set_s is None else set_s
+    within = nodes_s[(nodes_s > begin_s) & (nodes_s < end_s)]
+    instants_s = np.concatenate(([begin_s], within, [end_s]))
+    elevation_deg = target.looks(instants_s).elevation_deg
+    highest = int(np.argmax(elevation_deg))
+    is_cut = (highest == 0 and rise_s is None) or (highest == len(instants_s) - 1 and set_s is None)
+    culmination_s = None if is_cut else float(instants_s[highest])
+    return Pass(rise_s, culmination_s, set_s, float(elevation_deg[highest]))
