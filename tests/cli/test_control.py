@@ -9,7 +9,7 @@ import pytest
 
 from tests.cli.command import trunnion
 from trunnion.service.clock import SystemClock
-from trunnion.service.control import ControlServer, Peer
+from trunnion.service.control import ControlServer
 from trunnion.service.errors import ServiceError
 
 STATUS: dict[str, object] = {
@@ -32,7 +32,7 @@ class Daemon:
         self.asked.append(command)
         return result
 
-    def refuse(self, _: Mapping[str, object], __: Peer) -> Mapping[str, object]:
+    def refuse(self, _: Mapping[str, object]) -> Mapping[str, object]:
         raise ServiceError("the emergency stop stays: the button is still pressed")
 
 
@@ -42,9 +42,9 @@ def daemon(tmp_path: Path) -> Iterator[Daemon]:
     station.write_text("files: {control_socket: c.sock}\n")
     daemon = Daemon(station)
     handlers = {
-        "status": lambda _, __: daemon.answer("status", STATUS),
-        "stow": lambda _, __: daemon.answer("stow", {}),
-        "resume": lambda _, __: daemon.answer("resume", {}),
+        "status": lambda _: daemon.answer("status", STATUS),
+        "stow": lambda _: daemon.answer("stow", {}),
+        "resume": lambda _: daemon.answer("resume", {}),
         "reset": daemon.refuse,
     }
     server = ControlServer(tmp_path / "c.sock", handlers, daemon.asked.append, SystemClock())

@@ -16,7 +16,7 @@ def test_the_version_is_told() -> None:
 def test_help_names_every_command_and_the_caution() -> None:
     told = trunnion("--help")
     assert told.exit_code == 0
-    assert all(word in told.stdout for word in ("init", "status", "emergency stop"))
+    assert all(word in told.stdout for word in ("init", "angles", "passes", "emergency stop"))
 
 
 def test_an_unknown_command_is_a_mistake_in_the_asking() -> None:

@@ -6,10 +6,12 @@ from typing import Annotated, Any
 import typer
 from typer.core import TyperGroup
 
+from trunnion.cli.angles import angles
 from trunnion.cli.control import reset, resume, status, stop, stow
 from trunnion.cli.errors import told_plainly
 from trunnion.cli.init import init
 from trunnion.cli.output import print_text
+from trunnion.cli.passes import passes
 from trunnion.cli.records import records_app
 from trunnion.cli.schema import schema
 from trunnion.cli.show import show
@@ -53,7 +55,7 @@ def build_app() -> typer.Typer:
         pretty_exceptions_enable=False,
     )
     app.callback()(_trunnion)
-    for command in (init, show, schema, status, stop, reset, stow, resume):
+    for command in (init, show, schema, angles, passes, status, stop, reset, stow, resume):
         app.command()(command)
     app.add_typer(records_app(), name="records")
     return app
