@@ -72,7 +72,7 @@ class Gate:
         forbidden = find_at(demand.joints, self._limits) or self._find_before(motion, reading)
         if forbidden is not None:
             return None, [*found, forbidden]
-        beyond = find_at(stopping_place(motion, self._limits), self._limits)
+        beyond = self._find_beyond(motion)
         if beyond is None:
             return motion, found
         found.append(Hazard(Rule.STOPPING, f"could not stop in time: {beyond.finding}"))
@@ -82,6 +82,19 @@ class Gate:
         if self._find_before(braking, reading) is not None:
             return None, [*found, beyond]
         return braking, found
+
+    def _find_beyond(self, motion: Motion) -> Hazard | None:
+        """What forbids the place where the joints would rest if they braked from now on.
+
+        From the order's own rate, and from the rate that the readings show: a mount that runs ahead
+        of its orders, or after them, needs its own room.
+        """
+        measured = self._watch.measured()
+        beyond = find_at(stopping_place(motion, self._limits), self._limits)
+        if beyond is not None or measured is None:
+            return beyond
+        place = stopping_place(measured, self._limits)
+        return find_at(place, self._limits, self._limits.encoder_error_deg)
 
     def _find_before(self, motion: Motion, reading: Reading) -> Hazard | None:
         """What forbids the order itself, or the way to it from where the mount says it is.

@@ -29,6 +29,7 @@ class ReadingWatch:
     def __init__(self, limits: SafetyLimits) -> None:
         self._limits = limits
         self._believed: Reading | None = None
+        self._before: Reading | None = None
         self._since_s: dict[Rule, float] = {}
         self._rest: Joints | None = None
         self._move_begin: tuple[Joints, Joints] | None = None
@@ -52,8 +53,25 @@ class ReadingWatch:
         if impossible is not None:
             yield impossible
             return
+        if self._believed is None or reading.taken_s > self._believed.taken_s:
+            self._before = self._believed
         self._believed = reading
         yield from self._find_disobedience(mono_s, reading, ordered)
+
+    def measured(self) -> Motion | None:
+        """The newest believed reading, with the rates between it and the one before."""
+        now, before = self._believed, self._before
+        if now is None:
+            return None
+        if before is None:
+            return Motion(*now.joints)
+        since_s = now.taken_s - before.taken_s
+        return Motion(
+            now.first_deg,
+            now.second_deg,
+            (now.first_deg - before.first_deg) / since_s,
+            (now.second_deg - before.second_deg) / since_s,
+        )
 
     def _find_impossible(self, reading: Reading) -> Hazard | None:
         mount = self._limits.mount
