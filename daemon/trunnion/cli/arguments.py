@@ -68,3 +68,8 @@ At = Annotated[
         help="An instant, such as 2026-12-01T10:15:00Z; may be given several times.",
     ),
 ]
+
+OptionalPlan = Annotated[
+    Path | None,
+    typer.Option("--plan", metavar="FILE", help="A plan file instead of the station's own."),
+]

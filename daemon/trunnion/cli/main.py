@@ -7,14 +7,35 @@ import typer
 from typer.core import TyperGroup
 
 from trunnion.cli.angles import angles
+from trunnion.cli.check import check
 from trunnion.cli.control import reset, resume, status, stop, stow
+from trunnion.cli.demo import demo
 from trunnion.cli.errors import told_plainly
 from trunnion.cli.init import init
 from trunnion.cli.output import print_text
 from trunnion.cli.passes import passes
 from trunnion.cli.records import records_app
+from trunnion.cli.rehearse import rehearse
+from trunnion.cli.run import run
 from trunnion.cli.schema import schema
 from trunnion.cli.show import show
+
+_COMMANDS = (
+    demo,
+    init,
+    show,
+    schema,
+    check,
+    angles,
+    passes,
+    rehearse,
+    run,
+    status,
+    stop,
+    reset,
+    stow,
+    resume,
+)
 
 
 class _Commands(TyperGroup):
@@ -55,7 +76,7 @@ def build_app() -> typer.Typer:
         pretty_exceptions_enable=False,
     )
     app.callback()(_trunnion)
-    for command in (init, show, schema, angles, passes, status, stop, reset, stow, resume):
+    for command in _COMMANDS:
         app.command()(command)
     app.add_typer(records_app(), name="records")
     return app

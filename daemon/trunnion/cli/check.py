@@ -1,0 +1,153 @@
+"""`trunnion check`: everything that can be known of a plan before it is flown."""
+
+from typing import TYPE_CHECKING, Annotated
+
+import typer
+
+from trunnion.cli.arguments import AsJson, OptionalPlan, Station
+from trunnion.cli.errors import FAILED
+from trunnion.cli.output import number, print_json, print_table, print_text
+from trunnion.sky.instants import format_utc
+
+if TYPE_CHECKING:
+    from trunnion.service.briefing import Briefing, ContactBriefing
+
+
+def check(
+    station: Station,
+    *,
+    plan: OptionalPlan = None,
+    now: Annotated[
+        str | None,
+        typer.Option(metavar="TIME", help="Check as if it were this time; by default it is now."),
+    ] = None,
+    as_json: AsJson = False,
+) -> None:
+    """Check a station and its plan: files, times, turns of the cable, rates, conflicts.
+
+    Exit code 1 when something would fail.
+    """
+    from trunnion.service.briefing import BriefingOrder, brief
+    from trunnion.service.clock import SystemClock
+    from trunnion.service.drivers import build_driver
+
+    now_s = SystemClock().utc_s() if now is None else _instant(now)
+    briefing = brief(BriefingOrder(station, plan, now_s))
+    build_driver(briefing.station, SystemClock())
+    if as_json:
+        print_json(_plain(briefing))
+    else:
+        _print(briefing)
+    if not all(each.is_served for each in briefing.contacts):
+        raise typer.Exit(FAILED)
+
+
+def _instant(text: str) -> float:
+    from trunnion.sky.instants import parse_utc
+
+    try:
+        return parse_utc(text)
+    except ValueError as error:
+        raise typer.BadParameter(str(error)) from None
+
+
+def _plain(briefing: "Briefing") -> dict[str, object]:
+    return {
+        "station": briefing.station.site.name,
+        "is_served": all(each.is_served for each in briefing.contacts),
+        "contacts": [_plain_contact(each) for each in briefing.contacts],
+    }
+
+
+def _plain_contact(each: "ContactBriefing") -> dict[str, object]:
+    forecast = each.forecast
+    told: dict[str, object] = {
+        "id": each.contact.id,
+        "target": each.contact.target,
+        "priority": each.contact.priority,
+        "is_served": each.is_served,
+        "trouble": each.trouble,
+        "element_age_days": each.element_age_days,
+        "findings": [],
+    }
+    if forecast is not None:
+        told |= {
+            "rise": _time(forecast.begin_s),
+            "culmination": _time(forecast.culmination_s),
+            "set": _time(forecast.end_s),
+            "highest_elevation_deg": forecast.highest_elevation_deg,
+            "first_joint_deg": [forecast.first_joint_begin_deg, forecast.first_joint_end_deg],
+            "worst_error_deg": forecast.worst_error_deg,
+            "outside_beam_s": forecast.outside_beam_s,
+            "findings": [
+                {
+                    "kind": finding.kind.value,
+                    "is_failure": finding.is_failure,
+                    "begin": format_utc(finding.begin_s),
+                    "end": format_utc(finding.end_s),
+                    "sentence": finding.sentence,
+                }
+                for finding in forecast.findings
+            ],
+        }
+    return told
+
+
+def _time(utc_s: float | None) -> str | None:
+    return None if utc_s is None else format_utc(utc_s, 0)
+
+
+def _print(briefing: "Briefing") -> None:
+    columns = (
+        "contact",
+        "target",
+        "rise (UTC)",
+        "highest",
+        "set",
+        "elevation [°]",
+        "first joint [°]",
+        "worst error [°]",
+        "elements [days]",
+        "verdict",
+    )
+    print_table(f"Plan of {briefing.station.site.name}", columns, map(_row, briefing.contacts))
+    for each in briefing.contacts:
+        for sentence in _sentences(each):
+            print_text(f"{each.contact.id}: {sentence}")
+
+
+def _row(each: "ContactBriefing") -> tuple[str, ...]:
+    forecast = each.forecast
+    verdict = "served" if each.is_served else "NOT served as asked"
+    if forecast is None or forecast.begin_s is None:
+        return (each.contact.id, each.contact.target, *("–",) * 6, _age(each), verdict)
+    turns = (
+        f"{number(forecast.first_joint_begin_deg, 0)} … {number(forecast.first_joint_end_deg, 0)}"
+    )
+    return (
+        each.contact.id,
+        each.contact.target,
+        format_utc(forecast.begin_s, 0),
+        _clock(forecast.culmination_s),
+        _clock(forecast.end_s),
+        number(forecast.highest_elevation_deg, 1),
+        turns,
+        number(forecast.worst_error_deg, 3),
+        _age(each),
+        verdict,
+    )
+
+
+def _age(each: "ContactBriefing") -> str:
+    return number(each.element_age_days, 1)
+
+
+def _clock(utc_s: float | None) -> str:
+    return "–" if utc_s is None else format_utc(utc_s, 0)[11:19]
+
+
+def _sentences(each: "ContactBriefing") -> list[str]:
+    found = [each.trouble] if each.trouble else []
+    return found + [
+        finding.sentence for finding in (each.forecast.findings if each.forecast else ())
+    ]

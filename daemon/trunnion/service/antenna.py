@@ -1,0 +1,41 @@
+"""A station's mount and beam as the core knows them, from its file."""
+
+from trunnion.files.station import StationFile
+from trunnion.files.station_machine import Geometry, JointSection
+from trunnion.mount.hinges import Hinges
+from trunnion.mount.joints import Joints
+from trunnion.mount.mount import JointLimits, Mount
+from trunnion.track.beam import Beam
+
+RATE_SHARE = 0.97
+ACCELERATION_SHARE = 0.7
+"""What is asked of a joint, of what it can do (common practice, no source)."""
+
+
+def mount_of(station: StationFile) -> Mount:
+    """The station's mount."""
+    section = station.mount
+    return Mount(
+        _HINGES[section.geometry],
+        _limits(section.first),
+        _limits(section.second),
+        Joints(*section.stow_deg),
+    )
+
+
+def flown_mount_of(station: StationFile) -> Mount:
+    """The mount as it is planned for and flown: with something in reserve for following."""
+    return mount_of(station).with_reserve(RATE_SHARE, ACCELERATION_SHARE)
+
+
+def beam_of(station: StationFile) -> Beam:
+    """The station's beam."""
+    section = station.antenna
+    return Beam(section.half_power_beamwidth_deg, section.pointing_tolerance_deg)
+
+
+_HINGES = {Geometry.AZIMUTH_ELEVATION: Hinges.azimuth_elevation()}
+
+
+def _limits(joint: JointSection) -> JointLimits:
+    return JointLimits(*joint.travel_deg, joint.rate_deg_s, joint.acceleration_deg_s2)

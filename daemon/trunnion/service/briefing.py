@@ -1,0 +1,127 @@
+"""Everything that can be known of a plan before it is flown.
+
+`check` prints it, `rehearse`, `demo` and `run` fly it. A contact that cannot be prepared does not
+keep the others from being served; it is told with its reason.
+"""
+
+from collections.abc import Iterable
+from dataclasses import dataclass
+from pathlib import Path
+from typing import NamedTuple
+
+from trunnion.files.plan import Contact, load_plan
+from trunnion.files.station import StationFile, load_station
+from trunnion.mount.joints import Joints
+from trunnion.service.antenna import beam_of, flown_mount_of
+from trunnion.service.clearance import clearance_of
+from trunnion.service.errors import ServiceError
+from trunnion.service.targets import TargetBook
+from trunnion.service.viewpoint import viewpoint_of
+from trunnion.sky.elements import Satellite
+from trunnion.sky.errors import SkyError
+from trunnion.sky.look import Target
+from trunnion.track.day import plan_day
+from trunnion.track.path import Assignment
+from trunnion.track.programme import Forecast
+from trunnion.track.wanted import Wanted
+
+
+class BriefingOrder(NamedTuple):
+    """What to prepare: which files, from where the mount stands, from when on.
+
+    Without a plan path the station's own; without a place the mount's stow position.
+    """
+
+    station: Path
+    plan: Path | None
+    now_s: float
+    place: Joints | None = None
+
+
+@dataclass(frozen=True, slots=True)
+class ContactBriefing:
+    """One contact of the plan: what it will be like, or why there is none.
+
+    `element_age_days` is the largest age of the target's orbit elements during the contact.
+    """
+
+    contact: Contact
+    forecast: Forecast | None
+    trouble: str | None
+    element_age_days: float | None = None
+
+    @property
+    def is_served(self) -> bool:
+        """Whether nothing that was asked for will be missed."""
+        return self.forecast is not None and self.forecast.is_served
+
+
+@dataclass(frozen=True, slots=True)
+class Briefing:
+    """All contacts in the order of the plan, and who has the mount when."""
+
+    station: StationFile
+    contacts: tuple[ContactBriefing, ...]
+    assignments: tuple[Assignment, ...]
+
+
+def brief(order: BriefingOrder) -> Briefing:
+    """Prepare a plan; raises FileProblems where station or plan cannot be read."""
+    station = load_station(order.station)
+    plan = load_plan(order.plan or station.files.plan)
+    targets = TargetBook(station, viewpoint_of(station))
+    drafts = [_draft(contact, station, targets) for contact in plan.contacts]
+    mount = flown_mount_of(station)
+    programme = plan_day(
+        [wanted for _, wanted in drafts if isinstance(wanted, Wanted)],
+        mount,
+        clearance_of(station),
+        beam_of(station),
+        order.place or mount.stow,
+        order.now_s,
+    )
+    return Briefing(station, tuple(_told(drafts, programme.forecasts)), programme.assignments)
+
+
+def _draft(
+    contact: Contact, station: StationFile, targets: TargetBook
+) -> tuple[Contact, Wanted | str]:
+    """The contact and what it asks for, or the reason why it cannot be had."""
+    try:
+        target = targets.resolve(contact.target)
+    except (ServiceError, SkyError) as error:
+        return contact, str(error)
+    age_days = _age_days(target, contact)
+    if age_days is not None and age_days > station.safety.element_max_age_days:
+        return contact, (
+            f"expected orbit elements of at most {station.safety.element_max_age_days:g} days, "
+            f"got {age_days:.1f} days"
+        )
+    lowest_deg = contact.wishes.minimum_elevation_deg
+    return contact, Wanted(
+        contact.id,
+        target,
+        contact.from_s,
+        contact.until_s,
+        contact.priority,
+        -90.0 if lowest_deg is None else lowest_deg,
+    )
+
+
+def _told(
+    drafts: Iterable[tuple[Contact, Wanted | str]], forecasts: Iterable[Forecast]
+) -> Iterable[ContactBriefing]:
+    remaining = iter(forecasts)
+    for contact, wanted in drafts:
+        if isinstance(wanted, str):
+            yield ContactBriefing(contact, None, wanted)
+        else:
+            yield ContactBriefing(contact, next(remaining), None, _age_days(wanted.target, contact))
+
+
+def _age_days(target: Target, contact: Contact) -> float | None:
+    """Largest distance in time between the contact and the epoch of the target's elements."""
+    if not isinstance(target, Satellite):
+        return None
+    elements = target.element_set
+    return max(abs(elements.age_days(utc_s)) for utc_s in (contact.from_s, contact.until_s))

@@ -1,0 +1,238 @@
+"""The daemon: puts the rooms together, beats, and answers.
+
+The control turn runs in the thread that calls `run`; see DEVELOPERS.md for the others.
+"""
+
+import logging
+from collections.abc import Mapping
+from contextlib import ExitStack
+from pathlib import Path
+from threading import Event
+from typing import NamedTuple
+
+from trunnion.files.station import StationFile, load_station
+from trunnion.pilot.departure import Facts
+from trunnion.pilot.phase import Phase, Wish
+from trunnion.pilot.pilot import Pilot
+from trunnion.safety.gate import Gate
+from trunnion.safety.world import World
+from trunnion.service.antenna import beam_of, flown_mount_of, mount_of
+from trunnion.service.cadence import Beat, Cadence
+from trunnion.service.clearance import clearance_of
+from trunnion.service.clock import Clock
+from trunnion.service.contact_log import ContactLog
+from trunnion.service.control.conversation import Handler
+from trunnion.service.control.server import ControlServer
+from trunnion.service.drivers import build_driver
+from trunnion.service.emergency_desk import EmergencyDesk
+from trunnion.service.errors import ServiceError
+from trunnion.service.file_watch import FileWatch
+from trunnion.service.latch import EmergencyLatch
+from trunnion.service.limits import safety_limits_of
+from trunnion.service.link.status import LinkState
+from trunnion.service.link.threaded import ThreadedLink
+from trunnion.service.notify import Notifier, Watchdog, watchdog_timeout_s
+from trunnion.service.plan_keeper import PlanKeeper
+from trunnion.service.recorder import Recorder
+from trunnion.service.records.values import EventKind
+from trunnion.service.records.writer import RecordWriter
+from trunnion.service.standing_wish import StandingWish
+from trunnion.service.status import Health, describe
+from trunnion.service.turn import ControlTurn, Orders, Turn
+
+_log = logging.getLogger(__name__)
+
+LONGEST_STOWING_S = 300.0
+"""A mount that has not reached stow by then, at the end, is halted where it is."""
+
+
+class _Heartbeat:
+    """Observes the turns for the service manager."""
+
+    def __init__(self, station: StationFile, notifier: Notifier) -> None:
+        self._watchdog = Watchdog(notifier, station.safety.reading_max_age_s, watchdog_timeout_s())
+
+    def note(self, turn: Turn) -> None:
+        self._watchdog.turn_completed(turn.mono_s, turn.reading)
+
+
+class Paths(NamedTuple):
+    """The files a daemon is started with; the plan replaces the station's own where given."""
+
+    station: Path
+    plan: Path | None
+
+
+class Daemon:
+    """One antenna, from construction until `run` returns.
+
+    Construction takes the control socket, so that two daemons never have one mount, and opens the
+    link. Raises FileProblems, SocketInUse and SocketUnusable before anything moves.
+    """
+
+    def __init__(self, paths: Paths, clock: Clock, notifier: Notifier) -> None:
+        station = load_station(paths.station)
+        self._station = station
+        self._clock = clock
+        self._notifier = notifier
+        self._is_ending = Event()
+        self._last_turn: Turn | None = None
+        self._last_beat = Beat(0, 0.0, 0)
+        self._missed = 0
+        driver = build_driver(station, clock)
+        clearance = clearance_of(station)
+        pilot = Pilot(Facts(flown_mount_of(station), clearance, beam_of(station).tolerance_deg))
+        gate = Gate(safety_limits_of(station, mount_of(station), clearance))
+        with ExitStack() as held:
+            self._records = RecordWriter(station.files.records, clock)
+            held.callback(self._records.close)
+            self._wish = StandingWish(station.files.latch.with_name(WISH_FILE))
+            self._desk = EmergencyDesk(EmergencyLatch(station.files.latch), clock, self._tell_stop)
+            self._server = ControlServer(
+                station.files.control_socket, self._handlers(), self.emergency_stop, clock
+            )
+            held.callback(self._server.close)
+            self._link = ThreadedLink(driver, clock, poll_s=0.5 / station.cadence.tick_hz)
+            held.callback(self._link.close)
+            self._desk.attach(self._link)
+            self._plans = PlanKeeper(paths.station, paths.plan, clock, self._tell_trouble)
+            held.callback(self._plans.close)
+            self._watch = FileWatch(_watched(paths, station))
+            held.callback(self._watch.close)
+            recorder = Recorder(self._records)
+            self._contacts = ContactLog(beam_of(station), recorder)
+            observers = (self._contacts, recorder, _Heartbeat(station, notifier))
+            self._control = ControlTurn(clock, self._link, pilot, gate, observers)
+            self._held = held.pop_all()
+
+    # -- the beat -------------------------------------------------------------------------------
+
+    def run(self) -> None:
+        """Beat until told to end; then stow if the station wants it, halt, and let go."""
+        with self._held:
+            cadence = Cadence(self._clock, 1.0 / self._station.cadence.tick_hz)
+            self._beat(cadence)
+            self._notifier.ready()
+            while not self._is_ending.is_set():
+                self._beat(cadence)
+            self._notifier.stopping()
+            if self._station.safety.stow_on_exit:
+                self._stow_at_the_end(cadence)
+            self._contacts.close(self._clock.utc_s())
+        _log.info("ended")
+
+    def _beat(self, cadence: Cadence, wish: Wish | None = None) -> Turn:
+        self._last_beat = cadence.wait()
+        self._missed = cadence.missed_in_all
+        self._see_to_the_plan()
+        orders = Orders(self._plans.assignments, wish or self._wish.wish)
+        turn = self._control.run(orders, self._look_around)
+        if turn.verdict.latch is not None:
+            self.emergency_stop(turn.verdict.latch)
+        self._last_turn = turn
+        return turn
+
+    def _see_to_the_plan(self) -> None:
+        """Plan from where the mount stands: at the start, and whenever a file was replaced."""
+        reading = self._link.newest()
+        if self._watch.take_change():
+            self._plans.plan_anew()
+        if reading is not None:
+            self._plans.see_to_it(reading.joints)
+
+    def _look_around(self) -> World:
+        status = self._link.status
+        if status.stop_pressed:
+            self.emergency_stop("the hardware stop input is pressed, or its signal is lost")
+        return World(
+            emergency=self._desk.latched,
+            is_link_up=status.state is LinkState.UP,
+            lateness_s=self._last_beat.lateness_s,
+        )
+
+    def _stow_at_the_end(self, cadence: Cadence) -> None:
+        until_s = self._clock.monotonic_s() + LONGEST_STOWING_S
+        while self._clock.monotonic_s() < until_s and self._desk.latched is None:
+            if self._beat(cadence, Wish.STOW).decision.phase is Phase.STOWED:
+                return
+
+    # -- what others ask for; from any thread ---------------------------------------------------
+
+    def end(self) -> None:
+        """Have `run` return, in good order."""
+        self._is_ending.set()
+
+    def reload(self) -> None:
+        """Read plan and elements again."""
+        self._plans.plan_anew()
+
+    def emergency_stop(self, cause: str) -> None:
+        """Halt, and stay halted until reset."""
+        self._desk.stop(cause)
+
+    def _handlers(self) -> Mapping[str, Handler]:
+        return {
+            "status": self._status,
+            "reset": self._reset,
+            "resume": lambda _: self._take_up(Wish.FOLLOW_PLAN),
+            "stow": lambda _: self._take_up(Wish.STOW),
+            "reload": self._reload,
+        }
+
+    def _status(self, _: Mapping[str, object]) -> Mapping[str, object]:
+        return describe(self._station, self._last_turn, self._contacts.score, self._health())
+
+    def _health(self) -> Health:
+        return Health(
+            self._clock.utc_s(),
+            self._wish.wish,
+            self._desk.latched,
+            self._link.status,
+            self._last_beat,
+            self._missed,
+            self._records.trouble,
+            self._plans.trouble,
+            self._plans.is_planning,
+        )
+
+    def _reset(self, _: Mapping[str, object]) -> Mapping[str, object]:
+        status = self._link.status
+        still_there = "the hardware stop input is pressed" if status.stop_pressed else status.fault
+        self._wish.set(Wish.HOLD)
+        self._desk.reset(still_there)
+        self._record(EventKind.RESET, "emergency stop lifted; nothing moves until told to")
+        return {"wish": self._wish.wish.value}
+
+    def _take_up(self, wish: Wish) -> Mapping[str, object]:
+        if self._desk.latched is not None:
+            raise ServiceError(
+                f"an emergency stop is in force ({self._desk.latched.cause}): reset it first"
+            )
+        trouble = self._wish.set(wish)
+        self._record(EventKind.REQUEST, f"told to {wish.value}")
+        return {"wish": wish.value, "trouble": trouble}
+
+    def _reload(self, _: Mapping[str, object]) -> Mapping[str, object]:
+        self.reload()
+        return {"planning": True}
+
+    # -- what is told ---------------------------------------------------------------------------
+
+    def _tell_stop(self, sentence: str) -> None:
+        _log.critical("%s", sentence)
+        self._record(EventKind.STOP, sentence)
+
+    def _tell_trouble(self, sentence: str) -> None:
+        _log.warning("%s", sentence)
+        self._record(EventKind.TROUBLE, sentence)
+
+    def _record(self, kind: EventKind, sentence: str) -> None:
+        self._records.event(self._clock.utc_s(), kind, sentence)
+
+
+WISH_FILE = "standing-wish"
+
+
+def _watched(paths: Paths, station: StationFile) -> tuple[Path, ...]:
+    """What a plan is made from; the station file itself is read at the start only."""
+    return (paths.plan or station.files.plan, *station.files.elements)

@@ -1,0 +1,18 @@
+"""What the gate holds against everybody at this station, from its file."""
+
+from trunnion.files.station import StationFile
+from trunnion.mount.clearance import Clearance
+from trunnion.mount.mount import Mount
+from trunnion.safety.limits import SafetyLimits
+
+
+def safety_limits_of(station: StationFile, mount: Mount, clearance: Clearance) -> SafetyLimits:
+    """The station's limits."""
+    safety = station.safety
+    return SafetyLimits(
+        mount,
+        clearance,
+        safety.transmit_floor_deg,
+        reading_max_age_s=safety.reading_max_age_s,
+        turn_max_lateness_s=safety.turn_max_lateness_s,
+    )

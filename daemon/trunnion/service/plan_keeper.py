@@ -1,0 +1,74 @@
+"""The plan in force: made in a child process, kept until a better one is there.
+
+A plan that cannot be read does not replace the one that is being flown.
+"""
+
+from collections.abc import Callable
+from pathlib import Path
+
+from trunnion.mount.joints import Joints
+from trunnion.service.briefing import Briefing, BriefingOrder, brief
+from trunnion.service.clock import Clock
+from trunnion.service.planner import Planner
+from trunnion.track.path import Assignment
+
+
+class PlanKeeper:
+    """Has plans made, and takes them up; for the thread of the control turn."""
+
+    def __init__(
+        self, station: Path, plan: Path | None, clock: Clock, tell: Callable[[str], None]
+    ) -> None:
+        self._station = station
+        self._plan = plan
+        self._clock = clock
+        self._tell = tell
+        self._planner: Planner[BriefingOrder, Briefing] = Planner(brief)
+        self._is_wanted = True
+        self._assignments: tuple[Assignment, ...] | None = None
+        self._trouble: str | None = None
+
+    @property
+    def assignments(self) -> tuple[Assignment, ...] | None:
+        """Who has the mount when; None before the first plan was made."""
+        return self._assignments
+
+    @property
+    def trouble(self) -> str | None:
+        """Why the newest plan was not taken up; None while all is well."""
+        return self._trouble
+
+    @property
+    def is_planning(self) -> bool:
+        """Whether a plan is being made."""
+        return self._planner.is_busy
+
+    def plan_anew(self) -> None:
+        """Read the files again, at the next occasion; may be called from any thread."""
+        self._is_wanted = True
+
+    def see_to_it(self, place: Joints) -> None:
+        """Have a plan made from where the mount stands, if one is wanted; take up what is made."""
+        if self._is_wanted:
+            self._is_wanted = False
+            order = BriefingOrder(self._station, self._plan, self._clock.utc_s(), place)
+            self._planner.ask(order)
+        outcome = self._planner.collect()
+        if outcome is None:
+            return
+        if outcome.result is not None:
+            self._take_up(outcome.result)
+        else:
+            self._trouble = f"the plan was not taken up: {outcome.error}"
+            self._tell(self._trouble)
+
+    def close(self) -> None:
+        """Drop what is being made."""
+        self._planner.close()
+
+    def _take_up(self, briefing: Briefing) -> None:
+        self._assignments = briefing.assignments
+        self._trouble = None
+        for each in briefing.contacts:
+            if each.trouble is not None:
+                self._tell(f"contact {each.contact.id} cannot be served: {each.trouble}")
