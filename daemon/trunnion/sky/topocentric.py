@@ -1,14 +1,15 @@
 """From an Earth-fixed position and velocity to azimuth, elevation, range, and their rates.
 
-Apparent look angles are those of where the target was when its signal left. Counted in the
-station's own, Earth-fixed frame, that one step holds light time and the aberration by the Earth's
-rotation together.
+Apparent look angles are those of where the target was when its signal left. In the station's own,
+Earth-fixed frame that step holds the aberration by the Earth's rotation too, but for one thing: the
+frame turns while the light is on its way, which bends the way by that turn.
 """
 
 from math import atan2, degrees, hypot, pi, sqrt
 
 import numpy as np
 
+from trunnion.sky.earth_fixed import EARTH_RATE_RAD_S
 from trunnion.sky.look import FloatArray, Look, Looks
 from trunnion.sky.site import Site, Vector
 
@@ -27,7 +28,9 @@ def topocentric(
     vx, vy, vz = velocity_km_s
     if is_apparent:
         travel_s = sqrt(x * x + y * y + z * z) / LIGHT_KM_S
+        turn = EARTH_RATE_RAD_S * travel_s
         x, y, z = x - vx * travel_s, y - vy * travel_s, z - vz * travel_s
+        x, y = x + turn * y, y - turn * x
     (ex, ey, _), (nx, ny, nz), (ux, uy, uz) = site.east, site.north, site.up
     east, north, up = ex * x + ey * y, nx * x + ny * y + nz * z, ux * x + uy * y + uz * z
     v_east, v_north = ex * vx + ey * vy, nx * vx + ny * vy + nz * vz
@@ -60,7 +63,9 @@ def topocentric_many(
     relative_km = position_km - np.array(site.position_km)[:, np.newaxis]
     if is_apparent:
         travel_s = np.sqrt(np.einsum("in,in->n", relative_km, relative_km)) / LIGHT_KM_S
-        relative_km = relative_km - velocity_km_s * travel_s
+        turn = EARTH_RATE_RAD_S * travel_s
+        x, y, z = relative_km - velocity_km_s * travel_s
+        relative_km = np.stack((x + turn * y, y - turn * x, z))
     east, north, up = axes @ relative_km
     v_east, v_north, v_up = axes @ velocity_km_s
     level2 = np.maximum(east * east + north * north, ZENITH_KM2)
