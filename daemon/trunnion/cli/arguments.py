@@ -5,14 +5,14 @@ from typing import Annotated
 
 import typer
 
-from trunnion.sky.instants import parse_utc
+from trunnion.files.instant_text import parse_instant
 
 
 def _instant(text: str | float) -> float:
     if isinstance(text, float):
         return text
     try:
-        return parse_utc(text)
+        return parse_instant(text)
     except ValueError as error:
         raise typer.BadParameter(str(error)) from None
 

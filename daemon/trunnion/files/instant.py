@@ -4,12 +4,13 @@ from typing import Annotated
 
 from pydantic import BeforeValidator, PlainSerializer, WithJsonSchema
 
-from trunnion.sky.instants import format_utc, parse_utc
+from trunnion.files.instant_text import parse_instant
+from trunnion.sky.instants import format_utc
 
 
 def _instant(value: object) -> object:
     if isinstance(value, str):
-        return parse_utc(value)
+        return parse_instant(value)
     raise ValueError(f"expected a time like 2026-12-01T10:15:00Z, got {value!r}")
 
 
