@@ -70,6 +70,15 @@ def test_the_passes_become_a_draft_plan_that_loads(tmp_path: Path) -> None:
         assert 0 <= parse_utc(str(each["set"])) - contact.until_s < 1.001
 
 
+def test_a_draft_from_a_file_of_elements_names_the_spacecraft(tmp_path: Path) -> None:
+    elements = tmp_path / "one.tle"
+    lines = (EXAMPLE / "elements.tle").read_text().splitlines()
+    elements.write_text("\n".join(lines[6:9]) + "\n")
+    file = tmp_path / "draft.yaml"
+    passes_of("--target", str(elements), *DAY, "--write-plan", str(file))
+    assert {contact.target for contact in load_plan(file).contacts} == {"BRINDLE-4"}
+
+
 def test_a_draft_overwrites_nothing(tmp_path: Path) -> None:
     file = tmp_path / "plan.yaml"
     file.write_text("mine")

@@ -52,7 +52,8 @@ def passes(
     above = clearance_of(loaded).lowest_deg if above_deg is None else above_deg
     events = find_passes(found, from_s, until_s, above)
     if write_plan is not None:
-        _write_draft(write_plan, target, events, from_s, until_s)
+        name = found.name if book.means_file(target) else target
+        _write_draft(write_plan, name, events, from_s, until_s)
     if as_json:
         print_json({"target": found.name, "passes": [_plain(each) for each in events]})
     else:

@@ -48,10 +48,13 @@ class TargetBook:
 
     def resolve_or_read(self, text: str) -> Target:
         """Find what a command line means: a target as above, or a file with one set of elements."""
-        path = Path(text)
-        if text in self._station.targets or is_builtin(text) or not path.is_file():
-            return self.resolve(text)
-        return Satellite(_newest(load_elements(path), text), self._viewpoint)
+        if self.means_file(text):
+            return Satellite(_newest(load_elements(Path(text)), text), self._viewpoint)
+        return self.resolve(text)
+
+    def means_file(self, text: str) -> bool:
+        """Whether a command line means a file of elements by this text."""
+        return not (text in self._station.targets or is_builtin(text)) and Path(text).is_file()
 
     def _called(self, name: str) -> Sequence[ElementSet]:
         found = [each for each in self.elements if _is_called(each, name)]
