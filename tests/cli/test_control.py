@@ -87,5 +87,13 @@ def test_a_stop_that_reaches_nobody_points_to_the_hardware(tmp_path: Path) -> No
     station.write_text("")
     told = trunnion("stop", station)
     assert told.exit_code == 1
+    reason, caution = told.stderr.splitlines()
+    assert reason.startswith(f"NOT stopped: no daemon is listening at {tmp_path}/control.sock")
+    assert "hardware emergency stop" in caution
+
+
+def test_a_stop_without_a_station_file_points_to_the_hardware_as_well(tmp_path: Path) -> None:
+    told = trunnion("stop", tmp_path / "gone.yaml")
+    assert told.exit_code == 1
+    assert told.stderr.startswith(f"NOT stopped: {tmp_path}/gone.yaml: no such file")
     assert "hardware emergency stop" in told.stderr
-    assert f"no daemon is listening at {tmp_path / 'control.sock'}" in told.stderr

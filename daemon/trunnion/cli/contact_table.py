@@ -3,7 +3,6 @@
 from typing import TYPE_CHECKING
 
 from trunnion.cli.output import number, print_table, print_text
-from trunnion.service.recorder import summary_of
 
 if TYPE_CHECKING:
     from trunnion.service.briefing import Briefing, ContactBriefing
@@ -55,6 +54,8 @@ def _state(each: "ContactBriefing", rehearsal: "Rehearsal") -> str:
 
 
 def _plain(each: "ContactBriefing", rehearsal: "Rehearsal") -> dict[str, object]:
+    from trunnion.service.recorder import summary_of
+
     result = rehearsal.results.get(each.contact.id)
     return {
         "id": each.contact.id,

@@ -6,7 +6,10 @@ from typing import TYPE_CHECKING, Annotated
 import typer
 
 from trunnion.cli.arguments import AsJson
+from trunnion.cli.errors import FAILED
 from trunnion.cli.output import flattened, print_json, print_table, print_text, say
+from trunnion.files.problems import FileProblems
+from trunnion.service.errors import ServiceError
 
 if TYPE_CHECKING:
     from trunnion.service.control.client import ControlClient
@@ -40,14 +43,12 @@ def stop(
 
     It is no substitute for the hardware emergency stop: whoever is in danger presses that one.
     """
-    from trunnion.service.errors import ServiceError
-
     try:
         with _client(daemon) as client:
             print_text(client.emergency_stop(cause))
-    except ServiceError:
-        say(_CAUTION)
-        raise
+    except (FileProblems, ServiceError) as error:
+        say(f"NOT stopped: {error}\n{_CAUTION}")
+        raise typer.Exit(FAILED) from None
 
 
 def reset(daemon: Daemon = Path("station.yaml")) -> None:
