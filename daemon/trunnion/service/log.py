@@ -6,6 +6,7 @@ import sys
 from collections.abc import Mapping
 from typing import Any, TextIO
 
+from trunnion.service.brevity import Brevity
 from trunnion.sky.instants import format_utc
 
 _SYSLOG_PRIORITY = (
@@ -22,6 +23,7 @@ def configure(stream: TextIO = sys.stderr, level: int = logging.INFO) -> None:
     """Send what the daemon's rooms log to this stream, in the form its reader wants."""
     handler = logging.StreamHandler(stream)
     handler.setFormatter(LineFormatter(is_for_journal=leads_to_journal(stream)))
+    handler.addFilter(Brevity())
     logger = logging.getLogger(_ROOT)
     logger.handlers[:] = [handler]
     logger.setLevel(level)

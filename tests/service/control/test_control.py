@@ -213,6 +213,15 @@ def test_a_daemon_that_does_not_answer_is_told_apart_from_none(path: Path) -> No
         ask(path, "dawdle", timeout_s=0.2)
 
 
+def test_a_daemon_too_busy_to_take_anybody_is_told_apart_from_none(tmp_path: Path) -> None:
+    path = tmp_path / "busy.sock"
+    with socket.socket(socket.AF_UNIX) as listener:
+        listener.bind(str(path))
+        listener.listen(0)
+        with connected(path), pytest.raises(DaemonSilent, match="too busy"):
+            ask(path, "echo", timeout_s=0.2)
+
+
 def test_an_answer_that_is_none_is_told(tmp_path: Path) -> None:
     path = tmp_path / "odd.sock"
     with socket.socket(socket.AF_UNIX) as listener:

@@ -2,6 +2,7 @@
 
 import os
 import socket
+import struct
 from collections.abc import Iterator
 from contextlib import contextmanager
 from itertools import count
@@ -106,17 +107,29 @@ def _told(path: Path, timeout_s: float) -> Iterator[None]:
 
 def _connected(path: Path, timeout_s: float) -> socket.socket:
     connection = socket.socket(socket.AF_UNIX, socket.SOCK_STREAM)
-    connection.settimeout(timeout_s)
     try:
+        # Only a blocking socket queues for a place at a busy daemon: connect(2), EAGAIN.
+        connection.setsockopt(socket.SOL_SOCKET, socket.SO_SNDTIMEO, _timeval(timeout_s))
         connection.connect(os.fspath(path))
-    except (FileNotFoundError, ConnectionRefusedError) as error:
-        connection.close()
-        raise NoDaemon(f"no daemon is listening at {path}") from error
-    except PermissionError as error:
-        connection.close()
-        message = f"not permitted to talk to the daemon at {path}; is this user in its group?"
-        raise ControlError(message) from error
+        connection.settimeout(timeout_s)
     except OSError as error:
         connection.close()
-        raise NoDaemon(f"cannot reach a daemon at {path}: {error.strerror or error}") from error
+        raise _unreachable(path, error) from error
     return connection
+
+
+def _unreachable(path: Path, error: OSError) -> ControlError:
+    match error:
+        case FileNotFoundError() | ConnectionRefusedError():
+            return NoDaemon(f"no daemon is listening at {path}")
+        case PermissionError():
+            return ControlError(
+                f"not permitted to talk to the daemon at {path}; is this user in its group?"
+            )
+        case BlockingIOError():
+            return DaemonSilent(f"the daemon at {path} is too busy to take a request")
+    return NoDaemon(f"cannot reach a daemon at {path}: {error.strerror or error}")
+
+
+def _timeval(seconds: float) -> bytes:
+    return struct.pack("@ll", int(seconds), int(seconds % 1.0 * 1e6))
