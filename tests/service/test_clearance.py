@@ -27,6 +27,26 @@ def test_without_a_mask_the_floor_alone_counts(tmp_path: Path) -> None:
     assert clearance_of(load_station(written(tmp_path, RIGHT))).mask is None
 
 
+@pytest.mark.parametrize(
+    ("stow_deg", "reason"),
+    [
+        ("[-3, 30]", "expected a stow position outside all keep-outs, got one in 'mast'"),
+        (
+            "[17, 8]",
+            "expected an elevation of at least 9, which is the horizon mask at azimuth 17, got 8",
+        ),
+    ],
+)
+def test_a_stow_position_that_is_not_clear_is_told_with_its_line(
+    tmp_path: Path, stow_deg: str, reason: str
+) -> None:
+    (tmp_path / "horizon.txt").write_text("17 9\n197 2\n")
+    text = changed(elevation_floor_deg=SAFETY, stow_deg=f"stow_deg: {stow_deg}")
+    with pytest.raises(FileProblems) as caught:
+        clearance_of(load_station(written(tmp_path, text)))
+    assert str(caught.value) == f"{tmp_path}/station.yaml:15: mount.stow_deg: {reason}"
+
+
 def test_a_mask_that_is_not_there_is_told(tmp_path: Path) -> None:
     station = load_station(written(tmp_path, changed(elevation_floor_deg=SAFETY)))
     with pytest.raises(FileProblems, match=r"horizon\.txt: no such file"):

@@ -7,7 +7,7 @@ from typing import Annotated, Any
 from pydantic import AfterValidator, Field, PrivateAttr
 
 from trunnion.files.fields import Name
-from trunnion.files.problems import FileProblems
+from trunnion.files.problems import FileProblems, Problem
 from trunnion.files.section import Section
 from trunnion.files.station_checks import STATION_CHECKS
 from trunnion.files.station_files import FilesSection
@@ -21,7 +21,7 @@ from trunnion.files.station_safety import SafetySection
 from trunnion.files.station_sky import SiteSection, SkySection
 from trunnion.files.target_text import checked_target, is_builtin
 from trunnion.files.validation import validated
-from trunnion.files.yaml_text import YamlText, read_yaml
+from trunnion.files.yaml_text import KeyPath, YamlText, read_yaml
 
 
 def _a_name_of_its_own(name: str) -> str:
@@ -58,6 +58,10 @@ class StationFile(Section):
         """The file it was read from."""
         return Path(self._source.file)
 
+    def problem(self, key: KeyPath, message: str) -> Problem:
+        """Return a problem that showed only when the file was put to use, with its line."""
+        return self._source.problem(key, message)
+
 
 def load_station(path: Path) -> StationFile:
     """Read a station file; raises FileProblems with everything that is wrong with it."""
@@ -72,9 +76,8 @@ def driver_problems(station: StationFile, found: Iterable[tuple[str, str]]) -> F
 
     `found` are pairs of a dotted key below `driver:` and a reason.
     """
-    text = station._source  # noqa: SLF001 - a function of the same idea, kept out of the class
     return FileProblems(
-        text.problem(("driver", *key.split(".")) if key else ("driver",), reason)
+        station.problem(("driver", *key.split(".")) if key else ("driver",), reason)
         for key, reason in found
     )
 
