@@ -9,7 +9,7 @@ import typer
 from trunnion.cli.errors import FAILED
 from trunnion.cli.output import print_text, say
 
-_ABOUT_THE_FOLDER = {"README.md", "__init__.py"}
+_ABOUT_THE_FOLDER = {"README.md"}
 
 
 def init(
@@ -18,17 +18,13 @@ def init(
     ] = Path(),
 ) -> None:
     """Write out the example configuration; overwrites nothing."""
-    examples = {
-        path.name: path
-        for path in sorted(example_folder().iterdir())
-        if path.is_file() and path.name not in _ABOUT_THE_FOLDER
-    }
+    examples = _examples()
     in_the_way = [name for name in examples if (folder / name).exists()]
     if in_the_way:
         say(f"{folder}: already there, nothing written: {', '.join(in_the_way)}")
         raise typer.Exit(FAILED)
-    folder.mkdir(parents=True, exist_ok=True)
     for name, path in examples.items():
+        (folder / name).parent.mkdir(parents=True, exist_ok=True)
         with (folder / name).open("xb") as stream:
             stream.write(path.read_bytes())
     station = folder / "station.yaml"
@@ -36,6 +32,17 @@ def init(
         f"Wrote {', '.join(examples)} to {folder.absolute()}.\n"
         f"Make them your station's, then: trunnion check {station}"
     )
+
+
+def _examples() -> dict[str, Path]:
+    """Return the example files by their names below the folder."""
+    folder = example_folder()
+    found = {str(path.relative_to(folder)): path for path in sorted(folder.rglob("*"))}
+    return {
+        name: path
+        for name, path in found.items()
+        if path.is_file() and name not in _ABOUT_THE_FOLDER
+    }
 
 
 def example_folder() -> Path:
