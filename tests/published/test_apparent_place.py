@@ -11,14 +11,18 @@ import erfa
 import numpy as np
 import pytest
 
+from trunnion.sky.earth import EarthOrientation
 from trunnion.sky.earth_fixed import EARTH_RATE_RAD_S
 from trunnion.sky.look import FloatArray
+from trunnion.sky.refraction import NoRefraction
 from trunnion.sky.site import Site, Vector
 from trunnion.sky.topocentric import LIGHT_KM_S, topocentric, topocentric_many
+from trunnion.sky.viewpoint import Viewpoint
 
 TOLERANCE_ARCSEC = 0.001
 FAR_FROM_THE_SUN_AU = 1e9
 SITE = Site(-23.457, 47.813, 1234.5)
+VIEW = Viewpoint(SITE, EarthOrientation.none(), NoRefraction(), is_apparent=True)
 ORBITS = {"low": 6913.7, "navigation": 26_561.9, "geostationary": 42_164.2}
 
 
@@ -70,7 +74,7 @@ def unit(azimuth_deg: float, elevation_deg: float) -> FloatArray:
 
 @pytest.mark.parametrize("radius_km", ORBITS.values(), ids=ORBITS)
 def test_apparent_direction(radius_km: float) -> None:
-    look = topocentric(*earth_fixed_state(radius_km), SITE, is_apparent=True)
+    look = topocentric(*earth_fixed_state(radius_km), VIEW, with_light_time=True)
     ours = unit(look.azimuth_deg, look.elevation_deg)
     apart = degrees(float(np.linalg.norm(ours - seen_by_erfa(radius_km)))) * 3600.0
     assert apart < TOLERANCE_ARCSEC
@@ -78,7 +82,7 @@ def test_apparent_direction(radius_km: float) -> None:
 
 @pytest.mark.parametrize("radius_km", ORBITS.values(), ids=ORBITS)
 def test_the_difference_to_the_straight_line_of_one_instant_is_no_trifle(radius_km: float) -> None:
-    look = topocentric(*earth_fixed_state(radius_km), SITE, is_apparent=False)
+    look = topocentric(*earth_fixed_state(radius_km), VIEW, with_light_time=False)
     straight = unit(look.azimuth_deg, look.elevation_deg)
     apart = degrees(float(np.linalg.norm(straight - seen_by_erfa(radius_km)))) * 3600.0
     assert apart > 1.0
@@ -87,9 +91,9 @@ def test_the_difference_to_the_straight_line_of_one_instant_is_no_trifle(radius_
 @pytest.mark.parametrize("is_apparent", [False, True])
 def test_arrays_give_the_same_numbers(*, is_apparent: bool) -> None:
     position_km, velocity_km_s = earth_fixed_state(26_561.9)
-    one = topocentric(position_km, velocity_km_s, SITE, is_apparent=is_apparent)
+    one = topocentric(position_km, velocity_km_s, VIEW, with_light_time=is_apparent)
     many = topocentric_many(
-        np.array([position_km]).T, np.array([velocity_km_s]).T, SITE, is_apparent=is_apparent
+        np.array([position_km]).T, np.array([velocity_km_s]).T, VIEW, with_light_time=is_apparent
     )
     for single, array in zip(one, many, strict=True):
         assert array is not None

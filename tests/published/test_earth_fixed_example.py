@@ -12,7 +12,6 @@ import erfa
 import numpy as np
 import pytest
 
-from trunnion.sky.earth import Turned
 from trunnion.sky.earth_fixed import (
     earth_fixed,
     earth_fixed_many,
@@ -48,7 +47,7 @@ class Steps:
     def run(self) -> tuple[tuple[float, float, float], tuple[float, float, float]]:
         midnight, fraction = julian_date(UTC_S)
         angle = sidereal_angle(midnight, fraction + self.ut1_minus_utc_s / 86400.0)
-        turned = Turned(self.ut1_minus_utc_s, self.pole_x, self.pole_y)
+        turned = (self.ut1_minus_utc_s, self.pole_x, self.pole_y)
         return earth_fixed(TEME_KM, TEME_KM_S, angle + self.extra_turn, turned)
 
 

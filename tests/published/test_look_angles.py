@@ -58,6 +58,10 @@ SITES = {
 }
 
 
+def geometric(site: Site) -> Viewpoint:
+    return Viewpoint(site, EARTH, NoRefraction(), is_apparent=False)
+
+
 def element_set(orbit: Orbit, turn: int) -> ElementSet:
     """Lines for such an orbit; `turn` spreads the other angles over the circle."""
     angles = [(37.4711 * turn + offset) % 360.0 for offset in (11.3, 123.7, 291.9)]
@@ -77,9 +81,9 @@ def _checksum(line: str) -> int:
 def skyfield_look(elements: ElementSet, site: Site, utc_s: float) -> tuple[float, float, float]:
     """Azimuth, elevation (deg) and range (km) by skyfield."""
     turned, tai_minus_utc_s = EARTH.at(utc_s), EARTH.leap_seconds.at(utc_s)
-    delta_t_s = tai_minus_utc_s + 32.184 - turned.ut1_minus_utc_s
+    delta_t_s = tai_minus_utc_s + 32.184 - turned[0]
     timescale = Timescale(lambda tt: delta_t_s + 0.0 * tt, *LEAP_SECONDS)
-    arcsec = np.degrees((turned.pole_x, turned.pole_y)) * 3600.0
+    arcsec = np.degrees((turned[1], turned[2])) * 3600.0
     timescale.polar_motion_table = (
         np.array([2400000.0, 2500000.0]),
         np.full(2, arcsec[0]),
@@ -108,7 +112,7 @@ def test_skyfield_agrees_wherever_the_satellite_stands(kind: str, place: str) ->
     site = SITES[place]
     for turn in range(3):
         elements = element_set(ORBITS[kind], turn)
-        ours = Satellite(elements, Viewpoint(site, EARTH, NoRefraction(), is_apparent=False))
+        ours = Satellite(elements, geometric(site))
         for later_s in (0.0, 1234.567, 20_345.6, 86_399.9):
             utc_s = FROM_S + later_s
             look = ours.look(utc_s)
@@ -121,9 +125,7 @@ def test_skyfield_agrees_wherever_the_satellite_stands(kind: str, place: str) ->
 def test_the_orbits_are_told_apart_and_some_are_above_the_horizon() -> None:
     """So that the comparison above cannot succeed on one direction or below the ground alone."""
     looks = [
-        Satellite(
-            element_set(orbit, turn), Viewpoint(site, EARTH, NoRefraction(), is_apparent=False)
-        ).look(FROM_S)
+        Satellite(element_set(orbit, turn), geometric(site)).look(FROM_S)
         for orbit in ORBITS.values()
         for turn in range(3)
         for site in SITES.values()
@@ -154,9 +156,7 @@ def test_astropy_agrees_over_an_overhead_pass(
         "2 25544  51.6439 211.2001 0007417  17.6667  85.6398 15.50103472202482",
     )
     site = Site(42.38, -71.13, 24.0)
-    look = Satellite(elements, Viewpoint(site, EARTH, NoRefraction(), is_apparent=False)).look(
-        parse_utc(instant)
-    )
+    look = Satellite(elements, geometric(site)).look(parse_utc(instant))
     assert look.azimuth_deg == pytest.approx(azimuth_deg, abs=1e-5)
     assert look.elevation_deg == pytest.approx(elevation_deg, abs=1e-5)
     assert look.range_km == pytest.approx(range_km, abs=1e-3)
@@ -179,7 +179,10 @@ def test_azimuth_and_elevation_as_in_erfas_own_test() -> None:
     direction = erfa.s2c(-hour_angle, declination)
     position = tuple(float(each) for each in far_km * direction)
     look = topocentric(
-        (position[0], position[1], position[2]), (0.0, 0.0, 0.0), site, is_apparent=False
+        (position[0], position[1], position[2]),
+        (0.0, 0.0, 0.0),
+        geometric(site),
+        with_light_time=False,
     )
     assert radians(look.azimuth_deg) == pytest.approx(5.916889243730066194, abs=1e-7)
     assert radians(look.elevation_deg) == pytest.approx(0.4472186304990486228, abs=1e-7)
@@ -188,7 +191,9 @@ def test_azimuth_and_elevation_as_in_erfas_own_test() -> None:
 def test_a_published_topocentric_example() -> None:
     """Source: Vallado, "Fundamentals of Astrodynamics and Applications", example 11-6."""
     site = Site(42.38, -71.13, 24.0)
-    look = topocentric((885.7296, -4389.3856, 5070.1765), (0.0, 0.0, 0.0), site, is_apparent=False)
+    look = topocentric(
+        (885.7296, -4389.3856, 5070.1765), (0.0, 0.0, 0.0), geometric(site), with_light_time=False
+    )
     assert look.range_km == pytest.approx(1022.3143, abs=1e-3)
     assert look.azimuth_deg == pytest.approx(323.0781, abs=1e-3)
     assert look.elevation_deg == pytest.approx(18.7620, abs=1e-3)

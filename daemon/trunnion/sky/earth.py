@@ -1,12 +1,12 @@
 """How the Earth is turned: UT1 − UTC and polar motion, from the IERS, or none."""
 
-from bisect import bisect_right
-from collections.abc import Iterator
+from array import array
+from collections.abc import Iterable, Iterator
 from dataclasses import dataclass, field
-from itertools import pairwise
+from itertools import chain, pairwise
 from math import radians
 from pathlib import Path
-from typing import NamedTuple, Self
+from typing import Self
 
 import numpy as np
 
@@ -18,30 +18,26 @@ from trunnion.sky.look import FloatArray
 ARCSECOND = radians(1.0 / 3600.0)
 
 
-class Turned(NamedTuple):
-    """UT1 − UTC (s) and the pole's coordinates x and y (rad) at one instant."""
+Turned = tuple[float, float, float]
+"""UT1 − UTC (s) and the pole's coordinates x and y (rad) at one instant."""
 
-    ut1_minus_utc_s: float
-    pole_x: float
-    pole_y: float
-
-
-STANDING = Turned(0.0, 0.0, 0.0)
+STANDING: Turned = (0.0, 0.0, 0.0)
+COLUMNS = 6
 
 
 @dataclass(frozen=True, slots=True)
 class EarthOrientation:
     """A daily table, interpolated; outside it, and without one, zero: UT1 is taken as UTC.
 
-    Interpolated is UT1 − TAI, which knows no leap seconds, so that none is smeared over a day.
+    `lines` holds six numbers a day: UT1 − UTC at its begin and the change over the day, and the
+    same of the pole's x and y. No leap second falls within a day, so none is smeared over one.
     """
 
     source: str
     leap_seconds: LeapSeconds
-    day_s: tuple[float, ...] = ()
-    ut1_minus_tai_s: tuple[float, ...] = field(default=(), repr=False)
-    pole_x: tuple[float, ...] = field(default=(), repr=False)
-    pole_y: tuple[float, ...] = field(default=(), repr=False)
+    begin_s: float = 0.0
+    end_s: float = 0.0
+    lines: "array[float]" = field(default_factory=lambda: array("d"), repr=False)
 
     @classmethod
     def none(cls) -> Self:
@@ -65,47 +61,48 @@ class EarthOrientation:
             raise SkyError(f"{path}: {error.strerror}") from error
         if len(rows) < 2:
             raise SkyError(f"{path}: expected an Earth orientation table (finals2000A), got none")
-        days, ut1, x, y = zip(*rows, strict=True)
-        if any(after - before != SECONDS_A_DAY for before, after in pairwise(days)):
+        days_s = [row[0] for row in rows]
+        if any(after - before != SECONDS_A_DAY for before, after in pairwise(days_s)):
             raise SkyError(f"{path}: expected one row a day, got a gap or a repetition")
-        return cls(path.name, leap_seconds, days, ut1, x, y)
+        lines = array("d", chain.from_iterable(_lines(rows, leap_seconds)))
+        return cls(path.name, leap_seconds, days_s[0], days_s[-1], lines)
 
     def covers(self, utc_s: float) -> bool:
         """Whether the table reaches to this instant."""
-        return bool(self.day_s) and self.day_s[0] <= utc_s <= self.day_s[-1]
+        return self.begin_s <= utc_s < self.end_s
 
     def at(self, utc_s: float) -> Turned:
         """UT1 − UTC and the pole at one instant; zero outside the table."""
-        if not self.covers(utc_s):
+        if not self.begin_s <= utc_s < self.end_s:
             return STANDING
-        index = min(bisect_right(self.day_s, utc_s), len(self.day_s) - 1) - 1
-        share = (utc_s - self.day_s[index]) / SECONDS_A_DAY
-        rest = 1.0 - share
-        ut1_minus_tai_s = (
-            rest * self.ut1_minus_tai_s[index] + share * self.ut1_minus_tai_s[index + 1]
-        )
-        return Turned(
-            ut1_minus_tai_s + self.leap_seconds.at(utc_s),
-            rest * self.pole_x[index] + share * self.pole_x[index + 1],
-            rest * self.pole_y[index] + share * self.pole_y[index + 1],
-        )
+        days = (utc_s - self.begin_s) / SECONDS_A_DAY
+        day = int(days)
+        share = days - day
+        ut1, ut1_change, x, x_change, y, y_change = self.lines[COLUMNS * day : COLUMNS * day + 6]
+        return ut1 + share * ut1_change, x + share * x_change, y + share * y_change
 
     def at_many(self, utc_s: FloatArray) -> tuple[FloatArray, FloatArray, FloatArray]:
-        """The same for an array of instants."""
-        if not self.day_s:
+        """The same for an array of instants, shape (n,)."""
+        if not self.lines:
             nothing = np.zeros_like(utc_s)
             return nothing, nothing, nothing
-        is_covered = (utc_s >= self.day_s[0]) & (utc_s <= self.day_s[-1])
-        days = np.array(self.day_s)
-        ut1, x, y = (
-            np.interp(utc_s, days, column)
-            for column in (self.ut1_minus_tai_s, self.pole_x, self.pole_y)
+        is_covered = (self.begin_s <= utc_s) & (utc_s < self.end_s)
+        days = np.where(is_covered, (utc_s - self.begin_s) / SECONDS_A_DAY, 0.0)
+        day = days.astype(int)
+        share = days - day
+        ut1, ut1_change, x, x_change, y, y_change = (
+            np.frombuffer(self.lines).reshape(-1, COLUMNS)[day].T * is_covered
         )
-        return (
-            np.where(is_covered, ut1 + self.leap_seconds.at_many(utc_s), 0.0),
-            np.where(is_covered, x, 0.0),
-            np.where(is_covered, y, 0.0),
-        )
+        return ut1 + share * ut1_change, x + share * x_change, y + share * y_change
+
+
+def _lines(
+    rows: Iterable[tuple[float, float, float, float]], leap_seconds: LeapSeconds
+) -> Iterator[tuple[float, ...]]:
+    """Six numbers for the day between each row and the next."""
+    for (day_s, ut1_s, x, y), (_, next_ut1_s, next_x, next_y) in pairwise(rows):
+        at_begin_s = ut1_s + leap_seconds.at(day_s)
+        yield at_begin_s, next_ut1_s - ut1_s, x, next_x - x, y, next_y - y
 
 
 def _rows(path: Path, leap_seconds: LeapSeconds) -> Iterator[tuple[float, float, float, float]]:

@@ -4,7 +4,7 @@ A turn by Greenwich mean sidereal time of 1982 about the pole, then polar motion
 Vallado, Crawford, Hujsak, Kelso, "Revisiting Spacetrack Report #3", AIAA 2006-6753, appendix C.
 """
 
-from math import cos, fmod, pi, sin
+from math import cos, pi, sin
 
 import numpy as np
 
@@ -18,23 +18,25 @@ SECONDS_A_DAY = 86400.0
 EARTH_RATE_RAD_S = 7.292115146706979e-5
 """Rate of the Earth's rotation; the change of the length of the day costs less than 1e-7 of it."""
 
-_GMST_S = (24110.54841, 8640184.812866, 0.093104, -6.2e-6)
+SIDEREAL_S = (24110.54841, 8640184.812866, 0.093104, -6.2e-6)
 """Coefficients (s) at 0h UT1, in Julian centuries from J2000: Aoki et al. 1982."""
+
+_C0, _C1, _C2, _C3 = SIDEREAL_S
+_RAD_A_SECOND = 2.0 * pi / SECONDS_A_DAY
 
 
 def sidereal_angle(jd_midnight: float, ut1_fraction: float) -> float:
-    """Greenwich mean sidereal time 1982 (rad) at midnight plus this fraction of a day of UT1."""
-    centuries = ((jd_midnight - J2000_JD) + ut1_fraction) / DAYS_A_CENTURY
-    a, b, c, d = _GMST_S
-    seconds = a + (b + (c + d * centuries) * centuries) * centuries + SECONDS_A_DAY * ut1_fraction
-    return fmod(seconds, SECONDS_A_DAY) * (2.0 * pi / SECONDS_A_DAY)
+    """Greenwich mean sidereal time 1982 (rad, within a turn) at midnight and a fraction of UT1."""
+    t = ((jd_midnight - J2000_JD) + ut1_fraction) / DAYS_A_CENTURY
+    seconds = _C0 + (_C1 + (_C2 + _C3 * t) * t) * t + SECONDS_A_DAY * ut1_fraction
+    return seconds % SECONDS_A_DAY * _RAD_A_SECOND
 
 
 def rotation_angle(jd_midnight: float, ut1_fraction: float) -> float:
     """Earth rotation angle (rad, within one turn): IAU 2000, Capitaine, Guinot, McCarthy."""
     days = (jd_midnight - J2000_JD) + ut1_fraction
     turns = 0.7790572732640 + 0.00273781191135448 * days + (ut1_fraction + 0.5)
-    return fmod(turns, 1.0) * (2.0 * pi)
+    return turns % 1.0 * (2.0 * pi)
 
 
 def earth_fixed(
@@ -74,14 +76,13 @@ def earth_fixed_many(
 
 def sidereal_angles(jd_midnight: FloatArray, ut1_fraction: FloatArray) -> FloatArray:
     """The same as `sidereal_angle` for arrays of shape (n,)."""
-    centuries = ((jd_midnight - J2000_JD) + ut1_fraction) / DAYS_A_CENTURY
-    a, b, c, d = _GMST_S
-    seconds = a + (b + (c + d * centuries) * centuries) * centuries + SECONDS_A_DAY * ut1_fraction
-    return np.fmod(seconds, SECONDS_A_DAY) * (2.0 * pi / SECONDS_A_DAY)
+    t = ((jd_midnight - J2000_JD) + ut1_fraction) / DAYS_A_CENTURY
+    seconds = _C0 + (_C1 + (_C2 + _C3 * t) * t) * t + SECONDS_A_DAY * ut1_fraction
+    return seconds % SECONDS_A_DAY * _RAD_A_SECOND
 
 
 def rotation_angles(jd_midnight: FloatArray, ut1_fraction: FloatArray) -> FloatArray:
     """The same as `rotation_angle` for arrays of shape (n,)."""
     days = (jd_midnight - J2000_JD) + ut1_fraction
     turns = 0.7790572732640 + 0.00273781191135448 * days + (ut1_fraction + 0.5)
-    return np.fmod(turns, 1.0) * (2.0 * pi)
+    return turns % 1.0 * (2.0 * pi)

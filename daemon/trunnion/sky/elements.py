@@ -94,11 +94,9 @@ class Satellite:
         jd_midnight, fraction = julian_date(utc_s)
         position_km, velocity_km_s = self._propagator.at(jd_midnight, fraction)
         turned = view.earth.at(utc_s)
-        sidereal = sidereal_angle(jd_midnight, fraction + turned.ut1_minus_utc_s / SECONDS_A_DAY)
+        sidereal = sidereal_angle(jd_midnight, fraction + turned[0] / SECONDS_A_DAY)
         position_km, velocity_km_s = earth_fixed(position_km, velocity_km_s, sidereal, turned)
-        look = topocentric(position_km, velocity_km_s, view.site, is_apparent=view.is_apparent)
-        seen, slope = view.refraction.seen(look[1])
-        return Look(look[0], seen, look[2], look[3], look[4] * slope, look[5])
+        return topocentric(position_km, velocity_km_s, view, with_light_time=view.is_apparent)
 
     def looks(self, utc_s: FloatArray) -> Looks:
         """Where it stands at many instants; raises NoPosition when it has none at any of them."""
@@ -112,10 +110,4 @@ class Satellite:
         position_km, velocity_km_s = earth_fixed_many(
             position_km, velocity_km_s, sidereal, pole_x, pole_y
         )
-        looks = topocentric_many(
-            position_km, velocity_km_s, view.site, is_apparent=view.is_apparent
-        )
-        seen_deg, slope = view.refraction.seen_many(looks.elevation_deg)
-        return looks._replace(
-            elevation_deg=seen_deg, elevation_rate_deg_s=looks.elevation_rate_deg_s * slope
-        )
+        return topocentric_many(position_km, velocity_km_s, view, with_light_time=view.is_apparent)

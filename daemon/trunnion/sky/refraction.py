@@ -6,9 +6,10 @@ a spherical atmosphere), and between those the correction runs along a cubic. So
 every elevation, where the published polynomials each hold over a part of the sky only.
 """
 
+from collections.abc import Iterator, Sequence
 from dataclasses import dataclass, field
-from math import floor
-from typing import NamedTuple, Protocol, Self, TypeVar
+from itertools import pairwise
+from typing import Protocol, Self
 
 import numpy as np
 
@@ -22,19 +23,15 @@ DRY_SCALE_HEIGHT_KM_PER_K = 0.0292718
 """R T / g of dry air."""
 
 _STEP_DEG = 0.25
+_PIECES_A_DEG = 4.0
 _TOP_SCALE_HEIGHTS = 20.0
 _RAY_STEPS = 240
 _ITERATIONS = 14
 
 
-Float = TypeVar("Float", float, FloatArray)
-
-
-class Seen(NamedTuple):
-    """Apparent elevation (deg), and how fast it changes when the true one does (deg per deg)."""
-
-    elevation_deg: float
-    slope: float
+Piece = tuple[float, float, float, float]
+Seen = tuple[float, float]
+"""Apparent elevation (deg), and how fast it changes when the true one does (deg per deg)."""
 
 
 class Refraction(Protocol):
@@ -62,7 +59,7 @@ class NoRefraction:
 
     def seen(self, elevation_deg: float) -> Seen:
         """The same elevation."""
-        return Seen(elevation_deg, 1.0)
+        return elevation_deg, 1.0
 
     def seen_many(self, elevation_deg: FloatArray) -> tuple[FloatArray, FloatArray]:
         """The same elevations."""
@@ -71,12 +68,15 @@ class NoRefraction:
 
 @dataclass(frozen=True, slots=True)
 class TracedRefraction:
-    """The correction at every quarter of a degree; below the lowest ray it stays the same."""
+    """A cubic for each quarter of a degree; below the lowest ray the correction stays the same.
+
+    `pieces` holds the coefficients of the apparent elevation (deg) from `begin_deg` on, rising, in
+    the share of a quarter that is passed.
+    """
 
     model: str
     begin_deg: float
-    lift_deg: tuple[float, ...] = field(repr=False)
-    lift_slope: tuple[float, ...] = field(repr=False)
+    pieces: tuple[Piece, ...] = field(repr=False)
 
     @classmethod
     def radio(cls, air: Air, height_m: float) -> Self:
@@ -93,51 +93,52 @@ class TracedRefraction:
     def _trace(cls, model: str, refractivity: float, scale_km: float, height_m: float) -> Self:
         radius_km = EARTH_RADIUS_KM + 1e-3 * height_m
         begin_deg = -float(_bending_deg(np.zeros(1), refractivity, scale_km, radius_km)[0])
-        steps = int(np.ceil((90.0 - begin_deg) / _STEP_DEG)) + 1
+        steps = int(np.ceil((90.0 - begin_deg) / _STEP_DEG)) + 2
         true_deg = begin_deg + _STEP_DEG * np.arange(steps)
         lift_deg = np.zeros_like(true_deg)
         for _ in range(_ITERATIONS):  # the bending follows from the apparent elevation
             seen_deg = np.clip(true_deg + lift_deg, 0.0, None)
             lift_deg = _bending_deg(seen_deg, refractivity, scale_km, radius_km)
-        slope = np.gradient(lift_deg, _STEP_DEG, edge_order=2)
-        return cls(model, begin_deg, tuple(lift_deg.tolist()), tuple(slope.tolist()))
+        return cls(model, begin_deg, tuple(_pieces((true_deg + lift_deg).tolist())))
 
     def seen(self, elevation_deg: float) -> Seen:
         """Where a target at this true elevation is seen."""
-        if elevation_deg <= self.begin_deg:
-            return Seen(elevation_deg + self.lift_deg[0], 1.0)
-        place = (elevation_deg - self.begin_deg) / _STEP_DEG
-        index = min(floor(place), len(self.lift_deg) - 2)
-        lift, slope = _cubic(
-            place - index,
-            self.lift_deg[index],
-            self.lift_deg[index + 1],
-            self.lift_slope[index] * _STEP_DEG,
-            self.lift_slope[index + 1] * _STEP_DEG,
-        )
-        return Seen(elevation_deg + lift, 1.0 + slope / _STEP_DEG)
+        place = (elevation_deg - self.begin_deg) * _PIECES_A_DEG
+        if place <= 0.0:
+            return elevation_deg + self.pieces[0][0] - self.begin_deg, 1.0
+        index = int(place)
+        u = place - index
+        a, b, c, d = self.pieces[index]
+        return a + u * (b + u * (c + u * d)), (b + u * (2.0 * c + u * 3.0 * d)) * _PIECES_A_DEG
 
     def seen_many(self, elevation_deg: FloatArray) -> tuple[FloatArray, FloatArray]:
         """Apparent elevations and slopes for an array."""
-        lifts, slopes = np.array(self.lift_deg), np.array(self.lift_slope) * _STEP_DEG
-        place = np.maximum((elevation_deg - self.begin_deg) / _STEP_DEG, 0.0)
-        index = np.minimum(place.astype(int), len(lifts) - 2)
-        lift, slope = _cubic(
-            place - index, lifts[index], lifts[index + 1], slopes[index], slopes[index + 1]
+        place = (elevation_deg - self.begin_deg) * _PIECES_A_DEG
+        is_below = place <= 0.0
+        index = np.where(is_below, 0.0, place).astype(int)
+        u = place - index
+        a, b, c, d = np.array(self.pieces)[index].T
+        seen_deg = a + u * (b + u * (c + u * d))
+        slope = (b + u * (2.0 * c + u * 3.0 * d)) * _PIECES_A_DEG
+        return (
+            np.where(is_below, elevation_deg + a - self.begin_deg, seen_deg),
+            np.where(is_below, 1.0, slope),
         )
-        is_below = elevation_deg <= self.begin_deg
-        return elevation_deg + lift, np.where(is_below, 1.0, 1.0 + slope / _STEP_DEG)
 
 
-def _cubic(
-    u: Float, begin: Float, end: Float, begin_slope: Float, end_slope: Float
-) -> tuple[Float, Float]:
-    """Value and slope at 0 <= u <= 1 of the cubic with these ends (Hermite)."""
-    rise = end - begin
-    c2 = 3.0 * rise - 2.0 * begin_slope - end_slope
-    c3 = begin_slope + end_slope - 2.0 * rise
-    value = begin + u * (begin_slope + u * (c2 + u * c3))
-    return value, begin_slope + u * (2.0 * c2 + 3.0 * u * c3)
+def _pieces(seen_deg: Sequence[float]) -> Iterator[Piece]:
+    """Coefficients of the cubics through these nodes, with the slopes of their neighbours."""
+    slopes = np.gradient(np.array(seen_deg), edge_order=2).tolist()
+    for (begin, end), (begin_slope, end_slope) in zip(
+        pairwise(seen_deg), pairwise(slopes), strict=True
+    ):
+        rise = end - begin
+        yield (
+            begin,
+            begin_slope,
+            3.0 * rise - 2.0 * begin_slope - end_slope,
+            begin_slope + end_slope - 2.0 * rise,
+        )
 
 
 def _bending_deg(

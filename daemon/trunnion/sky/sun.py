@@ -42,16 +42,12 @@ class Sun:
             _tt_days(utc_s, view.earth.leap_seconds.at(utc_s)), is_apparent=view.is_apparent
         )
         jd_midnight, fraction = julian_date(utc_s)
-        angle = rotation_angle(jd_midnight, fraction + turned.ut1_minus_utc_s / SECONDS_A_DAY)
+        angle = rotation_angle(jd_midnight, fraction + turned[0] / SECONDS_A_DAY)
         (x, y, z), velocity_km_s = earth_fixed(position_km, velocity_km_s, angle, turned)
         if view.is_apparent:  # aberration by the Earth's rotation
             carried = EARTH_RATE_RAD_S * hypot(x, y, z) / LIGHT_KM_S
             x, y = x - carried * view.site.position_km[1], y + carried * view.site.position_km[0]
-        look = topocentric((x, y, z), velocity_km_s, view.site, is_apparent=False)
-        seen_deg, slope = view.refraction.seen(look.elevation_deg)
-        return look._replace(
-            elevation_deg=seen_deg, elevation_rate_deg_s=look.elevation_rate_deg_s * slope
-        )
+        return topocentric((x, y, z), velocity_km_s, view, with_light_time=False)
 
     def looks(self, utc_s: FloatArray) -> Looks:
         """Where it stands at many instants; raises NoPosition outside 1900 to 2100."""
@@ -70,11 +66,7 @@ class Sun:
             carried = EARTH_RATE_RAD_S * np.linalg.norm(position_km, axis=0) / LIGHT_KM_S
             site_x, site_y, _ = view.site.position_km
             position_km = position_km + carried * np.array([[-site_y], [site_x], [0.0]])
-        looks = topocentric_many(position_km, velocity_km_s, view.site, is_apparent=False)
-        seen_deg, slope = view.refraction.seen_many(looks.elevation_deg)
-        return looks._replace(
-            elevation_deg=seen_deg, elevation_rate_deg_s=looks.elevation_rate_deg_s * slope
-        )
+        return topocentric_many(position_km, velocity_km_s, view, with_light_time=False)
 
 
 def _tt_days(utc_s: Float, tai_minus_utc_s: Float) -> Float:
