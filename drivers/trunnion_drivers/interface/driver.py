@@ -6,10 +6,11 @@ begin with an underscore. A driver is called from one thread at a time.
 
 from abc import ABC, abstractmethod
 from collections.abc import Mapping
+from contextlib import suppress
 from math import isfinite
 from typing import Self
 
-from trunnion_drivers.interface.errors import Garbled, WrongState
+from trunnion_drivers.interface.errors import DriverError, Garbled, WrongState
 from trunnion_drivers.interface.values import (
     Capabilities,
     Clock,
@@ -83,6 +84,20 @@ class Driver(ABC):
             raise WrongState("this driver has no power-cut output")
         self._must_be_open("cut power")
         self._cut_power()
+
+    def halt_at_once(self) -> bool:
+        """Send the stop now, even while another call is under way in another thread.
+
+        The one method that any thread may call. It waits for no answer and raises nothing, so
+        `halt` must follow in the driver's own thread. Return whether the stop was sent.
+        """
+        with suppress(DriverError, OSError):
+            return self._is_open and self._halt_at_once()
+        return False
+
+    def _halt_at_once(self) -> bool:
+        """Send the stop without waiting for anybody; False for a driver that cannot."""
+        return False
 
     @abstractmethod
     def _open(self) -> None: ...
