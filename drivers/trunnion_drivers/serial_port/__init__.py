@@ -1,0 +1,1 @@
+"""Serial ports: local, over the network, and their modem-control lines."""
