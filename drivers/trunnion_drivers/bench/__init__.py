@@ -1,0 +1,1 @@
+"""Bench: a simulated mount behind a real port, to drive before steel is connected."""

@@ -1,0 +1,1 @@
+"""Dialects: controllers that are described in a file instead of programmed."""
