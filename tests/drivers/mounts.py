@@ -8,6 +8,13 @@ FACTS = MountFacts(
     stow_first_deg=17.3,
     stow_second_deg=61.9,
 )
+QUICK = MountFacts(
+    first=JointFacts(-263.7, 271.3, 19.3, 47.0),
+    second=JointFacts(1.7, 91.9, 17.1, 41.0),
+    stow_first_deg=17.3,
+    stow_second_deg=61.9,
+)
+"""So quick that tests in real time need not wait."""
 HOME = DriverMotion(17.3, 61.9, 0.0, 0.0)
 
 

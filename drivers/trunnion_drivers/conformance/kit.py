@@ -23,6 +23,7 @@ from trunnion_drivers.conformance.watch import (
     lasted_s,
     motion_to,
     move_and_read,
+    part_way_s,
     settle,
     still_s,
 )
@@ -92,7 +93,7 @@ class DriverConformance:
     def test_a_halt_brings_it_to_rest_and_may_be_repeated(self, rig: Rig) -> None:
         come_home(rig)
         rig.driver.move(motion_to(rig.home, 0, 4.7))
-        rig.clock.sleep(rig.lag_s + 0.3)
+        rig.clock.sleep(part_way_s(rig, 4.7))
         rig.driver.halt()
         rig.driver.halt()
         assert has_come_to_rest(rig)
