@@ -43,7 +43,7 @@ def station(tmp_path: Path) -> Path:
 def test_the_list_names_the_newest_contact_first(station: Path) -> None:
     told = trunnion("records", station)
     assert told.exit_code == 0
-    rows = [line.split()[:3] for line in told.stdout.splitlines() if "Z" in line]
+    rows = [line.split()[:3] for line in told.stdout.splitlines() if "2026" in line]
     assert rows == [["2", "noon", "sun"], ["1", "overhead", "QUILLON-1"]]
 
 

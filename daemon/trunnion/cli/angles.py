@@ -13,7 +13,7 @@ from trunnion.cli.arguments import (
     Station,
     TargetText,
 )
-from trunnion.cli.output import number, print_json, print_table
+from trunnion.cli.output import moment, number, print_json, print_table
 from trunnion.sky.instants import format_utc
 
 if TYPE_CHECKING:
@@ -82,23 +82,23 @@ def _plain(utc_s: float, look: "Look") -> dict[str, object]:
 
 def _print_looks(name: str, looks: list[tuple[float, "Look"]]) -> None:
     columns = (
-        "time (UTC)",
-        "azimuth [°]",
-        "elevation [°]",
-        "range [km]",
-        "azimuth rate [°/s]",
-        "elevation rate [°/s]",
-        "range rate [km/s]",
+        "time\n(UTC)",
+        "azimuth\n[°]",
+        "rate\n[°/s]",
+        "elevation\n[°]",
+        "rate\n[°/s]",
+        "range\n[km]",
+        "rate\n[km/s]",
     )
     rows = (
         (
-            format_utc(utc_s),
+            moment(utc_s),
             number(look.azimuth_deg, 4),
+            number(look.azimuth_rate_deg_s, 4),
             number(look.elevation_deg, 4),
+            number(look.elevation_rate_deg_s, 4),
             number(look.range_km, 3),
-            number(look.azimuth_rate_deg_s, 5),
-            number(look.elevation_rate_deg_s, 5),
-            number(look.range_rate_km_s, 5),
+            number(look.range_rate_km_s, 4),
         )
         for utc_s, look in looks
     )

@@ -2,8 +2,11 @@
 
 import json
 import sys
-from collections.abc import Iterable, Iterator, Mapping, Sequence
-from typing import TypeVar
+from collections.abc import Callable, Iterable, Iterator, Mapping, Sequence
+from contextlib import contextmanager
+from typing import Literal, TypeVar
+
+from trunnion.sky.instants import format_utc
 
 Item = TypeVar("Item")
 
@@ -27,9 +30,10 @@ def print_table(title: str, columns: Sequence[str], rows: Iterable[Sequence[str]
     from rich.table import Table
     from rich.text import Text
 
-    table = Table(box=SIMPLE_HEAD, pad_edge=False)
+    table = Table(box=SIMPLE_HEAD, padding=(0, 1, 0, 0), pad_edge=False, show_edge=False)
     for column in columns:
-        table.add_column(Text(column), justify="right" if column.endswith("]") else "left")
+        justify: Literal["left", "right"] = "right" if column.endswith("]") else "left"
+        table.add_column(Text(column), justify=justify, overflow="fold")
     for row in rows:
         table.add_row(*map(Text, row))
     width = None if sys.stdout.isatty() else _WIDTH_WITHOUT_TERMINAL
@@ -41,6 +45,31 @@ def print_table(title: str, columns: Sequence[str], rows: Iterable[Sequence[str]
 def say(message: str) -> None:
     """Tell the user something that is not the result, on standard error."""
     sys.stderr.write(f"{message}\n")
+
+
+@contextmanager
+def progress(label: str, total: float) -> Iterator[Callable[[float], None]]:
+    """Show a bar on standard error while something long goes on, if it is a terminal.
+
+    What is yielded takes how much more is done, in the unit of the total.
+    """
+    if not sys.stderr.isatty():
+        yield lambda _: None
+        return
+    from rich.console import Console
+    from rich.progress import Progress
+
+    with Progress(console=Console(stderr=True), transient=True) as bar:
+        task = bar.add_task(label, total=total)
+        yield lambda more: bar.advance(task, more)
+
+
+def moment(utc_s: float | None) -> str:
+    """Return UTC for a table whose column says so, to the second where it is a whole one."""
+    if utc_s is None:
+        return "–"
+    digits = 0 if utc_s == int(utc_s) else 3
+    return format_utc(utc_s, digits).removesuffix("Z").replace("T", " ")
 
 
 def number(value: float | None, digits: int) -> str:

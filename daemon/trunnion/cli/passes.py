@@ -6,7 +6,7 @@ from typing import TYPE_CHECKING, Annotated
 import typer
 
 from trunnion.cli.arguments import AsJson, From, Geometric, Station, TargetText, Until
-from trunnion.cli.output import number, print_json, print_table, say
+from trunnion.cli.output import moment, number, print_json, print_table, progress, say
 from trunnion.sky.instants import format_utc
 
 if TYPE_CHECKING:
@@ -40,9 +40,9 @@ def passes(
     """Print when a target rises, culminates and sets as seen from a station."""
     from trunnion.files.station import load_station
     from trunnion.service.clearance import clearance_of
+    from trunnion.service.pass_search import search_passes
     from trunnion.service.targets import TargetBook
     from trunnion.service.viewpoint import viewpoint_of
-    from trunnion.sky.passes import find_passes
 
     _must_make_sense(from_s, until_s, above_deg)
     loaded = load_station(station)
@@ -50,7 +50,8 @@ def passes(
     book = TargetBook(loaded, viewpoint.geometric() if geometric else viewpoint)
     found = book.resolve_or_read(target)
     above = clearance_of(loaded).lowest_deg if above_deg is None else above_deg
-    events = find_passes(found, from_s, until_s, above)
+    with progress(f"Passes of {found.name}", until_s - from_s) as advance:
+        events = search_passes(found, from_s, until_s, above, advance)
     if write_plan is not None:
         name = found.name if book.means_file(target) else target
         _write_draft(write_plan, name, events, from_s, until_s)
@@ -80,17 +81,17 @@ def _time(utc_s: float | None) -> str | None:
     return None if utc_s is None else format_utc(utc_s)
 
 
-def _second(utc_s: float | None) -> str | None:
-    return None if utc_s is None else format_utc(utc_s, 0)
+def _second(utc_s: float | None, otherwise: str) -> str:
+    return otherwise if utc_s is None else moment(float(round(utc_s)))
 
 
 def _print_passes(name: str, events: "tuple[Pass, ...]") -> None:
-    columns = ("rise (UTC)", "culmination (UTC)", "set (UTC)", "highest elevation [°]")
+    columns = ("rise (UTC)", "culmination (UTC)", "set (UTC)", "highest [°]")
     rows = (
         (
-            _second(each.rise_s) or "before the window",
-            _second(each.culmination_s) or "outside the window",
-            _second(each.set_s) or "after the window",
+            _second(each.rise_s, "before the window"),
+            _second(each.culmination_s, "outside the window"),
+            _second(each.set_s, "after the window"),
             number(each.highest_elevation_deg, 2),
         )
         for each in events

@@ -10,7 +10,7 @@ import typer
 from typer.core import TyperGroup
 
 from trunnion.cli.arguments import AsJson
-from trunnion.cli.output import flattened, print_json, print_table, say
+from trunnion.cli.output import flattened, moment, print_json, print_table, say
 from trunnion.sky.instants import format_utc
 
 if TYPE_CHECKING:
@@ -137,8 +137,8 @@ def _print_contacts(contacts: "Sequence[ContactRecord]") -> None:
             str(contact.contact_id),
             contact.contact,
             contact.target,
-            format_utc(contact.begin_utc_s, 0),
-            "–" if contact.end_utc_s is None else format_utc(contact.end_utc_s, 0),
+            moment(contact.begin_utc_s),
+            moment(contact.end_utc_s),
             contact.outcome.value,
             str(contact.samples),
         )
@@ -151,5 +151,5 @@ def _print_contacts(contacts: "Sequence[ContactRecord]") -> None:
 def _print_contact(contact: "ContactRecord", events: "Sequence[EventRecord]") -> None:
     print_table(f"Contact {contact.contact_id}", ("what", "how"), flattened(_plain(contact)))
     if events:
-        rows = ((format_utc(e.utc_s), e.kind.value, e.sentence) for e in events)
+        rows = ((moment(e.utc_s), e.kind.value, e.sentence) for e in events)
         print_table("Events", ("time (UTC)", "kind", "what"), rows)
