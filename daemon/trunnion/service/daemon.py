@@ -20,12 +20,11 @@ from trunnion.service.antenna import beam_of, flown_mount_of, mount_of
 from trunnion.service.cadence import Beat, Cadence
 from trunnion.service.clearance import clearance_of
 from trunnion.service.clock import Clock
+from trunnion.service.commands import Commands, Surroundings
 from trunnion.service.contact_log import ContactLog
-from trunnion.service.control.conversation import Handler
 from trunnion.service.control.server import ControlServer
 from trunnion.service.drivers import build_driver
 from trunnion.service.emergency_desk import EmergencyDesk
-from trunnion.service.errors import ServiceError
 from trunnion.service.file_watch import FileWatch
 from trunnion.service.latch import EmergencyLatch
 from trunnion.service.limits import safety_limits_of
@@ -79,19 +78,24 @@ class Daemon:
         self._last_turn: Turn | None = None
         self._last_beat = Beat(0, 0.0, 0)
         self._missed = 0
+        self._records: RecordWriter | None = None  # a stop may come before it is there
         driver = build_driver(station, clock)
         clearance = clearance_of(station)
         pilot = Pilot(Facts(flown_mount_of(station), clearance, beam_of(station).tolerance_deg))
         gate = Gate(safety_limits_of(station, mount_of(station), clearance))
         with ExitStack() as held:
-            self._records = RecordWriter(station.files.records, clock)
-            held.callback(self._records.close)
             self._wish = StandingWish(station.files.latch.with_name(WISH_FILE))
             self._desk = EmergencyDesk(EmergencyLatch(station.files.latch), clock, self._tell_stop)
-            self._server = ControlServer(
-                station.files.control_socket, self._handlers(), self.emergency_stop, clock
+            around = Surroundings(
+                self._status, self.reload, lambda: self._link.status, self._record
             )
-            held.callback(self._server.close)
+            handlers = Commands(self._wish, self._desk, around).handlers()
+            server = ControlServer(
+                station.files.control_socket, handlers, self.emergency_stop, clock
+            )
+            held.callback(server.close)
+            records = self._records = RecordWriter(station.files.records, clock)
+            held.callback(records.close)
             self._link = ThreadedLink(driver, clock, poll_s=0.5 / station.cadence.tick_hz)
             held.callback(self._link.close)
             self._desk.attach(self._link)
@@ -99,7 +103,7 @@ class Daemon:
             held.callback(self._plans.close)
             self._watch = FileWatch(_watched(paths, station))
             held.callback(self._watch.close)
-            recorder = Recorder(self._records)
+            recorder = Recorder(records)
             self._contacts = ContactLog(beam_of(station), recorder)
             observers = (self._contacts, recorder, _Heartbeat(station, notifier))
             self._control = ControlTurn(clock, self._link, pilot, gate, observers)
@@ -148,6 +152,7 @@ class Daemon:
             emergency=self._desk.latched,
             is_link_up=status.state is LinkState.UP,
             lateness_s=self._last_beat.lateness_s,
+            mount_fault=status.fault,
         )
 
     def _stow_at_the_end(self, cadence: Cadence) -> None:
@@ -170,16 +175,7 @@ class Daemon:
         """Halt, and stay halted until reset."""
         self._desk.stop(cause)
 
-    def _handlers(self) -> Mapping[str, Handler]:
-        return {
-            "status": self._status,
-            "reset": self._reset,
-            "resume": lambda _: self._take_up(Wish.FOLLOW_PLAN),
-            "stow": lambda _: self._take_up(Wish.STOW),
-            "reload": self._reload,
-        }
-
-    def _status(self, _: Mapping[str, object]) -> Mapping[str, object]:
+    def _status(self) -> Mapping[str, object]:
         return describe(self._station, self._last_turn, self._contacts.score, self._health())
 
     def _health(self) -> Health:
@@ -190,31 +186,10 @@ class Daemon:
             self._link.status,
             self._last_beat,
             self._missed,
-            self._records.trouble,
+            self._records.trouble if self._records is not None else None,
             self._plans.trouble,
             self._plans.is_planning,
         )
-
-    def _reset(self, _: Mapping[str, object]) -> Mapping[str, object]:
-        status = self._link.status
-        still_there = "the hardware stop input is pressed" if status.stop_pressed else status.fault
-        self._wish.set(Wish.HOLD)
-        self._desk.reset(still_there)
-        self._record(EventKind.RESET, "emergency stop lifted; nothing moves until told to")
-        return {"wish": self._wish.wish.value}
-
-    def _take_up(self, wish: Wish) -> Mapping[str, object]:
-        if self._desk.latched is not None:
-            raise ServiceError(
-                f"an emergency stop is in force ({self._desk.latched.cause}): reset it first"
-            )
-        trouble = self._wish.set(wish)
-        self._record(EventKind.REQUEST, f"told to {wish.value}")
-        return {"wish": wish.value, "trouble": trouble}
-
-    def _reload(self, _: Mapping[str, object]) -> Mapping[str, object]:
-        self.reload()
-        return {"planning": True}
 
     # -- what is told ---------------------------------------------------------------------------
 
@@ -227,7 +202,8 @@ class Daemon:
         self._record(EventKind.TROUBLE, sentence)
 
     def _record(self, kind: EventKind, sentence: str) -> None:
-        self._records.event(self._clock.utc_s(), kind, sentence)
+        if self._records is not None:
+            self._records.event(self._clock.utc_s(), kind, sentence)
 
 
 WISH_FILE = "standing-wish"

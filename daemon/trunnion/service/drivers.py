@@ -12,6 +12,7 @@ GROUP = "trunnion.drivers"
 """The entry-point group in which drivers, ours and other people's, announce themselves."""
 
 SIMULATOR = "simulator"
+MEMORY = "memory"
 
 
 def build_driver(station: StationFile, clock: Clock) -> Driver:
@@ -26,12 +27,20 @@ def build_driver(station: StationFile, clock: Clock) -> Driver:
 def build_simulator(station: StationFile, clock: Clock) -> Driver:
     """Build a simulated mount with this station's limits, whatever its own driver is.
 
-    The settings of a station that runs on the simulator apply to it as well.
+    The settings of a station that runs on the simulator apply to it as well, but for its memory:
+    what is only rehearsed moves no mount that somebody else is looking after.
     """
-    if station.driver.kind == SIMULATOR:
-        return build_driver(station, clock)
     driver_class = _load(next(iter(entry_points(group=GROUP, name=SIMULATOR))))
-    return driver_class.from_settings({}, mount_facts(station), clock)
+    is_simulated = station.driver.kind == SIMULATOR
+    settings = {
+        key: value
+        for key, value in (station.driver.settings if is_simulated else {}).items()
+        if key != MEMORY
+    }
+    try:
+        return driver_class.from_settings(settings, mount_facts(station), clock)
+    except BadSettings as bad:
+        raise driver_problems(station, bad.problems) from bad
 
 
 def mount_facts(station: StationFile) -> MountFacts:
@@ -40,7 +49,7 @@ def mount_facts(station: StationFile) -> MountFacts:
         JointFacts(*joint.travel_deg, joint.rate_deg_s, joint.acceleration_deg_s2)
         for joint in (station.mount.first, station.mount.second)
     )
-    return MountFacts(first, second, *station.mount.stow_deg)
+    return MountFacts(first, second, *station.mount.stow_deg, station.path.absolute().parent)
 
 
 def _entry_point(station: StationFile) -> EntryPoint:

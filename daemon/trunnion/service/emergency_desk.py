@@ -55,14 +55,13 @@ class EmergencyDesk:
         self._tell = tell
         self._lock = RLock()  # a signal may ask for a stop in the middle of another
         self._stop = latch.read()
-        if self._stop is not None:
-            tell(f"still stopped since before this start: {self._stop.cause}")
 
     def attach(self, link: Halting) -> None:
         """Have this link to halt from now on; at once where a stop is in force already."""
         self._link = link
         if self._stop is not None:
             link.emergency_halt()
+            self._tell(f"still stopped since before this start: {self._stop.cause}")
 
     @property
     def latched(self) -> EmergencyStop | None:

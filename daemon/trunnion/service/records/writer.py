@@ -73,6 +73,7 @@ class RecordWriter:
     def begin_contact(self, start: ContactStart) -> None:
         """A contact begins; samples and events belong to it until its end."""
         self._put(start)
+        self._hurry.set()  # so that a death at its very beginning leaves a trace
 
     def sample(self, sample: Sample) -> None:
         """One control turn of the contact under way; outside a contact it is not kept."""

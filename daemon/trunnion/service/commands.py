@@ -1,0 +1,68 @@
+"""What the running daemon does when asked by the control socket."""
+
+from collections.abc import Callable, Mapping
+from typing import NamedTuple
+
+from trunnion.pilot.phase import Wish
+from trunnion.service.control.conversation import Handler
+from trunnion.service.emergency_desk import EmergencyDesk
+from trunnion.service.errors import ServiceError
+from trunnion.service.link.status import LinkStatus
+from trunnion.service.records.values import EventKind
+from trunnion.service.standing_wish import StandingWish
+
+Answer = Mapping[str, object]
+
+
+class StopInForce(ServiceError):  # noqa: N818 - named for what it means
+    """Nothing that could move the mount is taken on while an emergency stop is latched."""
+
+
+class Surroundings(NamedTuple):
+    """The parts of the daemon that commands reach, each by one call; safe from any thread."""
+
+    status: Callable[[], Answer]
+    reload: Callable[[], None]
+    link_status: Callable[[], LinkStatus]
+    record: Callable[[EventKind, str], None]
+
+
+class Commands:
+    """The commands of the request lane; `stop` has a lane of its own."""
+
+    def __init__(self, wish: StandingWish, desk: EmergencyDesk, around: Surroundings) -> None:
+        self._wish = wish
+        self._desk = desk
+        self._around = around
+
+    def handlers(self) -> Mapping[str, Handler]:
+        """Each command's name and what fulfils it."""
+        return {
+            "status": lambda _: self._around.status(),
+            "reload": self._reload,
+            "reset": self._reset,
+            "resume": lambda _: self._take_up(Wish.FOLLOW_PLAN),
+            "stow": lambda _: self._take_up(Wish.STOW),
+            "hold": lambda _: self._take_up(Wish.HOLD),
+        }
+
+    def _reload(self, _: Answer) -> Answer:
+        self._around.reload()
+        return {"is_planning": True}
+
+    def _reset(self, _: Answer) -> Answer:
+        """Lift the stop, and wait: the wish to hold still is there before the stop is gone."""
+        status = self._around.link_status()
+        still_there = "the hardware stop input is pressed" if status.stop_pressed else status.fault
+        trouble = self._wish.set(Wish.HOLD)
+        self._desk.reset(still_there)
+        self._around.record(EventKind.RESET, "emergency stop lifted; nothing moves until told to")
+        return {"wish": self._wish.wish.value, "trouble": trouble}
+
+    def _take_up(self, wish: Wish) -> Answer:
+        stop = self._desk.latched
+        if stop is not None:
+            raise StopInForce(f"an emergency stop is in force ({stop.cause}): reset it first")
+        trouble = self._wish.set(wish)
+        self._around.record(EventKind.REQUEST, f"told to {wish.value}")
+        return {"wish": wish.value, "trouble": trouble}

@@ -1,0 +1,146 @@
+"""The real daemon as a process: a contact, a stop, a death, a restart, a reset, an end."""
+
+import json
+import signal
+import subprocess
+from collections.abc import Iterator
+from pathlib import Path
+
+import pytest
+
+from tests.end_to_end.station import Station
+
+
+@pytest.fixture
+def station(tmp_path: Path) -> Station:
+    return Station(tmp_path)
+
+
+@pytest.fixture
+def daemons() -> Iterator[list[subprocess.Popen[str]]]:
+    running: list[subprocess.Popen[str]] = []
+    yield running
+    for each in running:
+        each.kill()
+        each.wait()
+
+
+def test_a_contact_a_stop_a_death_a_restart_and_a_reset(
+    station: Station, daemons: list[subprocess.Popen[str]]
+) -> None:
+    daemons.append(station.run())
+    tracking = station.wait_for_phase("tracking")
+    assert tracking["contact"]["id"] == "the-contact"
+    assert tracking["mount"]["reading_deg"] == pytest.approx([3.7, 83.1], abs=0.4)
+
+    assert station.command("stop", str(station.file), "--cause", "a cow").returncode == 0
+    halted = station.wait_for_phase("halted")
+    assert "a cow" in halted["emergency_stop"]["cause"]
+    place = halted["mount"]["reading_deg"]
+    refused = station.command("resume", str(station.file))
+    assert refused.returncode == 1
+    assert "reset it first" in refused.stderr
+
+    daemons[-1].kill()
+    daemons[-1].wait()
+    daemons.append(station.run())
+    still = station.wait_for(lambda status: status["mount"]["reading_deg"] is not None)
+    assert still["phase"] == "halted"
+    assert "a cow" in still["emergency_stop"]["cause"]
+    assert still["mount"]["reading_deg"] == pytest.approx(place, abs=0.1)
+
+    assert station.command("reset", str(station.file)).returncode == 0
+    holding = station.wait_for_phase("holding")
+    assert holding["emergency_stop"] is None
+    assert holding["mount"]["order_deg"] is None
+
+    daemons[-1].kill()
+    daemons[-1].wait()
+    daemons.append(station.run())
+    station.wait_for(lambda status: status["phase"] == "holding" and not status["is_planning"])
+
+    assert station.command("resume", str(station.file)).returncode == 0
+    station.wait_for_phase("tracking")
+
+
+def test_killed_in_mid_contact_it_takes_it_up_by_itself(
+    station: Station, daemons: list[subprocess.Popen[str]]
+) -> None:
+    daemons.append(station.run())
+    station.wait_for_phase("tracking")
+    daemons[-1].kill()
+    daemons[-1].wait()
+    daemons.append(station.run())
+    station.wait_for_phase("tracking")
+    contacts = json.loads(station.command("records", str(station.file), "--json").stdout)
+    assert "interrupted" in json.dumps(contacts)
+
+
+def test_told_to_end_it_halts_records_and_leaves_nothing_behind(
+    station: Station, daemons: list[subprocess.Popen[str]]
+) -> None:
+    daemons.append(station.run())
+    station.wait_for_phase("tracking")
+    daemons[-1].send_signal(signal.SIGTERM)
+    assert daemons[-1].wait(timeout=20) == 0
+    assert not (station.folder / "control.sock").exists()
+    contacts = json.loads(station.command("records", str(station.file), "--json").stdout)
+    assert "cut short" in json.dumps(contacts)
+    silent = station.command("status", str(station.file))
+    assert (silent.returncode, silent.stdout) == (1, "")
+    assert "no daemon is listening" in silent.stderr
+
+
+def test_told_to_end_it_stows_first_where_the_station_wants_it(
+    station: Station, daemons: list[subprocess.Popen[str]]
+) -> None:
+    text = station.file.read_text()
+    station.file.write_text(text.replace("stow_on_exit: false", "stow_on_exit: true"))
+    daemons.append(station.run())
+    station.wait_for_phase("tracking")
+    daemons[-1].send_signal(signal.SIGTERM)
+    assert daemons[-1].wait(timeout=60) == 0
+    first_deg, second_deg = map(float, (station.folder / "mount.json").read_text().split())
+    assert (first_deg, second_deg) == pytest.approx((0.0, 88.0), abs=0.1)
+
+
+def test_a_second_daemon_on_the_same_mount_is_refused(
+    station: Station, daemons: list[subprocess.Popen[str]]
+) -> None:
+    daemons.append(station.run())
+    station.wait_for_phase("tracking")
+    second = station.command("run", str(station.file))
+    assert second.returncode == 1
+    assert second.stderr.count("\n") == 1
+    assert "another daemon is listening" in second.stderr
+
+
+def test_a_new_plan_is_taken_up_and_a_bad_one_is_not(
+    station: Station, daemons: list[subprocess.Popen[str]]
+) -> None:
+    daemons.append(station.run())
+    station.wait_for_phase("tracking")
+    (station.folder / "plan.yaml").write_text("contacts: [{target: sun, form: 2026}]\n")
+    troubled = station.wait_for(lambda status: bool(status["trouble"]))
+    assert troubled["phase"] == "tracking"
+    assert "form" in troubled["trouble"][0]
+    station.plan(begin_in_s=-3.0, length_s=300.0, target="fixed:5.3,81.9")
+    station.wait_for(lambda status: status["contact"]["target"] == "fixed:5.3,81.9")
+    station.wait_for_phase("tracking")
+
+
+def test_the_signal_for_an_emergency_stop_stops(
+    station: Station, daemons: list[subprocess.Popen[str]]
+) -> None:
+    daemons.append(station.run())
+    station.wait_for_phase("tracking")
+    daemons[-1].send_signal(signal.SIGUSR1)
+    assert "signal" in station.wait_for_phase("halted")["emergency_stop"]["cause"]
+
+
+def test_a_broken_station_file_is_told_without_a_traceback(station: Station) -> None:
+    station.file.write_text(station.file.read_text().replace("tick_hz", "tick_h"))
+    done = station.command("run", str(station.file))
+    assert done.returncode == 1
+    assert "did you mean 'tick_hz'" in done.stderr
+    assert "Traceback" not in done.stderr
