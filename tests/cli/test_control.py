@@ -55,9 +55,10 @@ def daemon(tmp_path: Path) -> Iterator[Daemon]:
 def test_status_prints_what_the_daemon_tells(daemon: Daemon) -> None:
     told = trunnion("status", daemon.station)
     assert told.exit_code == 0
+    assert "-47.25" in told.stdout
     assert ["state", "tracking"] in [line.split() for line in told.stdout.splitlines()]
     assert "joints: first deg" in told.stdout
-    assert "floor, mask" in told.stdout
+    assert "floor; mask" in told.stdout
 
 
 def test_status_as_json_is_the_daemons_own_answer(daemon: Daemon) -> None:

@@ -2,6 +2,8 @@
 
 import csv
 import json
+import subprocess
+import sys
 from pathlib import Path
 
 import pytest
@@ -97,6 +99,13 @@ def test_samples_are_exported_as_csv(station: Path, tmp_path: Path) -> None:
     assert (sample["demand_first_deg"], sample["order_first_deg"]) == ("31.5", "")
     printed = trunnion("records", "show", "1", station, "--csv", "-").stdout
     assert printed == file.read_text()
+
+
+def test_a_reader_that_has_gone_is_no_error_message(station: Path) -> None:
+    command = f"{Path(sys.executable).parent / 'trunnion'} records show 1 {station} --csv - | true"
+    for _ in range(3):
+        told = subprocess.run(["sh", "-c", command], capture_output=True, text=True, check=False)
+        assert told.stderr == ""
 
 
 def test_an_export_overwrites_nothing(station: Path) -> None:

@@ -84,7 +84,7 @@ def flattened(value: Mapping[str, object], above: str = "") -> Iterator[tuple[st
         if isinstance(inner, Mapping):
             yield from flattened(inner, f"{name}: ")
         elif isinstance(inner, list):
-            yield name, ", ".join(map(str, inner)) or "none"
+            yield name, "; ".join(map(_word, inner)) or "none"
         else:
             yield name, _word(inner)
 
@@ -92,4 +92,6 @@ def flattened(value: Mapping[str, object], above: str = "") -> Iterator[tuple[st
 def _word(value: object) -> str:
     if isinstance(value, bool):
         return "yes" if value else "no"
+    if isinstance(value, float):
+        return f"{value:.6g}"
     return "none" if value is None else str(value)

@@ -2,7 +2,7 @@
 
 import sys
 from collections.abc import Iterator, Sequence
-from contextlib import contextmanager
+from contextlib import closing, contextmanager
 from pathlib import Path
 from typing import TYPE_CHECKING, Annotated, Any
 
@@ -107,12 +107,13 @@ def _contact(kept: "Records", number: int) -> "ContactRecord":
 def _export(kept: "Records", number: int, csv: Path) -> None:
     from trunnion.service.records import csv_lines
 
-    lines = (f"{line}\n" for line in csv_lines(kept.samples(number)))
-    if csv == Path("-"):
-        sys.stdout.writelines(lines)
-        return
-    with csv.open("x", encoding="utf-8") as stream:
-        stream.writelines(lines)
+    with closing(kept.samples(number)) as samples:
+        lines = (f"{line}\n" for line in csv_lines(samples))
+        if csv == Path("-"):
+            sys.stdout.writelines(lines)
+            return
+        with csv.open("x", encoding="utf-8") as stream:
+            stream.writelines(lines)
     say(f"Wrote the samples of contact {number} to {csv}.")
 
 

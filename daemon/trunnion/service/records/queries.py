@@ -2,7 +2,7 @@
 
 import json
 import sqlite3
-from collections.abc import Iterator, Mapping
+from collections.abc import Generator, Iterator, Mapping
 from contextlib import closing
 from pathlib import Path
 from typing import Any, NamedTuple, Self
@@ -88,7 +88,7 @@ class Records:
             return self._contact(row)
         return None
 
-    def samples(self, contact_id: int) -> Iterator[SampleRecord]:
+    def samples(self, contact_id: int) -> Generator[SampleRecord, None, None]:
         """The samples of one contact in order of time."""
         columns = ", ".join(SAMPLE_COLUMNS)
         query = f"SELECT {columns} FROM sample WHERE contact_id = ? ORDER BY number"  # noqa: S608 - constants alone
