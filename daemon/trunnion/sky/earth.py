@@ -4,7 +4,7 @@ from array import array
 from collections.abc import Iterable, Iterator
 from dataclasses import dataclass, field
 from itertools import chain, pairwise
-from math import radians
+from math import inf, radians
 from pathlib import Path
 from typing import Self
 
@@ -21,8 +21,12 @@ ARCSECOND = radians(1.0 / 3600.0)
 Turned = tuple[float, float, float]
 """UT1 − UTC (s) and the pole's coordinates x and y (rad) at one instant."""
 
-STANDING: Turned = (0.0, 0.0, 0.0)
 COLUMNS = 6
+
+Day = tuple[float, float, float, float, float, float, float, float]
+"""Begin and end of a day (s), and its line of the table with the changes per second."""
+
+NO_DAY: Day = (0.0, 0.0, 0.0, 0.0, 0.0, 0.0, 0.0, 0.0)
 
 
 @dataclass(frozen=True, slots=True)
@@ -38,6 +42,9 @@ class EarthOrientation:
     begin_s: float = 0.0
     end_s: float = 0.0
     lines: "array[float]" = field(default_factory=lambda: array("d"), repr=False)
+    _today: list[Day] = field(
+        default_factory=lambda: [NO_DAY], init=False, repr=False, compare=False
+    )
 
     @classmethod
     def none(cls) -> Self:
@@ -73,13 +80,26 @@ class EarthOrientation:
 
     def at(self, utc_s: float) -> Turned:
         """UT1 − UTC and the pole at one instant; zero outside the table."""
-        if not self.begin_s <= utc_s < self.end_s:
-            return STANDING
-        days = (utc_s - self.begin_s) / SECONDS_A_DAY
-        day = int(days)
-        share = days - day
-        ut1, ut1_change, x, x_change, y, y_change = self.lines[COLUMNS * day : COLUMNS * day + 6]
-        return ut1 + share * ut1_change, x + share * x_change, y + share * y_change
+        begin_s, end_s, ut1_s, ut1_rate, x, x_rate, y, y_rate = self._today[0]
+        if not begin_s <= utc_s < end_s:
+            self._today[0] = self._day(utc_s)  # control turns stay within a day for long
+            begin_s, end_s, ut1_s, ut1_rate, x, x_rate, y, y_rate = self._today[0]
+        since_s = utc_s - begin_s
+        return ut1_s + ut1_rate * since_s, x + x_rate * since_s, y + y_rate * since_s
+
+    def _day(self, utc_s: float) -> Day:
+        if not self.covers(utc_s):
+            until_s = self.begin_s if utc_s < self.begin_s else inf
+            return (utc_s, min(utc_s + SECONDS_A_DAY, until_s), *NO_DAY[2:])
+        day = int((utc_s - self.begin_s) / SECONDS_A_DAY)
+        ut1_s, ut1, x, x_change, y, y_change = self.lines[COLUMNS * day : COLUMNS * (day + 1)]
+        return (
+            self.begin_s + day * SECONDS_A_DAY,
+            self.begin_s + (day + 1) * SECONDS_A_DAY,
+            *(ut1_s, ut1 / SECONDS_A_DAY),
+            *(x, x_change / SECONDS_A_DAY),
+            *(y, y_change / SECONDS_A_DAY),
+        )
 
     def at_many(self, utc_s: FloatArray) -> tuple[FloatArray, FloatArray, FloatArray]:
         """The same for an array of instants, shape (n,)."""

@@ -7,7 +7,6 @@ import numpy as np
 from sgp4.api import SGP4_ERRORS, WGS72, Satrec
 
 from trunnion.sky.earth_fixed import (
-    earth_fixed,
     earth_fixed_many,
     sidereal_angle,
     sidereal_angles,
@@ -15,8 +14,9 @@ from trunnion.sky.earth_fixed import (
 from trunnion.sky.errors import NoPosition
 from trunnion.sky.instants import SECONDS_A_DAY, UNIX_EPOCH_JD, julian_date
 from trunnion.sky.look import FloatArray, Look, Looks
+from trunnion.sky.sight import sight
 from trunnion.sky.site import Vector
-from trunnion.sky.topocentric import topocentric, topocentric_many
+from trunnion.sky.topocentric import topocentric_many
 from trunnion.sky.viewpoint import Viewpoint
 
 
@@ -92,11 +92,10 @@ class Satellite:
         """Where it stands; raises NoPosition."""
         view = self.viewpoint
         jd_midnight, fraction = julian_date(utc_s)
-        position_km, velocity_km_s = self._propagator.at(jd_midnight, fraction)
+        state = self._propagator.at(jd_midnight, fraction)
         turned = view.earth.at(utc_s)
         sidereal = sidereal_angle(jd_midnight, fraction + turned[0] / SECONDS_A_DAY)
-        position_km, velocity_km_s = earth_fixed(position_km, velocity_km_s, sidereal, turned)
-        return topocentric(position_km, velocity_km_s, view, with_light_time=view.is_apparent)
+        return sight(state, sidereal, turned, view)
 
     def looks(self, utc_s: FloatArray) -> Looks:
         """Where it stands at many instants; raises NoPosition when it has none at any of them."""

@@ -7,6 +7,10 @@ from trunnion.sky.errors import SkyError
 
 Vector = tuple[float, float, float]
 
+Meridian = tuple[float, float, float, float, float, float, float]
+"""Longitude (rad), its sine and cosine, sine and cosine of the latitude, distance (km) from the
+Earth's axis and above the equator's plane."""
+
 WGS84_RADIUS_KM = 6378.137
 WGS84_FLATTENING = 1.0 / 298.257223563
 """Defining constants of the World Geodetic System 1984 (NGA.STND.0036)."""
@@ -28,6 +32,7 @@ class Site:
     east: Vector = field(init=False, repr=False, compare=False)
     north: Vector = field(init=False, repr=False, compare=False)
     up: Vector = field(init=False, repr=False, compare=False)
+    meridian: Meridian = field(init=False, repr=False, compare=False)
 
     def __post_init__(self) -> None:
         values = (self.latitude_deg, self.longitude_deg, self.height_m)
@@ -44,11 +49,12 @@ class Site:
         normal_km = WGS84_RADIUS_KM / sqrt(1.0 - eccentricity2 * sin_lat * sin_lat)
         height_km = 1e-3 * self.height_m
         axis_km = (normal_km + height_km) * cos_lat
-        height_above_equator_km = (normal_km * (1.0 - eccentricity2) + height_km) * sin_lat
-        self._set("position_km", (axis_km * cos_lon, axis_km * sin_lon, height_above_equator_km))
+        plane_km = (normal_km * (1.0 - eccentricity2) + height_km) * sin_lat
+        self._set("meridian", (longitude, sin_lon, cos_lon, sin_lat, cos_lat, axis_km, plane_km))
+        self._set("position_km", (axis_km * cos_lon, axis_km * sin_lon, plane_km))
         self._set("east", (-sin_lon, cos_lon, 0.0))
         self._set("north", (-sin_lat * cos_lon, -sin_lat * sin_lon, cos_lat))
         self._set("up", (cos_lat * cos_lon, cos_lat * sin_lon, sin_lat))
 
-    def _set(self, name: str, value: Vector) -> None:
+    def _set(self, name: str, value: Vector | Meridian) -> None:
         object.__setattr__(self, name, value)
