@@ -21,7 +21,7 @@ _INSTANT = "TIME"
 
 Station = Annotated[Path, typer.Argument(metavar="STATION", help="The station file.")]
 
-AsJson = Annotated[bool, typer.Option("--json", help="Print JSON, and nothing else.")]
+AsJson = Annotated[bool, typer.Option("--json", metavar="", help="Print JSON, and nothing else.")]
 
 TargetText = Annotated[
     str,
@@ -35,7 +35,11 @@ TargetText = Annotated[
 
 Geometric = Annotated[
     bool,
-    typer.Option("--geometric", help="The straight line: no refraction, light time or aberration."),
+    typer.Option(
+        "--geometric",
+        metavar="",
+        help="The straight line: no refraction, light time or aberration.",
+    ),
 ]
 
 From = Annotated[

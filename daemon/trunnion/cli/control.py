@@ -19,7 +19,7 @@ _CAUTION = "If the antenna moves and must not, use the hardware emergency stop."
 Daemon = Annotated[
     Path,
     typer.Argument(
-        metavar="[STATION]", help="The station file of the daemon, or its control socket."
+        metavar="STATION", help="The station file of the daemon, or its control socket."
     ),
 ]
 

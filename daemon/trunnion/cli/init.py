@@ -14,7 +14,7 @@ _ABOUT_THE_FOLDER = {"README.md"}
 
 def init(
     folder: Annotated[
-        Path, typer.Argument(metavar="[FOLDER]", help="Where to; made if it is not there.")
+        Path, typer.Argument(metavar="FOLDER", help="Where to; made if it is not there.")
     ] = Path(),
 ) -> None:
     """Write out the example configuration; overwrites nothing."""

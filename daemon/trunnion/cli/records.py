@@ -59,7 +59,7 @@ def records(
 def show(
     number: Annotated[int, typer.Argument(metavar="ID", help="The number in the list.")],
     station: Annotated[
-        Path, typer.Argument(metavar="[STATION]", help="The station file.")
+        Path, typer.Argument(metavar="STATION", help="The station file.")
     ] = _STATION,
     *,
     csv: Annotated[
