@@ -10,8 +10,8 @@ from typing import NamedTuple
 from trunnion_drivers.control.command import Rates, Switches, Turn
 from trunnion_drivers.dialect.dialect import SWITCHING, Dialect, Flags, Step, Verb
 from trunnion_drivers.dialect.message import Found
-from trunnion_drivers.dialect.scale import ANGLES, FIRST_RATE, RATES, SECOND_RATE
 from trunnion_drivers.interface.values import DriverMotion
+from trunnion_drivers.scale import ANGLES, FIRST_RATE, RATES, SECOND_RATE
 from trunnion_drivers.simulator.machine import Look, SimulatedMachine
 
 _LONGEST_BUFFER = 4096

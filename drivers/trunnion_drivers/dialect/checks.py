@@ -6,8 +6,8 @@ from trunnion_drivers.control.command import CommandMode
 from trunnion_drivers.dialect.dialect import SWITCHING, Dialect, Verb
 from trunnion_drivers.dialect.message import Message
 from trunnion_drivers.dialect.numbers import DoesNotFit
-from trunnion_drivers.dialect.scale import ANGLES, RATES
 from trunnion_drivers.interface.values import JointFacts, MountFacts
+from trunnion_drivers.scale import ANGLES, RATES
 
 Finding = tuple[tuple[str, ...], str]
 

@@ -6,7 +6,7 @@ from enum import Enum
 
 from trunnion_drivers.control.command import CommandMode, Turn
 from trunnion_drivers.dialect.message import Message
-from trunnion_drivers.dialect.scale import Scales
+from trunnion_drivers.scale import Scales
 from trunnion_drivers.serial_port.settings import LineSettings
 
 

@@ -11,10 +11,10 @@ from trunnion_drivers.dialect.checks import contradictions
 from trunnion_drivers.dialect.dialect import Dialect, Flags, Step, Verb
 from trunnion_drivers.dialect.message import Frame, Message
 from trunnion_drivers.dialect.notation import literal
-from trunnion_drivers.dialect.scale import Scales
 from trunnion_drivers.dialect.sections import DialectSection, FlagsSection
 from trunnion_drivers.dialect.yaml_lines import LinedYaml, read_lined_yaml
 from trunnion_drivers.interface.errors import BadSettings, SettingProblem
+from trunnion_drivers.scale import Scales
 from trunnion_drivers.settings import problems
 
 Key = tuple[str, ...]

@@ -7,7 +7,7 @@ from pydantic import Field, field_validator
 from trunnion_drivers.control.command import CommandMode
 from trunnion_drivers.dialect.checksum import ChecksumKind
 from trunnion_drivers.dialect.notation import Coding
-from trunnion_drivers.dialect.scale import Scale
+from trunnion_drivers.scale import Scale
 from trunnion_drivers.serial_port.settings import LineSettings
 from trunnion_drivers.settings import Settings
 

@@ -1,4 +1,4 @@
-"""Degrees, and what stands for them in the messages."""
+"""Degrees, and the numbers that stand for them in messages and registers."""
 
 from collections.abc import Mapping
 from dataclasses import dataclass

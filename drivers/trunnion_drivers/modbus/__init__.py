@@ -1,0 +1,1 @@
+"""Modbus: mounts behind a controller with registers, over a serial line or TCP."""
