@@ -22,6 +22,8 @@ RADIO_SCALE_HEIGHT_KM = 1.0 / 0.1361
 DRY_SCALE_HEIGHT_KM_PER_K = 0.0292718
 """R T / g of dry air."""
 
+HIGHEST_DEG = 90.0
+
 _STEP_DEG = 0.25
 _PIECES_A_DEG = 4.0
 _TOP_SCALE_HEIGHTS = 20.0
@@ -93,7 +95,7 @@ class TracedRefraction:
     def _trace(cls, model: str, refractivity: float, scale_km: float, height_m: float) -> Self:
         radius_km = EARTH_RADIUS_KM + 1e-3 * height_m
         begin_deg = -float(_bending_deg(np.zeros(1), refractivity, scale_km, radius_km)[0])
-        steps = int(np.ceil((90.0 - begin_deg) / _STEP_DEG)) + 2
+        steps = int(np.ceil((HIGHEST_DEG - begin_deg) / _STEP_DEG)) + 2
         true_deg = begin_deg + _STEP_DEG * np.arange(steps)
         lift_deg = np.zeros_like(true_deg)
         for _ in range(_ITERATIONS):  # the bending follows from the apparent elevation
@@ -109,7 +111,9 @@ class TracedRefraction:
         index = int(place)
         u = place - index
         a, b, c, d = self.pieces[index]
-        return a + u * (b + u * (c + u * d)), (b + u * (2.0 * c + u * 3.0 * d)) * _PIECES_A_DEG
+        seen_deg = a + u * (b + u * (c + u * d))
+        slope = (b + u * (2.0 * c + u * 3.0 * d)) * _PIECES_A_DEG
+        return seen_deg if seen_deg < HIGHEST_DEG else HIGHEST_DEG, slope
 
     def seen_many(self, elevation_deg: FloatArray) -> tuple[FloatArray, FloatArray]:
         """Apparent elevations and slopes for an array."""
@@ -121,7 +125,9 @@ class TracedRefraction:
         seen_deg = a + u * (b + u * (c + u * d))
         slope = (b + u * (2.0 * c + u * 3.0 * d)) * _PIECES_A_DEG
         return (
-            np.where(is_below, elevation_deg + a - self.begin_deg, seen_deg),
+            np.where(
+                is_below, elevation_deg + a - self.begin_deg, np.minimum(seen_deg, HIGHEST_DEG)
+            ),
             np.where(is_below, 1.0, slope),
         )
 
