@@ -146,6 +146,16 @@ def test_one_elements_path_needs_no_list(tmp_path: Path) -> None:
             ),
         ),
         (
+            {
+                "elevation_floor_deg": "elevation_floor_deg: 5\n  encoder_error_deg: 1.5\n"
+                "  slip_deg: 1.25"
+            },
+            (
+                "station.yaml:21: safety.slip_deg: expected more than encoder_error_deg, 1.5, "
+                "got 1.25"
+            ),
+        ),
+        (
             {"elevation_floor_deg": "elevation_floor_deg: 5\n  stow_on_exit: yes"},
             "station.yaml:20: safety.stow_on_exit: expected true or false, got 'yes'",
         ),

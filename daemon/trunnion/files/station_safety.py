@@ -71,6 +71,14 @@ class SafetySection(Section):
     """Seconds after which the mount's last reading is too old to move by: the mount is halted."""
     turn_max_lateness_s: Annotated[float, Field(gt=0, le=10)] = 0.5
     """Seconds by which a control turn may be late; beyond that the mount is halted."""
+    encoder_error_deg: Annotated[float, Field(ge=0, le=5)] = 0.05
+    """Degrees by which a joint's reading may differ from the truth, and so seem out of bounds."""
+    stall_error_deg: Annotated[float, Field(gt=0, le=30)] = 3.0
+    """Degrees by which a joint may lag behind its orders; when it stays further behind, it counts
+    as jammed, and an emergency stop is latched."""
+    slip_deg: Annotated[float, Field(gt=0, le=30)] = 1.0
+    """Degrees by which a joint that was ordered to rest may move; after more, somebody or something
+    else moves it, and an emergency stop is latched."""
     element_max_age_days: PositiveFloat = 7.0
     """Days from the epoch of orbit elements after which nothing is tracked by them."""
     stow_on_exit: bool = False
@@ -86,3 +94,13 @@ class SafetySection(Section):
                 f"expected the elevation floor, {floor_deg:g}, or more, got {transmit_floor_deg:g}"
             )
         return transmit_floor_deg
+
+    @field_validator("stall_error_deg", "slip_deg")
+    @classmethod
+    def _more_than_the_encoders_error(cls, limit_deg: float, info: ValidationInfo) -> float:
+        encoder_error_deg = info.data.get("encoder_error_deg", 0.0)
+        if limit_deg <= encoder_error_deg:
+            raise ValueError(
+                f"expected more than encoder_error_deg, {encoder_error_deg:g}, got {limit_deg:g}"
+            )
+        return limit_deg

@@ -15,4 +15,7 @@ def safety_limits_of(station: StationFile, mount: Mount, clearance: Clearance) -
         safety.transmit_floor_deg,
         reading_max_age_s=safety.reading_max_age_s,
         turn_max_lateness_s=safety.turn_max_lateness_s,
+        encoder_error_deg=safety.encoder_error_deg,
+        stall_error_deg=safety.stall_error_deg,
+        slip_deg=safety.slip_deg,
     )
