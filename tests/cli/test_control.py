@@ -9,7 +9,7 @@ import pytest
 
 from tests.cli.command import trunnion
 from trunnion.service.clock import SystemClock
-from trunnion.service.control import ControlServer
+from trunnion.service.control.server import ControlServer
 from trunnion.service.errors import ServiceError
 
 STATUS: dict[str, object] = {

@@ -14,7 +14,7 @@ from trunnion.cli.output import flattened, moment, print_json, print_table, say
 from trunnion.sky.instants import format_utc
 
 if TYPE_CHECKING:
-    from trunnion.service.records import ContactRecord, EventRecord, Records
+    from trunnion.service.records.queries import ContactRecord, EventRecord, Records
 
 _STATION = Path("station.yaml")
 
@@ -89,7 +89,7 @@ def show(
 @contextmanager
 def _records_of(station: Path) -> "Iterator[Records]":
     from trunnion.files.station import load_station
-    from trunnion.service.records import Records
+    from trunnion.service.records.queries import Records
 
     with Records(load_station(station).files.records) as kept:
         yield kept
@@ -105,7 +105,7 @@ def _contact(kept: "Records", number: int) -> "ContactRecord":
 
 
 def _export(kept: "Records", number: int, csv: Path) -> None:
-    from trunnion.service.records import csv_lines
+    from trunnion.service.records.export import csv_lines
 
     with closing(kept.samples(number)) as samples:
         lines = (f"{line}\n" for line in csv_lines(samples))

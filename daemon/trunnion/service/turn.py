@@ -15,7 +15,7 @@ from trunnion.safety.gate import Gate
 from trunnion.safety.verdict import Move, Verdict
 from trunnion.safety.world import World
 from trunnion.service.clock import Clock
-from trunnion.service.link import Link
+from trunnion.service.link.link import Link
 from trunnion.track.path import Assignment
 
 

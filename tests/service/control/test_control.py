@@ -15,20 +15,19 @@ from pathlib import Path
 import pytest
 
 from trunnion.service.clock import SystemClock, VirtualClock
-from trunnion.service.control import (
-    BadArguments,
-    ControlClient,
+from trunnion.service.control.client import ControlClient
+from trunnion.service.control.endpoint import stop_path
+from trunnion.service.control.errors import (
     ControlError,
-    ControlServer,
     DaemonSilent,
-    ErrorKind,
     NoDaemon,
     RequestFailed,
     SocketInUse,
+    SocketUnusable,
 )
-from trunnion.service.control.endpoint import stop_path
-from trunnion.service.control.errors import SocketUnusable
 from trunnion.service.control.lane import LONGEST_SILENCE_S, MOST_CONNECTIONS
+from trunnion.service.control.protocol import BadArguments, ErrorKind
+from trunnion.service.control.server import ControlServer
 
 
 class Desk:
@@ -140,7 +139,7 @@ def test_the_path_of_a_killed_daemon_is_taken_over(path: Path, desk: Desk) -> No
     script = (
         "import os, signal, sys; from pathlib import Path\n"
         "from trunnion.service.clock import SystemClock\n"
-        "from trunnion.service.control import ControlServer\n"
+        "from trunnion.service.control.server import ControlServer\n"
         "server = ControlServer(Path(sys.argv[1]), {}, print, SystemClock())\n"
         "os.kill(os.getpid(), signal.SIGKILL)\n"
     )

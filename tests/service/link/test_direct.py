@@ -8,9 +8,9 @@ from tests.service.link.scripted import ScriptedDriver
 from trunnion.mount.joints import Motion, Reading
 from trunnion.safety.verdict import Halt, Move
 from trunnion.service.clock import VirtualClock
-from trunnion.service.link import DirectLink, LinkState
 from trunnion.service.link.backoff import FIRST_PAUSE_S, LONGEST_PAUSE_S
-from trunnion.service.link.status import LinkStatus
+from trunnion.service.link.direct import DirectLink
+from trunnion.service.link.status import LinkState, LinkStatus
 from trunnion_drivers.interface.errors import (
     Garbled,
     LinkLost,

@@ -10,7 +10,8 @@ from tests.service.link.scripted import ScriptedDriver
 from trunnion.mount.joints import Motion
 from trunnion.safety.verdict import Halt, Move
 from trunnion.service.clock import SystemClock
-from trunnion.service.link import LinkState, ThreadedLink
+from trunnion.service.link.status import LinkState
+from trunnion.service.link.threaded import ThreadedLink
 from trunnion_drivers.interface.errors import LinkLost
 from trunnion_drivers.interface.values import DriverMotion
 

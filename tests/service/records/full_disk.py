@@ -6,7 +6,8 @@ from pathlib import Path
 
 from tests.service.records.story import UTC_S, sample, start
 from trunnion.service.clock import VirtualClock
-from trunnion.service.records import EventKind, Outcome, RecordWriter
+from trunnion.service.records.values import EventKind, Outcome
+from trunnion.service.records.writer import RecordWriter
 
 FULL_AT_BYTES = 400_000
 

@@ -1,7 +1,7 @@
 """A contact to put on record: crooked numbers, nothing zero, nothing symmetric."""
 
 from trunnion.mount.joints import Motion, Reading
-from trunnion.service.records import ContactStart, Sample
+from trunnion.service.records.values import ContactStart, Sample
 from trunnion.sky.look import Look
 
 UTC_S = 1_893_456_123.75

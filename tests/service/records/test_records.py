@@ -10,15 +10,10 @@ import pytest
 
 from tests.service.records.story import UTC_S, sample, start
 from trunnion.service.clock import VirtualClock
-from trunnion.service.records import (
-    EventKind,
-    EventRecord,
-    NoRecords,
-    Outcome,
-    Records,
-    RecordWriter,
-    csv_lines,
-)
+from trunnion.service.records.export import csv_lines
+from trunnion.service.records.queries import EventRecord, NoRecords, Records
+from trunnion.service.records.values import EventKind, Outcome
+from trunnion.service.records.writer import RecordWriter
 
 
 @pytest.fixture
@@ -133,7 +128,7 @@ def test_a_killed_daemon_leaves_a_readable_file_and_an_interrupted_contact(path:
         "import os, signal, sys; from pathlib import Path\n"
         "from tests.service.records.story import UTC_S, sample, start\n"
         "from trunnion.service.clock import VirtualClock\n"
-        "from trunnion.service.records import RecordWriter\n"
+        "from trunnion.service.records.writer import RecordWriter\n"
         "writer = RecordWriter(Path(sys.argv[1]), VirtualClock(UTC_S))\n"
         "writer.begin_contact(start())\n"
         "for turn in range(40): writer.sample(sample(turn))\n"

@@ -10,14 +10,10 @@ import pytest
 
 from tests.service.records.story import UTC_S, sample, start
 from trunnion.service.clock import VirtualClock
-from trunnion.service.records import (
-    EventKind,
-    Outcome,
-    Records,
-    RecordWriter,
-    Retention,
-)
-from trunnion.service.records.store import RecordStore
+from trunnion.service.records.queries import Records
+from trunnion.service.records.store import RecordStore, Retention
+from trunnion.service.records.values import EventKind, Outcome
+from trunnion.service.records.writer import RecordWriter
 
 
 @pytest.fixture
