@@ -6,7 +6,6 @@ refused, by name, rather than moved.
 
 import re
 from datetime import UTC, datetime
-from math import floor
 
 UNIX_EPOCH_JD = 2440587.5
 """Julian date of 1970-01-01T00:00 UTC."""
@@ -42,5 +41,5 @@ def format_utc(utc_s: float, digits: int = 3) -> str:
 
 def julian_date(utc_s: float) -> tuple[float, float]:
     """Julian date (UTC) as the midnight before and the fraction of a day since, exactly split."""
-    days = floor(utc_s / SECONDS_A_DAY)
+    days = utc_s // SECONDS_A_DAY
     return UNIX_EPOCH_JD + days, (utc_s - days * SECONDS_A_DAY) / SECONDS_A_DAY

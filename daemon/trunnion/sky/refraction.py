@@ -113,7 +113,7 @@ class TracedRefraction:
         a, b, c, d = self.pieces[index]
         seen_deg = a + u * (b + u * (c + u * d))
         slope = (b + u * (2.0 * c + u * 3.0 * d)) * _PIECES_A_DEG
-        return seen_deg if seen_deg < HIGHEST_DEG else HIGHEST_DEG, slope
+        return seen_deg if seen_deg < HIGHEST_DEG else HIGHEST_DEG, slope  # noqa: FURB136 - fast
 
     def seen_many(self, elevation_deg: FloatArray) -> tuple[FloatArray, FloatArray]:
         """Apparent elevations and slopes for an array."""
