@@ -1,0 +1,1 @@
+"""Wind inputs: small drivers that say how hard it blows."""
