@@ -41,6 +41,7 @@ class SerialPort:
     def open(self) -> None:
         """Open it for this process alone, and give the actuators their power."""
         settings = self._settings
+        is_here = _has_descriptor(settings.url)
         try:
             port = serial.serial_for_url(
                 settings.url,
@@ -49,17 +50,17 @@ class SerialPort:
                 bytesize=settings.data_bits,
                 parity=_PARITY[settings.parity],
                 stopbits=settings.stop_bits,
-                write_timeout=_WRITE_TIMEOUT_S,
+                write_timeout=_WRITE_TIMEOUT_S if is_here else None,
                 exclusive=True,
             )
-            port.timeout = 0 if _has_descriptor(settings.url) else _SLICE_S
+            port.timeout = 0 if is_here else _SLICE_S
             if settings.rs485:
                 port.rs485_mode = RS485Settings()
             port.open()
         except (OSError, ValueError, termios.error) as error:
             raise LinkLost(in_words(settings.url, error)) from error
         self._port = port
-        self._poll = _watch(port) if _has_descriptor(settings.url) else None
+        self._poll = _watch(port) if is_here else None
 
     def close(self) -> None:
         """Close it; nothing is raised for a port that is gone."""

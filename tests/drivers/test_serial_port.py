@@ -1,0 +1,222 @@
+"""Real ports: what goes over them, what is wrong with them, and their modem-control lines."""
+
+import stat
+import time
+from collections.abc import Callable, Iterator
+from pathlib import Path
+from typing import Any
+
+import pytest
+
+from tests.drivers.benches import SystemClock
+from tests.drivers.mounts import HandClock
+from tests.drivers.rfc2217_server import HandHeldAdapter, Rfc2217Server
+from trunnion_drivers.bench.endpoint import PtyEndpoint, TcpEndpoint
+from trunnion_drivers.interface.errors import Garbled, LinkLost, NoReply
+from trunnion_drivers.serial_port.any_port import AnyPort, port_for
+from trunnion_drivers.serial_port.exchange import Exchanges
+from trunnion_drivers.serial_port.settings import PortSettings
+from trunnion_drivers.settings import checked
+
+
+def port(url: str, **settings: Any) -> AnyPort:
+    return port_for(checked(PortSettings, {"url": url, **settings}), SystemClock())
+
+
+def soon() -> float:
+    return time.monotonic() + 1.0
+
+
+class Parrot:
+    """Says back what it hears."""
+
+    def hear(self, _mono_s: float, come: bytes) -> bytes:
+        return come
+
+    def says_unasked(self, _mono_s: float) -> bytes:
+        return b""
+
+
+@pytest.mark.parametrize("kind", [PtyEndpoint, TcpEndpoint])
+def test_bytes_pass_both_ways(kind: type[PtyEndpoint | TcpEndpoint]) -> None:
+    endpoint = kind()
+    near = port(endpoint.url)
+    near.open()
+    near.send(b"\x00\xffquestion\r\n")
+    until_s, come = soon(), b""
+    while b"\n" not in come and time.monotonic() < until_s:
+        come += endpoint.receive()
+    assert come == b"\x00\xffquestion\r\n"
+    endpoint.send(b"\x11\x13answer\r")
+    assert near.receive(soon()) == b"\x11\x13answer\r"
+    assert near.receive(time.monotonic()) == b""
+    near.close()
+    endpoint.close()
+
+
+@pytest.mark.parametrize("kind", [PtyEndpoint, TcpEndpoint])
+def test_a_pulled_wire_is_lost(kind: type[PtyEndpoint | TcpEndpoint]) -> None:
+    endpoint = kind()
+    near = port(endpoint.url)
+    near.open()
+    near.send(b"x")
+    while not endpoint.receive():
+        pass
+    endpoint.close()
+    with pytest.raises(LinkLost):
+        near.receive(soon())
+    near.close()
+    with pytest.raises(LinkLost, match="not"):
+        near.send(b"x")
+
+
+def test_a_port_is_used_by_one_alone() -> None:
+    endpoint = PtyEndpoint()
+    first, second = port(endpoint.url), port(endpoint.url)
+    first.open()
+    with pytest.raises(LinkLost, match="another program"):
+        second.open()
+    first.close()
+    second.open()
+    second.close()
+    endpoint.close()
+
+
+def test_a_missing_port_is_told() -> None:
+    with pytest.raises(LinkLost, match="is the adapter plugged in"):
+        port("/dev/serial/by-id/nothing").open()
+    with pytest.raises(LinkLost, match="expected a connection"):
+        port("socket://127.0.0.1:1").open()
+
+
+def test_what_is_no_port_is_told(tmp_path: Path) -> None:
+    path = tmp_path / "text"
+    path.write_text("hello")
+    with pytest.raises(LinkLost, match="cannot be used"):
+        port(str(path)).open()
+
+
+def test_a_missing_permission_names_the_group(tmp_path: Path) -> None:
+    from trunnion_drivers.serial_port.trouble import in_words
+
+    path = tmp_path / "port"
+    path.touch()
+    path.chmod(stat.S_IRUSR)
+    words = in_words(str(path), PermissionError(13, "Permission denied"))
+    assert "no permission" in words
+    assert "must be in the group" in words
+    assert repr(path.group()) in words
+
+
+@pytest.mark.filterwarnings(r"ignore:set(Daemon|Name)\(\) is deprecated")  # pyserial calls them
+class TestModemLines:
+    @pytest.fixture
+    def adapter(self) -> HandHeldAdapter:
+        return HandHeldAdapter()
+
+    @pytest.fixture
+    def near(self, adapter: HandHeldAdapter) -> Iterator[AnyPort]:
+        with Rfc2217Server(adapter, Parrot()) as server:
+            near = port(server.url, stop_input="cts", power_output="dtr")
+            near.open()
+            yield near
+            near.close()
+
+    def test_bytes_pass_over_rfc_2217(self, near: AnyPort) -> None:
+        near.send(b"\x00\xff\x13question\r\n")
+        until_s, come = soon(), b""
+        while len(come) < 13 and time.monotonic() < until_s:
+            come += near.receive(until_s)
+        assert come == b"\x00\xff\x13question\r\n"
+
+    def test_a_stop_that_is_not_held_up_is_pressed(
+        self, near: AnyPort, adapter: HandHeldAdapter
+    ) -> None:
+        assert eventually(lambda: not near.stop_pressed)
+        adapter.cts = False
+        assert eventually(lambda: near.stop_pressed)
+        adapter.cts = True
+        assert eventually(lambda: not near.stop_pressed)
+
+    def test_power_is_held_up_and_dropped(self, near: AnyPort, adapter: HandHeldAdapter) -> None:
+        near.set_power(is_on=True)
+        assert eventually(lambda: adapter.dtr)
+        near.set_power(is_on=False)
+        assert eventually(lambda: not adapter.dtr)
+
+
+def eventually(is_so: Callable[[], bool]) -> bool:
+    until_s = soon()
+    while not is_so() and time.monotonic() < until_s:
+        time.sleep(0.01)
+    return is_so()
+
+
+class Scripted:
+    """A port under a clock by hand: what comes, and when (s after the message was sent)."""
+
+    def __init__(self, clock: HandClock, *answers: list[tuple[float, bytes]]) -> None:
+        self._clock = clock
+        self._answers = list(answers)
+        self._coming: list[tuple[float, bytes]] = []
+        self.sent: list[bytes] = []
+
+    def send(self, message: bytes) -> None:
+        self.sent.append(message)
+        now_s = self._clock.monotonic_s()
+        answer = self._answers.pop(0) if self._answers else []
+        self._coming += [(now_s + after_s, data) for after_s, data in answer]
+
+    def receive(self, until_s: float) -> bytes:
+        if self._coming and self._coming[0][0] <= until_s:
+            at_s, data = self._coming.pop(0)
+            self._clock.sleep(max(0.0, at_s - self._clock.monotonic_s()))
+            return data
+        self._clock.sleep(max(0.0, until_s - self._clock.monotonic_s()))
+        return b""
+
+
+def line(come: bytes) -> bytes | None:
+    return come if come.endswith(b"\n") else None
+
+
+def test_an_answer_in_pieces_is_put_together() -> None:
+    clock = HandClock()
+    near = Scripted(clock, [(0.01, b"a"), (0.02, b"b"), (0.03, b"\n")])
+    assert Exchanges(near, clock, 0.3, 0.0).ask(b"?", line) == b"ab\n"
+
+
+def test_silence_and_nonsense_are_told_apart() -> None:
+    clock = HandClock()
+    exchanges = Exchanges(Scripted(clock, [], [(0.1, b"zzz")]), clock, 0.3, 0.0)
+    with pytest.raises(NoReply, match=r"0\.3 s"):
+        exchanges.ask(b"?", line)
+    with pytest.raises(Garbled, match="zzz"):
+        exchanges.ask(b"?", line)
+
+
+def test_a_late_answer_is_not_taken_for_the_next_one() -> None:
+    clock = HandClock()
+    near = Scripted(clock, [(0.33, b"late\n")], [(0.05, b"right\n")])
+    exchanges = Exchanges(near, clock, 0.3, 0.0)
+    with pytest.raises(NoReply):
+        exchanges.ask(b"1", line)
+    assert exchanges.ask(b"2", line) == b"right\n"
+
+
+def test_what_came_unasked_is_thrown_away() -> None:
+    clock = HandClock()
+    near = Scripted(clock, [(0.0, b"one\n"), (0.01, b"doubled\n")], [(0.05, b"two\n")])
+    exchanges = Exchanges(near, clock, 0.3, 0.0)
+    assert exchanges.ask(b"1", line) == b"one\n"
+    clock.sleep(0.1)
+    assert exchanges.ask(b"2", line) == b"two\n"
+
+
+def test_messages_keep_their_distance() -> None:
+    clock = HandClock()
+    exchanges = Exchanges(Scripted(clock), clock, 0.3, pause_s=0.25)
+    begin_s = clock.monotonic_s()
+    for _ in range(4):
+        exchanges.tell(b"x")
+    assert clock.monotonic_s() - begin_s == pytest.approx(0.75)
