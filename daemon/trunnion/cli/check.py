@@ -101,33 +101,32 @@ def _print(briefing: "Briefing") -> None:
     columns = (
         "contact",
         "target",
-        "rise (UTC)",
+        "day, rise (UTC)",
         "highest",
         "set",
-        "elevation [°]",
+        "up to [°]",
         "first joint [°]",
-        "worst error [°]",
-        "elements [days]",
-        "verdict",
+        "error [°]",
+        "age [days]",
+        "",
     )
     print_table(f"Plan of {briefing.station.site.name}", columns, map(_row, briefing.contacts))
     for each in briefing.contacts:
-        for sentence in _sentences(each):
+        for sentence in each.sentences:
             print_text(f"{each.contact.id}: {sentence}")
 
 
 def _row(each: "ContactBriefing") -> tuple[str, ...]:
     forecast = each.forecast
-    verdict = "served" if each.is_served else "NOT served as asked"
+    verdict = "as asked" if each.is_served else "NOT as asked"
     if forecast is None or forecast.begin_s is None:
         return (each.contact.id, each.contact.target, *("–",) * 6, _age(each), verdict)
-    turns = (
-        f"{number(forecast.first_joint_begin_deg, 0)} … {number(forecast.first_joint_end_deg, 0)}"
-    )
+    begin_deg, end_deg = forecast.first_joint_begin_deg, forecast.first_joint_end_deg
+    turns = f"{number(begin_deg, 0)} … {number(end_deg, 0)}"
     return (
         each.contact.id,
         each.contact.target,
-        format_utc(forecast.begin_s, 0),
+        format_utc(forecast.begin_s, 0)[5:19].replace("T", " "),
         _clock(forecast.culmination_s),
         _clock(forecast.end_s),
         number(forecast.highest_elevation_deg, 1),
@@ -144,10 +143,3 @@ def _age(each: "ContactBriefing") -> str:
 
 def _clock(utc_s: float | None) -> str:
     return "–" if utc_s is None else format_utc(utc_s, 0)[11:19]
-
-
-def _sentences(each: "ContactBriefing") -> list[str]:
-    found = [each.trouble] if each.trouble else []
-    return found + [
-        finding.sentence for finding in (each.forecast.findings if each.forecast else ())
-    ]

@@ -55,6 +55,13 @@ class ContactBriefing:
         """Whether nothing that was asked for will be missed."""
         return self.forecast is not None and self.forecast.is_served
 
+    @property
+    def sentences(self) -> tuple[str, ...]:
+        """Everything that needs to be said of it."""
+        if self.forecast is None:
+            return (self.trouble or "not prepared",)
+        return tuple(finding.sentence for finding in self.forecast.findings)
+
 
 @dataclass(frozen=True, slots=True)
 class Briefing:

@@ -28,7 +28,6 @@ from trunnion.service.emergency_desk import EmergencyDesk
 from trunnion.service.file_watch import FileWatch
 from trunnion.service.latch import EmergencyLatch
 from trunnion.service.limits import safety_limits_of
-from trunnion.service.link.status import LinkState
 from trunnion.service.link.threaded import ThreadedLink
 from trunnion.service.notify import Notifier, Watchdog, watchdog_timeout_s
 from trunnion.service.plan_keeper import PlanKeeper
@@ -37,6 +36,7 @@ from trunnion.service.records.values import EventKind
 from trunnion.service.records.writer import RecordWriter
 from trunnion.service.standing_wish import StandingWish
 from trunnion.service.status import Health, describe
+from trunnion.service.surroundings import HARDWARE_STOP, world_of
 from trunnion.service.turn import ControlTurn, Orders, Turn
 
 _log = logging.getLogger(__name__)
@@ -147,13 +147,8 @@ class Daemon:
     def _look_around(self) -> World:
         status = self._link.status
         if status.stop_pressed:
-            self.emergency_stop("the hardware stop input is pressed, or its signal is lost")
-        return World(
-            emergency=self._desk.latched,
-            is_link_up=status.state is LinkState.UP,
-            lateness_s=self._last_beat.lateness_s,
-            mount_fault=status.fault,
-        )
+            self.emergency_stop(HARDWARE_STOP)
+        return world_of(self._desk.latched, status, self._last_beat.lateness_s)
 
     def _stow_at_the_end(self, cadence: Cadence) -> None:
         until_s = self._clock.monotonic_s() + LONGEST_STOWING_S

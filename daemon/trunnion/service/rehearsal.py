@@ -13,6 +13,7 @@ from trunnion.files.station import load_station
 from trunnion.pilot.departure import Facts
 from trunnion.pilot.phase import Phase, Wish
 from trunnion.pilot.pilot import Pilot
+from trunnion.safety.emergency import EmergencyStop
 from trunnion.safety.gate import Gate
 from trunnion.safety.world import World
 from trunnion.service.antenna import beam_of, flown_mount_of, mount_of
@@ -24,6 +25,7 @@ from trunnion.service.drivers import build_simulator
 from trunnion.service.limits import safety_limits_of
 from trunnion.service.link.direct import DirectLink
 from trunnion.service.score import Score, combined
+from trunnion.service.surroundings import HARDWARE_STOP, world_of
 from trunnion.service.turn import ControlTurn, Observer, Orders, Turn
 from trunnion.track.path import Assignment
 
@@ -52,14 +54,16 @@ class Rehearsal:
     def __init__(self, briefing: Briefing, begin_s: float) -> None:
         station = briefing.station
         self.begin_s = begin_s
+        self._latched: EmergencyStop | None = None
         self._period_s = 1.0 / station.cadence.tick_hz
         self._assignments = briefing.assignments
         self._clock = VirtualClock(begin_s)
         self._link = DirectLink(build_simulator(station, self._clock), self._clock)
         self._contacts = ContactLog(beam_of(station), self)
-        clearance = clearance_of(station)
-        pilot = Pilot(Facts(flown_mount_of(station), clearance, beam_of(station).tolerance_deg))
-        gate = Gate(safety_limits_of(station, mount_of(station), clearance))
+        self.mount, self.clearance = mount_of(station), clearance_of(station)
+        tolerance_deg = beam_of(station).tolerance_deg
+        pilot = Pilot(Facts(flown_mount_of(station), self.clearance, tolerance_deg))
+        gate = Gate(safety_limits_of(station, self.mount, self.clearance))
         observers: tuple[Observer, ...] = (self._contacts,)
         self._control = ControlTurn(self._clock, self._link, pilot, gate, observers)
         self.results: dict[str, Rehearsed] = {}
@@ -74,7 +78,9 @@ class Rehearsal:
         orders = Orders(self._assignments, Wish.FOLLOW_PLAN)
         end_s = self.end_s
         while True:
-            turn = self._control.run(orders, _calm)
+            turn = self._control.run(orders, self._look_around)
+            if turn.verdict.latch is not None:
+                self._stop(turn.verdict.latch)
             yield turn
             is_home = turn.decision.phase is Phase.STOWED
             if turn.utc_s >= end_s and (is_home or turn.utc_s >= end_s + LONGEST_RETURN_S):
@@ -92,6 +98,17 @@ class Rehearsal:
         if name in self.results:
             score = combined(self.results[name].score, score)
         self.results[name] = Rehearsed(score, flown.last_phase)
+
+    def _look_around(self) -> World:
+        status = self._link.status
+        if status.stop_pressed:
+            self._stop(HARDWARE_STOP)
+        return world_of(self._latched, status, lateness_s=0.0)
+
+    def _stop(self, cause: str) -> None:
+        """Latch, as the daemon does; nobody resets it in a rehearsal."""
+        self._link.emergency_halt()
+        self._latched = self._latched or EmergencyStop(cause, self._clock.utc_s())
 
     def _step_s(self, turn: Turn) -> float:
         """One beat while the mount moves; longer while it rests, but never past a departure."""
@@ -113,7 +130,3 @@ def rehearsal_of(station: Path, plan: Path | None) -> tuple[Briefing, Rehearsal]
     first_s = min((each.from_s for each in contacts), default=0.0)
     briefing = brief(BriefingOrder(station, plan, first_s - LEAD_S))
     return briefing, Rehearsal(briefing, first_s - LEAD_S)
-
-
-def _calm() -> World:
-    return World(emergency=None, is_link_up=True, lateness_s=0.0)
