@@ -11,6 +11,7 @@ from threading import Thread
 from trunnion.service.clock import Clock
 from trunnion.service.control.conversation import Conversation
 from trunnion.service.control.peer import Peer, peer_of
+from trunnion.service.control.spare import SpareDescriptor
 
 _log = logging.getLogger(__name__)
 
@@ -51,6 +52,7 @@ class Lane:
         self._selector.register(listener, selectors.EVENT_READ)
         self._awake, self._alarm = socket.socketpair()
         self._selector.register(self._awake, selectors.EVENT_READ)
+        self._spare = SpareDescriptor()
         self._is_closing = False
         self._thread = Thread(target=self._run, name=name, daemon=True)
         self._thread.start()
@@ -71,6 +73,7 @@ class Lane:
                 self._clock.sleep(_PAUSE_S)
         for connection in tuple(self._connections):
             self._drop(connection)
+        self._spare.give()
         self._selector.close()
         self._awake.close()
         self._alarm.close()
@@ -90,7 +93,7 @@ class Lane:
             return
         except OSError as error:  # out of file descriptors, most likely
             _log.warning("cannot take a connection: %s", error)
-            self._clock.sleep(_PAUSE_S)
+            self._make_room()
             return
         accepted.settimeout(0.0)
         talk = self._converse(peer_of(accepted))
@@ -98,7 +101,19 @@ class Lane:
         self._connections.add(connection)
         self._selector.register(accepted, selectors.EVENT_READ, connection)
         if len(self._connections) > MOST_CONNECTIONS:
-            self._drop(min(self._connections, key=lambda each: each.heard_s))
+            self._drop_the_most_silent()
+
+    def _make_room(self) -> None:
+        """Free a file descriptor, so that whoever waits gets in at the next round."""
+        if self._spare.give():
+            return
+        if self._connections:
+            self._drop_the_most_silent()
+        else:
+            self._clock.sleep(_PAUSE_S)
+
+    def _drop_the_most_silent(self) -> None:
+        self._drop(min(self._connections, key=lambda each: each.heard_s))
 
     def _serve(self, connection: _Connection, events: int) -> None:
         try:
@@ -141,3 +156,5 @@ class Lane:
             self._connections.discard(connection)
             self._selector.unregister(connection.socket)
             connection.socket.close()
+            if not self._connections:
+                self._spare.take()
