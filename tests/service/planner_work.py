@@ -2,6 +2,7 @@
 
 import os
 import time
+from pathlib import Path
 
 
 def double(order: float) -> float:
@@ -19,3 +20,9 @@ def die(order: float) -> float:
 def dawdle(order: float) -> float:
     time.sleep(order)
     return order
+
+
+def sign_and_dawdle(order: str) -> None:
+    """Leave the child's number in a file, and take long."""
+    Path(order).write_text(str(os.getpid()))
+    time.sleep(300.0)

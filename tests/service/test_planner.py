@@ -1,7 +1,10 @@
 """Planning in a child process."""
 
+import subprocess
+import sys
 import time
 from collections.abc import Callable
+from pathlib import Path
 
 import pytest
 
@@ -51,3 +54,37 @@ def test_closing_ends_the_child() -> None:
     planner.close()
     assert not planner.is_busy
     assert planner.collect() is None
+
+
+def test_a_child_does_not_outlive_its_parent(tmp_path: Path) -> None:
+    script = (
+        "import sys, time\n"
+        "from tests.service.planner_work import sign_and_dawdle\n"
+        "from trunnion.service.planner import Planner\n"
+        "if __name__ == '__main__':\n"
+        "    Planner(sign_and_dawdle).ask(sys.argv[1])\n"
+        "    time.sleep(300.0)\n"
+    )
+    signature = tmp_path / "signature"
+    command = [sys.executable, "-c", script, str(signature)]
+    parent = subprocess.Popen(command, cwd=Path(__file__).parents[2])
+    wait_until(lambda: signature.exists() and signature.read_text() != "")
+    child = Path("/proc") / signature.read_text()
+    assert child.exists()
+    parent.kill()
+    parent.wait()
+    wait_until(lambda: has_ended(child))
+
+
+def has_ended(process: Path) -> bool:
+    try:
+        return "State:\tZ" in (process / "status").read_text()
+    except (FileNotFoundError, ProcessLookupError):
+        return True
+
+
+def wait_until(is_so: Callable[[], bool]) -> None:
+    until_s = time.monotonic() + 60.0
+    while not is_so():
+        assert time.monotonic() < until_s
+        time.sleep(0.02)

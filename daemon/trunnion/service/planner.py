@@ -1,14 +1,15 @@
 """Planning in a child process, so that long sums never make a control turn late.
 
 A child is started for each piece of work and ends with it: planning is rare, memory on a small
-computer is not. A child whose parent has been killed fails at its answer and ends as well.
+computer is not. A child whose parent has been killed ends at once: the parent that takes its place
+needs the processor for itself.
 """
 
 import os
 import signal
 from collections.abc import Callable
-from multiprocessing import get_context
-from multiprocessing.connection import Connection
+from multiprocessing import get_context, parent_process
+from multiprocessing.connection import Connection, wait
 from multiprocessing.context import SpawnProcess
 from threading import Lock, Thread
 from typing import Generic, NamedTuple, TypeVar
@@ -84,8 +85,16 @@ class Planner(Generic[WorkOrder, Result]):
 def _work(work: Callable[[WorkOrder], Result], order: WorkOrder, answer: Connection) -> None:
     signal.signal(signal.SIGINT, signal.SIG_IGN)  # the parent is told, and tells us
     os.nice(NICENESS)
+    Thread(target=_end_with_the_parent, name="parent-watch", daemon=True).start()
     try:
         outcome: Outcome[Result] = Outcome(work(order), None)
     except Exception as error:  # noqa: BLE001 - it is told to the parent, whatever it is
         outcome = Outcome(None, error)
     answer.send(outcome)
+
+
+def _end_with_the_parent() -> None:
+    parent = parent_process()
+    if parent is not None:
+        wait([parent.sentinel])
+        os._exit(1)
