@@ -101,9 +101,9 @@ def test_what_never_sets_is_one_pass_and_what_never_rises_none() -> None:
     beacon = FixedDirection(143.7, 26.9)
     assert find_passes(beacon, FROM_S, UNTIL_S, 12.3) == (Pass(None, None, None, 26.9),)
     assert find_passes(beacon, FROM_S, UNTIL_S, 31.2) == ()
-    for each in find_passes(satellite("LANTERN-G"), FROM_S, UNTIL_S, 5.0):
-        assert each.rise_s is None
-        assert each.set_s is None
+    beneath = satellite("LANTERN-G", Site(3.217, 118.9, 14.2))
+    always = only(find_passes(beneath, FROM_S, UNTIL_S, 50.3))
+    assert (always.rise_s, always.set_s) == (None, None)
 
 
 def test_the_sun_rises_culminates_and_sets_once_a_day() -> None:

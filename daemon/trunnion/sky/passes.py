@@ -1,22 +1,23 @@
 """When a target is up: rise, culmination and set over a window of time.
 
 The elevation of anything in orbit has one maximum and one minimum a revolution, many minutes
-apart. So a grid of a minute brackets every maximum by the sign of the elevation's rate; each is
+apart. So a grid of two minutes brackets every maximum by the sign of the elevation's rate; each is
 refined and joins the grid before rise and set are looked for. A pass that reaches the threshold
 for a second only is therefore found like any other.
 """
 
 from collections.abc import Callable
 from dataclasses import dataclass
+from typing import NamedTuple
 
 import numpy as np
 from numpy.typing import NDArray
 
 from trunnion.sky.errors import SkyError
-from trunnion.sky.look import FloatArray, Target
+from trunnion.sky.look import FloatArray, Looks, Target
 from trunnion.sky.roots import changes
 
-GRID_S = 60.0
+GRID_S = 120.0
 LONGEST_WINDOW_S = 366.0 * 86400.0
 MASK_STEP_DEG = 0.25
 """A gap in a horizon mask that a target crosses in a smaller angle than this can be overlooked."""
@@ -55,18 +56,57 @@ def find_passes(
         )
 
     def is_up(utc_s: FloatArray) -> NDArray[np.bool_]:
-        looks = target.looks(utc_s)
-        return _is_above(looks.azimuth_deg, looks.elevation_deg, above)
+        return _is_above(target.looks(utc_s), above)
 
     nodes_s = _nodes(target, from_s, until_s, above)
-    ups = is_up(nodes_s)
+    looks = target.looks(nodes_s)
+    ups = _is_above(looks, above)
     turns = np.flatnonzero(ups[1:] != ups[:-1])
     turns_s = changes(is_up, nodes_s[turns], nodes_s[turns + 1])
-    rises = [None] * bool(ups[0]) + [float(s) for s in turns_s[~ups[turns]]]
-    sets = [float(s) for s in turns_s[ups[turns]]] + [None] * bool(ups[-1])
+    begins_s = np.concatenate((nodes_s[:1][ups[:1]], turns_s[~ups[turns]]))
+    ends_s = np.concatenate((turns_s[ups[turns]], nodes_s[-1:][ups[-1:]]))
+    heights = _Heights(nodes_s, looks.elevation_deg)
+    edges_deg = [target.looks(each).elevation_deg.tolist() for each in (begins_s, ends_s)]
     return tuple(
-        _pass(target, nodes_s, (from_s, until_s), rise_s, set_s)
-        for rise_s, set_s in zip(rises, sets, strict=True)
+        _pass((from_s, until_s), begin, end, heights)
+        for begin, end in zip(
+            zip(begins_s.tolist(), edges_deg[0], strict=True),
+            zip(ends_s.tolist(), edges_deg[1], strict=True),
+            strict=True,
+        )
+    )
+
+
+class _Heights(NamedTuple):
+    """Elevations (deg) at the nodes (s), among which are all maxima."""
+
+    nodes_s: FloatArray
+    elevation_deg: FloatArray
+
+    def highest(self, begin_s: float, end_s: float) -> tuple[float, float] | None:
+        """The highest node strictly between two instants: its instant and elevation."""
+        first = int(np.searchsorted(self.nodes_s, begin_s, side="right"))
+        last = int(np.searchsorted(self.nodes_s, end_s, side="left"))
+        if first >= last:
+            return None
+        place = first + int(np.argmax(self.elevation_deg[first:last]))
+        return float(self.nodes_s[place]), float(self.elevation_deg[place])
+
+
+def _pass(
+    window: tuple[float, float],
+    begin: tuple[float, float],
+    end: tuple[float, float],
+    heights: _Heights,
+) -> Pass:
+    """A pass from its edges, each an instant and its elevation."""
+    top = heights.highest(begin[0], end[0])
+    highest = max((each for each in (begin, end, top) if each), key=lambda each: each[1])
+    return Pass(
+        None if begin[0] == window[0] else begin[0],
+        None if highest[0] in window else highest[0],
+        None if end[0] == window[1] else end[0],
+        highest[1],
     )
 
 
@@ -108,27 +148,7 @@ def _finer_at_mask(
     return np.concatenate([nodes_s[:1], *finer])
 
 
-def _is_above(
-    azimuth_deg: FloatArray, elevation_deg: FloatArray, above: Threshold
-) -> NDArray[np.bool_]:
+def _is_above(looks: Looks, above: Threshold) -> NDArray[np.bool_]:
     if not callable(above):
-        return elevation_deg >= above
-    return elevation_deg >= np.array([above(float(azimuth)) for azimuth in azimuth_deg])
-
-
-def _pass(
-    target: Target,
-    nodes_s: FloatArray,
-    window: tuple[float, float],
-    rise_s: float | None,
-    set_s: float | None,
-) -> Pass:
-    begin_s = window[0] if rise_s is None else rise_s
-    end_s = window[1] if set_s is None else set_s
-    within = nodes_s[(nodes_s > begin_s) & (nodes_s < end_s)]
-    instants_s = np.concatenate(([begin_s], within, [end_s]))
-    elevation_deg = target.looks(instants_s).elevation_deg
-    highest = int(np.argmax(elevation_deg))
-    is_cut = (highest == 0 and rise_s is None) or (highest == len(instants_s) - 1 and set_s is None)
-    culmination_s = None if is_cut else float(instants_s[highest])
-    return Pass(rise_s, culmination_s, set_s, float(elevation_deg[highest]))
+        return looks.elevation_deg >= above
+    return looks.elevation_deg >= np.array([above(each) for each in looks.azimuth_deg.tolist()])

@@ -7,8 +7,8 @@ from numpy.typing import NDArray
 
 from trunnion.sky.look import FloatArray
 
-HALVINGS = 26
-"""Brings a bracket of a minute below a microsecond, which POSIX seconds can hardly tell apart."""
+HALVINGS = 27
+"""Brings a bracket of two minutes to a microsecond, which POSIX seconds can hardly tell apart."""
 
 
 def changes(
