@@ -4,6 +4,8 @@ import select
 import threading
 from collections.abc import Callable
 from enum import Enum
+from heapq import heappop, heappush
+from math import inf
 from typing import NamedTuple, Self, TypeAlias
 
 from trunnion_drivers.bench.endpoint import Endpoint
@@ -19,6 +21,13 @@ class Way(Enum):
 
     IN = "in"
     OUT = "out"
+
+
+class _UnderWay(NamedTuple):
+    due_s: float
+    number: int
+    way: Way
+    data: bytes
 
 
 class Passed(NamedTuple):
@@ -56,6 +65,9 @@ class Bench:
         self._tap = tap
         self._byte_s = _BITS_A_BYTE / baud_rate if baud_rate else 0.0
         self._endpoint: Endpoint | None = plug_in()
+        self._under_way: list[_UnderWay] = []
+        self._free_s = {Way.IN: -inf, Way.OUT: -inf}
+        self._count = 0
         self._lock = threading.Lock()
         self._is_over = threading.Event()
         self._thread = threading.Thread(target=self._run, name="bench", daemon=True)
@@ -95,31 +107,50 @@ class Bench:
 
     def _run(self) -> None:
         while not self._is_over.is_set():
-            endpoint = self._endpoint
+            with self._lock:
+                endpoint = self._endpoint
             if endpoint is None:
+                self._under_way.clear()
                 self._is_over.wait(_WAKE_S)
-            elif self._is_readable(endpoint):
+            else:
+                self._wait(endpoint)
                 with self._lock:
                     if endpoint is self._endpoint:
-                        self._pass_on(endpoint)
+                        self._take_in(endpoint)
+                        self._bring(endpoint)
 
-    def _is_readable(self, endpoint: Endpoint) -> bool:
-        """Wait a moment; also true when it is time to speak unasked."""
+    def _wait(self, endpoint: Endpoint) -> None:
+        """Until something comes, or is due, or it is time to see what the peer says unasked."""
+        due_s = self._under_way[0].due_s if self._under_way else inf
+        wait_s = min(_WAKE_S, max(0.0, due_s - self._clock.monotonic_s()))
         try:
-            select.select([endpoint], [], [], _WAKE_S)
+            select.select([endpoint], [], [], wait_s)
         except (OSError, ValueError):
-            return False
-        return True
+            self._is_over.wait(_WAKE_S)
 
-    def _pass_on(self, endpoint: Endpoint) -> None:
+    def _take_in(self, endpoint: Endpoint) -> None:
+        now_s = self._clock.monotonic_s()
         come = endpoint.receive()
         if come:
-            self._tap(Passed(self._clock.monotonic_s(), Way.IN, come))
-            self._clock.sleep(len(come) * self._byte_s)
-        now_s = self._clock.monotonic_s()
-        said = self._peer.hear(now_s, come) if come else b""
-        said += self._peer.says_unasked(now_s)
-        if said:
-            self._clock.sleep(len(said) * self._byte_s)
-            endpoint.send(said)
-            self._tap(Passed(self._clock.monotonic_s(), Way.OUT, said))
+            self._tap(Passed(now_s, Way.IN, come))
+            self._send_off(now_s, Way.IN, come)
+        self._send_off(now_s, Way.OUT, self._peer.says_unasked(now_s))
+
+    def _bring(self, endpoint: Endpoint) -> None:
+        """Let the peer hear, and the driver receive, what has been on the wire long enough."""
+        while self._under_way and self._under_way[0].due_s <= self._clock.monotonic_s():
+            passed = heappop(self._under_way)
+            now_s = self._clock.monotonic_s()
+            if passed.way is Way.IN:
+                self._send_off(now_s, Way.OUT, self._peer.hear(now_s, passed.data))
+            else:
+                endpoint.send(passed.data)
+                self._tap(Passed(now_s, Way.OUT, passed.data))
+
+    def _send_off(self, now_s: float, way: Way, data: bytes) -> None:
+        """Put bytes on the wire, behind those that go the same way."""
+        if data:
+            begin_s = max(now_s, self._free_s[way])
+            self._free_s[way] = begin_s + len(data) * self._byte_s
+            self._count += 1
+            heappush(self._under_way, _UnderWay(self._free_s[way], self._count, way, data))

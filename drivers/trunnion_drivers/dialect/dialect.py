@@ -85,6 +85,7 @@ class Dialect:
     has_echo: bool
     command: CommandMode
     follows_rate: bool
+    is_text: bool
     end: bytes
 
     def steps(self, verb: Verb) -> tuple[Step, ...]:

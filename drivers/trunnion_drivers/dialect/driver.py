@@ -89,8 +89,12 @@ class DialectDriver(SteeredDriver):
         self._say(utterances(self._dialect, Verb.HALT))
 
     def _halt_at_once(self) -> bool:
-        for utterance in utterances(self._dialect, Verb.HALT):
-            self._port.send(utterance.sent)
+        """Overtake what waits to be sent: of a line, an end makes nonsense; a frame must go out."""
+        stop = b"".join(said.sent for said in utterances(self._dialect, Verb.HALT))
+        if self._dialect.is_text and self._dialect.end:
+            self._port.drop_unsent()
+            stop = self._dialect.end + stop
+        self._port.send(stop)
         return True
 
     def _cut_power(self) -> None:

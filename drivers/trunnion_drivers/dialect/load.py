@@ -10,7 +10,7 @@ from pydantic import ValidationError
 from trunnion_drivers.dialect.checks import contradictions
 from trunnion_drivers.dialect.dialect import Dialect, Flags, Step, Verb
 from trunnion_drivers.dialect.message import Frame, Message
-from trunnion_drivers.dialect.notation import literal
+from trunnion_drivers.dialect.notation import Coding, literal
 from trunnion_drivers.dialect.sections import DialectSection, FlagsSection
 from trunnion_drivers.dialect.yaml_lines import LinedYaml, read_lined_yaml
 from trunnion_drivers.interface.errors import BadSettings, SettingProblem
@@ -69,6 +69,7 @@ class _Compiler:
             has_echo=section.echo,
             command=section.command,
             follows_rate=section.follows_rate,
+            is_text=section.coding is Coding.TEXT,
             end=self._frame.end,
         )
 

@@ -23,6 +23,10 @@ class AnyPort(Protocol):
         """Write the whole message."""
         ...
 
+    def drop_unsent(self) -> None:
+        """Forget what still waits to be sent, where that can be done."""
+        ...
+
     def receive(self, until_s: float) -> bytes:
         """Whatever has come, waiting until this second at most."""
         ...

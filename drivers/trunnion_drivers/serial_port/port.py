@@ -78,6 +78,14 @@ class SerialPort:
         except OSError as error:
             raise self._lost(error) from error
 
+    def drop_unsent(self) -> None:
+        """Forget what still waits to be sent. Raises LinkLost."""
+        port: Any = self._opened
+        try:
+            port.reset_output_buffer()
+        except (OSError, termios.error) as error:
+            raise self._lost(error) from error
+
     def receive(self, until_s: float) -> bytes:
         """Whatever has come, waiting until this second at most; empty when nothing has."""
         try:
@@ -123,7 +131,7 @@ class SerialPort:
             if come or self._clock.monotonic_s() >= until_s:
                 return come
 
-    def _lost(self, error: OSError) -> LinkLost:
+    def _lost(self, error: Exception) -> LinkLost:
         return LinkLost(in_words(self._settings.url, error))
 
 

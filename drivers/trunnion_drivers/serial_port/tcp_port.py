@@ -43,6 +43,9 @@ class TcpPort:
         except OSError as error:
             raise LinkLost(f"{self._url}: the connection broke: {error}") from error
 
+    def drop_unsent(self) -> None:
+        """What was sent cannot be taken back here."""
+
     def receive(self, until_s: float) -> bytes:
         """Whatever has come, waiting until this second at most. Raises LinkLost."""
         connection = self._connected

@@ -25,6 +25,7 @@ class ThreadedLink:
     def __init__(self, driver: Driver, clock: Clock, poll_s: float) -> None:
         self._poll_s = poll_s
         self._outbox = Outbox()
+        self._driver = driver
         self._wire = Wire(driver, clock, self._outbox)
         self._seen_connection = 0
         self._news: SimpleQueue[None] = SimpleQueue()  # may be put to by a signal in mid-put
@@ -51,8 +52,12 @@ class ThreadedLink:
         self._wake()
 
     def emergency_halt(self) -> None:
-        """Halt before anything else, and send nothing but halts until released."""
+        """Halt before anything else, and send nothing but halts until released.
+
+        Where the driver can, the stop overtakes the call that is under way.
+        """
         self._outbox.bar()
+        self._driver.halt_at_once()
         self._wake()
 
     def release(self) -> None:
