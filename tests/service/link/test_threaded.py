@@ -27,6 +27,10 @@ class SlowDriver(ScriptedDriver):
         self.gate.set()
         self.has_begun = threading.Event()
 
+    def _halt_at_once(self) -> bool:
+        self._note("halt at once")
+        return True
+
     def _move(self, motion: DriverMotion) -> None:
         self.has_begun.set()
         self.gate.wait(30.0)
@@ -94,6 +98,27 @@ def test_an_emergency_overtakes_what_waits(driver: SlowDriver, link: ThreadedLin
     assert len(driver.moves) == 1
     link.submit(move(5.5))
     until(lambda: len(driver.moves) == 2)
+
+
+def test_an_emergency_does_not_wait_for_the_call_under_way(
+    driver: SlowDriver, link: ThreadedLink
+) -> None:
+    driver.gate.clear()
+    link.submit(move(1.5))
+    driver.has_begun.wait(30.0)
+    link.emergency_halt()
+    assert driver.calls[-1] == "halt at once"
+    assert driver.moves == []
+
+
+def test_a_driver_that_fails_to_halt_at_once_is_halted_in_turn(
+    driver: SlowDriver, link: ThreadedLink
+) -> None:
+    driver.fail("halt at once", ZeroDivisionError())
+    before = driver.calls.count("halt")
+    link.emergency_halt()
+    until(lambda: driver.calls.count("halt") > before)
+    assert link.status.state is LinkState.UP
 
 
 def test_an_emergency_from_many_threads_at_once_is_one(

@@ -25,7 +25,6 @@ class ThreadedLink:
     def __init__(self, driver: Driver, clock: Clock, poll_s: float) -> None:
         self._poll_s = poll_s
         self._outbox = Outbox()
-        self._driver = driver
         self._wire = Wire(driver, clock, self._outbox)
         self._seen_connection = 0
         self._news: SimpleQueue[None] = SimpleQueue()  # may be put to by a signal in mid-put
@@ -57,8 +56,8 @@ class ThreadedLink:
         Where the driver can, the stop overtakes the call that is under way.
         """
         self._outbox.bar()
-        self._driver.halt_at_once()
         self._wake()
+        self._wire.halt_at_once()
 
     def release(self) -> None:
         """Let motion pass again; sends nothing, and nothing submitted before counts."""

@@ -1,6 +1,7 @@
 """The driver as both links use it: it never raises, and it comes back by itself."""
 
 from collections.abc import Callable
+from contextlib import suppress
 from typing import NamedTuple, TypeVar
 
 from trunnion.mount.joints import Reading
@@ -31,7 +32,7 @@ class Sighting(NamedTuple):
 
 
 class Wire:
-    """One driver, opened and reopened, used by one thread at a time."""
+    """One driver, opened and reopened; but for `halt_at_once`, used by one thread at a time."""
 
     def __init__(self, driver: Driver, clock: Clock, outbox: Outbox) -> None:
         self._driver = driver
@@ -52,6 +53,14 @@ class Wire:
             self._order(lambda: self._driver.move(motion))
         elif order is not None:
             self._order(self._driver.halt)
+
+    def halt_at_once(self) -> None:
+        """Send a halt past the call that is under way, where the driver can; from any thread.
+
+        The halt that the outbox demands follows it in any case.
+        """
+        with suppress(Exception):  # other people's drivers: whoever stops must not stumble
+            self._driver.halt_at_once()
 
     def look(self) -> None:
         """Read where the mount is."""
