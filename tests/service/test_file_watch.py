@@ -29,3 +29,11 @@ def test_a_new_size_a_new_time_and_a_new_file_are_noticed(tmp_path: Path) -> Non
 
 def test_a_folder_that_vanishes_in_between_is_nothing_to_stumble_over(tmp_path: Path) -> None:
     assert signature_of((tmp_path / "gone",))[0][1:] == (0, 0)
+
+
+def test_a_folder_that_cannot_be_read_does_not_end_the_watch(tmp_path: Path) -> None:
+    class Unreadable(type(tmp_path)):  # type: ignore[misc]
+        def iterdir(self) -> None:
+            raise PermissionError
+
+    assert len(signature_of((Unreadable(tmp_path),))) == 1

@@ -44,10 +44,14 @@ class FileWatch:
 
 def signature_of(paths: Iterable[Path]) -> Signature:
     """Name, time of change and size of all files, those in folders included."""
-    files = [
-        file for path in paths for file in (sorted(path.iterdir()) if path.is_dir() else [path])
-    ]
-    return tuple(_stamp(file) for file in files)
+    return tuple(_stamp(file) for path in paths for file in _files(path))
+
+
+def _files(path: Path) -> list[Path]:
+    try:
+        return sorted(path.iterdir()) if path.is_dir() else [path]
+    except OSError:  # not permitted, or gone since
+        return [path]
 
 
 def _stamp(file: Path) -> tuple[str, int, int]:
