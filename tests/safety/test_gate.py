@@ -11,6 +11,7 @@ from tests.mount.mounts import MOUNT
 from tests.safety.bench_mount import CALM, LIMITS, Bench, rules
 from trunnion.mount.joints import Joints, Motion, Reading
 from trunnion.mount.motion import approach
+from trunnion.mount.mount import JointBox
 from trunnion.safety.emergency import EmergencyStop
 from trunnion.safety.gate import Gate
 from trunnion.safety.places import find_at, find_on_the_way, stopping_place
@@ -233,3 +234,21 @@ def test_an_intervention_says_what_was_found_what_is_done_and_until_when() -> No
         "the control turn came 0.73 s late, 0.5 s are allowed (control turn late): "
         "halted until the turns come in time"
     )
+
+
+def test_joint_angles_that_are_forbidden_are_kept_out_of() -> None:
+    strut = JointBox("the strut", 199.1, 204.3, 55.1, 61.7)
+    limits = replace(LIMITS, mount=replace(MOUNT, forbidden=(strut,)))
+    found = find_at(Joints(201.7, 58.3), limits)
+    assert found is not None
+    assert (found.rule, "the strut" in found.finding) == (Rule.KEEP_OUT, True)
+    assert find_at(Joints(201.7, 61.8), limits) is None
+
+
+def test_a_mount_that_runs_ahead_of_its_orders_is_braked_for_its_own_speed() -> None:
+    """The orders alone would stop in time; the readings show that the mount will not."""
+    bench = Bench(place=Joints(201.7, 9.4))
+    bench.turn(Motion(201.7, 9.4))
+    bench.place = Joints(201.7, 9.0)
+    verdict = bench.turn(Motion(201.7, 9.39, 0.0, -0.1))
+    assert Rule.STOPPING in rules(verdict)

@@ -1,6 +1,6 @@
 """Where in the sky the boresight may be: above the floor and the horizon, outside the keep-outs."""
 
-from dataclasses import dataclass
+from dataclasses import dataclass, field
 
 from trunnion.mount.horizon import HorizonMask
 
@@ -28,11 +28,21 @@ class Sector:
 
 @dataclass(frozen=True, slots=True)
 class Clearance:
-    """Elevation floor (deg), horizon mask if there is one, keep-out sectors."""
+    """Elevation floor (deg), horizon mask if there is one, keep-out sectors.
+
+    Above `free_above_deg` nothing stands in any direction.
+    """
 
     floor_deg: float
     mask: HorizonMask | None
     keep_outs: tuple[Sector, ...] = ()
+    free_above_deg: float = field(init=False, repr=False, compare=False)
+
+    def __post_init__(self) -> None:
+        masked_deg = [elevation_deg for _, elevation_deg in self.mask.points] if self.mask else []
+        kept_out_deg = [sector.upper_elevation_deg for sector in self.keep_outs]
+        highest_deg = max(self.floor_deg, *masked_deg, *kept_out_deg, -90.0)
+        object.__setattr__(self, "free_above_deg", highest_deg)
 
     def lowest_deg(self, azimuth_deg: float) -> float:
         """Lowest elevation that floor and mask allow in this direction."""

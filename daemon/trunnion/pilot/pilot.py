@@ -76,19 +76,19 @@ class Pilot:
 
     def decide(self, now: Situation) -> Decision:
         """The demand of this turn, and how the contact that is on fares whatever is being done."""
-        decision = self._decide(now, self._elapsed_s(now.mono_s))
         scheduled = _scheduled(now)
+        decision = self._decide(now, scheduled, self._elapsed_s(now.mono_s))
         if decision.look is not None or scheduled is None or scheduled.begin_s > now.utc_s:
             return decision
         return self._with_contact(decision, scheduled, now)
 
-    def _decide(self, now: Situation, dt_s: float) -> Decision:
+    def _decide(self, now: Situation, scheduled: Assignment | None, dt_s: float) -> Decision:
         if now.reading is None or now.is_stopped:
             self._take_up(_Errand(_Kind.HOLD))
             return Decision(Phase.HALTED if now.is_stopped else Phase.STARTING, None)
         base = now.ordered or Motion(*now.reading.joints)
         try:
-            self._take_up(self._choose(now, base))
+            self._take_up(self._choose(now, scheduled, base))
             if self._blocked is not None and self._blocked.holds(self._errand, now.mono_s):
                 return self._blocked.decision()
             return self._fly(now, base, dt_s, now.reading)
@@ -109,12 +109,11 @@ class Pilot:
 
     # -- what to do -----------------------------------------------------------------------------
 
-    def _choose(self, now: Situation, base: Motion) -> _Errand:
+    def _choose(self, now: Situation, upcoming: Assignment | None, base: Motion) -> _Errand:
         if now.must_stow or now.wish is Wish.STOW:
             return _Errand(_Kind.STOW)
         if now.wish is Wish.HOLD:
             return _Errand(_Kind.HOLD)
-        upcoming = _scheduled(now)
         if upcoming is None:
             self._departure = None
             return _Errand(_Kind.STOW)

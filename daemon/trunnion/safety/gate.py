@@ -6,6 +6,8 @@ keep-outs at its end, on the way there from where the mount says it is, and with
 distance behind it.
 """
 
+from math import isfinite
+
 from trunnion.mount.joints import Motion, Reading
 from trunnion.mount.motion import approach
 from trunnion.safety.hazard import Hazard
@@ -19,6 +21,9 @@ from trunnion.safety.world import World
 
 LONGEST_STEP_S = 0.25
 """After a late turn an order moves on as if this little time had passed, not by a leap."""
+
+NOTICEABLE_DEG_S = 0.1
+"""Less than this a measured rate may differ from the ordered one by the encoder's noise alone."""
 
 _BLIND = frozenset(
     {Rule.NO_READING, Rule.READING_OLD, Rule.READING_IMPOSSIBLE, Rule.READING_JUMPED}
@@ -59,7 +64,7 @@ class Gate:
         self, demand: Motion, reading: Reading, dt_s: float, *, may_recover: bool
     ) -> tuple[Motion | None, list[Hazard]]:
         """The motion nearest to the demand that may leave, if any, and what kept it from more."""
-        if not all(abs(value) < float("inf") for value in demand):
+        if not isfinite(sum(demand)):
             return None, [Hazard(Rule.NOT_FINITE, f"asked for {demand}")]
         outside = find_at(reading.joints, self._limits, self._limits.encoder_error_deg)
         if outside is not None:
@@ -69,7 +74,9 @@ class Gate:
         found = (
             [] if motion == demand else [Hazard(Rule.RATE, "asked for more than a joint can do")]
         )
-        forbidden = find_at(demand.joints, self._limits) or self._find_before(motion, reading)
+        forbidden = self._find_before(motion, reading)
+        if forbidden is None and motion != demand:
+            forbidden = find_at(demand.joints, self._limits)
         if forbidden is not None:
             return None, [*found, forbidden]
         beyond = self._find_beyond(motion)
@@ -89,9 +96,9 @@ class Gate:
         From the order's own rate, and from the rate that the readings show: a mount that runs ahead
         of its orders, or after them, needs its own room.
         """
-        measured = self._watch.measured()
         beyond = find_at(stopping_place(motion, self._limits), self._limits)
-        if beyond is not None or measured is None:
+        measured = self._watch.measured()
+        if beyond is not None or measured is None or not _is_faster(measured, motion):
             return beyond
         place = stopping_place(measured, self._limits)
         return find_at(place, self._limits, self._limits.encoder_error_deg)
@@ -131,6 +138,9 @@ class Gate:
         return will_elevation >= was_elevation
 
     def _verdict(self, motion: Motion | None, hazards: list[Hazard]) -> Verdict:
+        if not hazards:
+            self._ordered = motion
+            return Verdict(Halt() if motion is None else Move(motion))
         policies = [POLICY[hazard.rule] for hazard in hazards]
         worst = max((policy.action for policy in policies), default=Action.SLOW)
         order = Halt() if motion is None or worst >= Action.HALT else Move(motion)
@@ -142,6 +152,14 @@ class Gate:
             wants_stow=any(policy.action is Action.STOW for policy in policies),
             latch=latching[0].finding if latching else None,
         )
+
+
+def _is_faster(measured: Motion, ordered: Motion) -> bool:
+    """Whether a joint moves noticeably faster than it was told to, and so needs more room."""
+    return (
+        abs(measured.first_rate_deg_s) > abs(ordered.first_rate_deg_s) + NOTICEABLE_DEG_S
+        or abs(measured.second_rate_deg_s) > abs(ordered.second_rate_deg_s) + NOTICEABLE_DEG_S
+    )
 
 
 _DONE = {

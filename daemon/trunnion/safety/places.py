@@ -5,6 +5,7 @@ from math import ceil
 
 from trunnion.mount.joints import Joints, Motion
 from trunnion.mount.motion import stopping_distance_deg
+from trunnion.mount.mount import JointLimits
 from trunnion.safety.hazard import Hazard
 from trunnion.safety.limits import SafetyLimits
 from trunnion.safety.verdict import Rule
@@ -19,14 +20,21 @@ def find_at(
     place: Joints, limits: SafetyLimits, allowance_deg: float = ROUNDING_DEG
 ) -> Hazard | None:
     """What forbids this place, if anything; `allowance_deg` forgives that much below or outside."""
-    for name, angle_deg, joint in (
-        ("first", place.first_deg, limits.mount.first),
-        ("second", place.second_deg, limits.mount.second),
-    ):
-        if not joint.lower_deg - allowance_deg <= angle_deg <= joint.upper_deg + allowance_deg:
-            travel = f"{joint.lower_deg:g}…{joint.upper_deg:g}°"
-            return Hazard(Rule.TRAVEL, f"{name} joint at {angle_deg:.2f}°, its travel is {travel}")
-    return _find_in_sky(*limits.mount.hinges.boresight(place), limits, allowance_deg)
+    mount = limits.mount
+    first_deg, second_deg = place
+    first, second = mount.first, mount.second
+    if not first.lower_deg - allowance_deg <= first_deg <= first.upper_deg + allowance_deg:
+        return _off_travel("first", first_deg, first)
+    if not second.lower_deg - allowance_deg <= second_deg <= second.upper_deg + allowance_deg:
+        return _off_travel("second", second_deg, second)
+    for box in mount.forbidden:
+        if box.meets(place, place):
+            finding = f"joints at {first_deg:.1f}°/{second_deg:.1f}° are in {box.name}"
+            return Hazard(Rule.KEEP_OUT, finding)
+    azimuth_deg, elevation_deg = mount.hinges.boresight(place)
+    if elevation_deg > limits.clearance.free_above_deg:
+        return None
+    return _find_in_sky(azimuth_deg, elevation_deg, limits, allowance_deg)
 
 
 def find_on_the_way(begin: Joints, end: Joints, limits: SafetyLimits) -> Hazard | None:
@@ -47,6 +55,11 @@ def stopping_place(motion: Motion, limits: SafetyLimits) -> Joints:
         motion.first_deg + (first_deg if motion.first_rate_deg_s > 0.0 else -first_deg),
         motion.second_deg + (second_deg if motion.second_rate_deg_s > 0.0 else -second_deg),
     )
+
+
+def _off_travel(name: str, angle_deg: float, joint: JointLimits) -> Hazard:
+    travel = f"{joint.lower_deg:g}…{joint.upper_deg:g}°"
+    return Hazard(Rule.TRAVEL, f"{name} joint at {angle_deg:.2f}°, its travel is {travel}")
 
 
 def _find_in_sky(
