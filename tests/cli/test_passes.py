@@ -92,6 +92,8 @@ def test_a_draft_overwrites_nothing(tmp_path: Path) -> None:
     [
         (("--from", "2026-12-02T00:00:00Z", "--until", "2026-12-01T00:00:00Z"), "--until after"),
         ((*DAY, "--above", "90.5"), "90.5"),
+        ((*DAY, "--above", "nan"), "expected --above of -90 to 90"),
+        (("--from", DAY[1], "--until", "2027-12-02T00:00:01Z"), "at most a year"),
         (("--from", "2026-12-01T00:00:00Z"), "--until"),
     ],
 )

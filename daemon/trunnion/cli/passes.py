@@ -12,6 +12,8 @@ from trunnion.sky.instants import format_utc
 if TYPE_CHECKING:
     from trunnion.sky.passes import Pass
 
+_LONGEST_WINDOW_S = 366 * 86400.0
+
 
 def passes(
     station: Station,
@@ -64,6 +66,8 @@ def passes(
 def _must_make_sense(from_s: float, until_s: float, above_deg: float | None) -> None:
     if until_s <= from_s:
         raise typer.BadParameter("expected --until after --from")
+    if until_s - from_s > _LONGEST_WINDOW_S:
+        raise typer.BadParameter("expected at most a year (366 days) between --from and --until")
     if above_deg is not None and not -90 <= above_deg <= 90:
         raise typer.BadParameter(f"expected --above of -90 to 90, got {above_deg:g}")
 
