@@ -116,6 +116,11 @@ def test_a_file_with_one_set_serves_on_the_command_line(
         book_of(station).resolve(str(one))
 
 
+def test_a_file_that_is_not_there_is_told_as_one(station: StationFile) -> None:
+    with pytest.raises(FileProblems, match=r"gone\.tle: no such file"):
+        book_of(station).resolve_or_read("gone.tle")
+
+
 def test_all_problems_of_all_element_files_come_at_once(
     station: StationFile, tmp_path: Path
 ) -> None:

@@ -4,7 +4,7 @@ from collections.abc import Iterable, Sequence
 from functools import cached_property
 from pathlib import Path
 
-from trunnion.files.elements import load_elements
+from trunnion.files.elements import SUFFIXES, load_elements
 from trunnion.files.problems import FileProblems, Problem, did_you_mean
 from trunnion.files.station import StationFile
 from trunnion.files.target_text import SUN, fixed_direction, is_builtin, is_sun
@@ -48,7 +48,7 @@ class TargetBook:
 
     def resolve_or_read(self, text: str) -> Target:
         """Find what a command line means: a target as above, or a file with one set of elements."""
-        if self.means_file(text):
+        if self.means_file(text) or Path(text).suffix.lower() in SUFFIXES:
             return Satellite(_newest(load_elements(Path(text)), text), self._viewpoint)
         return self.resolve(text)
 
