@@ -8,7 +8,6 @@ import subprocess
 import sys
 import time
 from pathlib import Path
-from statistics import median
 from tempfile import TemporaryDirectory
 
 from tests.bench.row import Row
@@ -30,31 +29,32 @@ BARE = (
     "told.sendto(b'READY=1', os.environ['NOTIFY_SOCKET'])\n"
     "sys.stdin.read()\n"
 )
-ROUNDS = 9
+ROUNDS = 12
 SETTLING_S = 3.0
 LONGEST_S = 60.0
 LARGEST_MIB = 90.0
 
 
 def rows() -> list[Row]:
-    """Start both in turn, several times."""
+    """Start both in turn, several times; the quickest start of each is the least disturbed one."""
     with TemporaryDirectory() as folder:
         station = example(Path(folder))
-        packages = third_party_of(station)
+        cache = Path(folder) / "bytecode"
+        packages = third_party_of(station, cache)
         ours_s, bare_s, ours_mib = list[float](), list[float](), list[float]()
         for _ in range(ROUNDS):
-            with Started([RUN, "run", str(station)]) as ours:
+            with Started([RUN, "run", str(station)], cache) as ours:
                 ours_s.append(ours.ready_s)
                 time.sleep(SETTLING_S if not ours_mib else 0.0)
                 ours_mib.append(ours.resident_mib())
-            with Started([BARE, *packages]) as bare:
+            with Started([BARE, *packages], cache) as bare:
                 bare_s.append(bare.ready_s)
     return [
         Row(
             f"run: exec to ready, {len(packages)} modules of other packages",
-            f"{1e3 * median(ours_s):.0f} ms",
-            f"{1e3 * median(bare_s):.0f} ms",
-            median(ours_s) / median(bare_s),
+            f"{1e3 * min(ours_s):.0f} ms",
+            f"{1e3 * min(bare_s):.0f} ms",
+            min(ours_s) / min(bare_s),
             1.8,
             is_at_least=False,
         ),
@@ -72,7 +72,7 @@ def rows() -> list[Row]:
 class Started:
     """A Python process that has said that it is ready; told to end when left."""
 
-    def __init__(self, arguments: list[str]) -> None:
+    def __init__(self, arguments: list[str], cache: Path) -> None:
         with (
             TemporaryDirectory() as folder,
             socket.socket(socket.AF_UNIX, socket.SOCK_DGRAM) as ear,
@@ -82,7 +82,7 @@ class Started:
             begin_s = time.perf_counter()
             self._process = subprocess.Popen(
                 [sys.executable, "-c", *arguments],
-                env=os.environ | {"NOTIFY_SOCKET": f"{folder}/notify"},
+                env=os.environ | installed(cache) | {"NOTIFY_SOCKET": f"{folder}/notify"},
                 stdin=subprocess.PIPE,
                 stderr=subprocess.PIPE,
             )
@@ -117,8 +117,13 @@ def example(folder: Path) -> Path:
     return folder / "station.yaml"
 
 
-def third_party_of(station: Path) -> list[str]:
+def installed(cache: Path) -> dict[str, str]:
+    """Both sides find their bytecode compiled, as an installer leaves it."""
+    return {"PYTHONDONTWRITEBYTECODE": "", "PYTHONPYCACHEPREFIX": str(cache)}
+
+
+def third_party_of(station: Path, cache: Path) -> list[str]:
     """The modules of other packages that the daemon imports until it is ready, in order."""
-    with Started([TELLING + RUN, "run", str(station)]) as telling:
+    with Started([TELLING + RUN, "run", str(station)], cache) as telling:
         names = telling.end().splitlines()[-1].split()
     return [name for name in names if not name.startswith("trunnion")]
