@@ -2,6 +2,8 @@
 
 from pydantic import BaseModel, ConfigDict
 
+from trunnion.files.descriptions import describe
+
 
 class Section(BaseModel):
     """One mapping of a YAML file as a value.
@@ -12,9 +14,10 @@ class Section(BaseModel):
 
     model_config = ConfigDict(
         allow_inf_nan=False,
+        defer_build=True,
         extra="forbid",
         frozen=True,
+        json_schema_extra=describe,
         strict=True,
-        use_attribute_docstrings=True,
         validate_default=True,
     )
