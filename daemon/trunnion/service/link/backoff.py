@@ -1,7 +1,7 @@
 """How long to wait before the next attempt to open: longer each time, within bounds."""
 
 FIRST_PAUSE_S = 0.1
-LONGEST_PAUSE_S = 5.0
+LONGEST_PAUSE_S = 1.5
 
 
 class Backoff:
