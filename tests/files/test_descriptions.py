@@ -31,10 +31,15 @@ def test_every_key_of_both_files_is_described() -> None:
     for model in (StationFile, PlanFile):
         schema = model.model_json_schema()
         for section in (schema, *schema["$defs"].values()):
-            missing = [key for key, told in keys_of(section).items() if "description" not in told]
-            assert missing == []
+            for key, told in keys_of(section).items():
+                assert "description" in told or is_a_section(told), key
 
 
 def keys_of(section: dict[str, Any]) -> dict[str, Any]:
     properties: dict[str, Any] = section.get("properties", {})
     return properties
+
+
+def is_a_section(told: dict[str, Any]) -> bool:
+    """A section is described where it is defined."""
+    return "$ref" in told or "$ref" in told.get("items", {})
