@@ -15,12 +15,14 @@ import pytest
 from skyfield.api import Loader, wgs84
 from skyfield_data import get_skyfield_data_path
 
+from trunnion.sky.bodies import Body, SeriesBody
+from trunnion.sky.course import course_at
 from trunnion.sky.earth import EarthOrientation
 from trunnion.sky.instants import julian_date, parse_utc
 from trunnion.sky.leap_seconds import LeapSeconds
+from trunnion.sky.place import AU_KM
 from trunnion.sky.refraction import NoRefraction
 from trunnion.sky.site import Site
-from trunnion.sky.solar import AU_KM, sun_at
 from trunnion.sky.sun import Sun
 from trunnion.sky.viewpoint import Viewpoint
 
@@ -69,7 +71,7 @@ def test_skyfield_and_its_ephemeris_agree(place: tuple[float, float, float], ins
 def test_right_ascension_and_declination_of_a_textbook_example() -> None:
     """1992-10-13 0h TD: 13h13m30.7526s, −7°47′01.721″ by ERFA; the book's 30.749 s, 01.74″."""
     tt_days = 2448908.5 - 2451545.0
-    (x, y, z), _ = sun_at(tt_days, is_apparent=True)
+    (x, y, z), _ = course_at(SeriesBody(Body.SUN), tt_days, is_apparent=True)
     right_ascension = np.arctan2(y, x) - erfa.eo06a(2448908.5, 0.0)
     assert np.degrees(right_ascension) % 360.0 == pytest.approx(
         15.0 * (13 + 13 / 60 + 30.7526 / 3600), abs=0.01 / 3600
@@ -82,7 +84,7 @@ def test_right_ascension_and_declination_of_a_textbook_example() -> None:
 def test_the_curve_between_noon_and_midnight_keeps_to_the_theory() -> None:
     """0.01″ is asked; the geometric direction by ERFA at crooked instants."""
     for tt_days in (-2345.6789, 1234.0987, 9876.26):
-        position_km, _ = sun_at(tt_days, is_apparent=False)
+        position_km, _ = course_at(SeriesBody(Body.SUN), tt_days, is_apparent=False)
         heliocentric, _ = erfa.epv00(2451545.0, tt_days)
         theory_km = -AU_KM * erfa.c2i06a(2451545.0, tt_days) @ heliocentric["p"]
         apart = np.linalg.norm(position_km - theory_km) / AU_KM
