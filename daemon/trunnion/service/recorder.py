@@ -1,12 +1,13 @@
 """What of the turns goes on record: samples, contacts, and every change worth a sentence."""
 
 import logging
+from collections.abc import Mapping
+from typing import Protocol
 
 from trunnion.pilot.phase import Phase
 from trunnion.safety.verdict import Intervention, Move, Rule
 from trunnion.service.contact_log import Flown, contact_on
-from trunnion.service.records.values import ContactStart, EventKind, Sample
-from trunnion.service.records.writer import RecordWriter
+from trunnion.service.records.values import ContactStart, EventKind, Outcome, Sample
 from trunnion.service.score import Score
 from trunnion.service.turn import Turn
 from trunnion.track.path import Assignment
@@ -14,10 +15,30 @@ from trunnion.track.path import Assignment
 _log = logging.getLogger(__name__)
 
 
+class Book(Protocol):
+    """The part of the records' writer that is needed here; no method blocks or raises."""
+
+    def begin_contact(self, start: ContactStart) -> None:
+        """A contact begins."""
+        ...
+
+    def sample(self, sample: Sample) -> None:
+        """One control turn of the contact under way."""
+        ...
+
+    def end_contact(self, utc_s: float, outcome: Outcome, summary: Mapping[str, object]) -> None:
+        """The contact under way ends."""
+        ...
+
+    def event(self, utc_s: float, kind: EventKind, sentence: str) -> None:
+        """Something happened that is worth a sentence."""
+        ...
+
+
 class Recorder:
     """Observes the turns, and listens to the contacts in them."""
 
-    def __init__(self, records: RecordWriter) -> None:
+    def __init__(self, records: Book) -> None:
         self._records = records
         self._phase: Phase | None = None
         self._trouble: str | None = None

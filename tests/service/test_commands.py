@@ -1,0 +1,100 @@
+"""What the daemon does when asked by the control socket."""
+
+from dataclasses import dataclass, field
+from pathlib import Path
+
+import pytest
+
+from tests.service.test_emergency_desk import Log, desk_of
+from trunnion.pilot.phase import Wish
+from trunnion.service.commands import Commands, StopInForce, Surroundings
+from trunnion.service.emergency_desk import EmergencyDesk, StopNotLifted
+from trunnion.service.link.status import LinkStatus
+from trunnion.service.records.values import EventKind
+from trunnion.service.standing_wish import StandingWish
+
+
+@dataclass
+class Around:
+    """The rest of the daemon."""
+
+    link: LinkStatus = field(default_factory=LinkStatus)
+    reloads: int = 0
+    events: list[tuple[EventKind, str]] = field(default_factory=list)
+
+    def reload(self) -> None:
+        self.reloads += 1
+
+    def surroundings(self) -> Surroundings:
+        return Surroundings(
+            lambda: {"phase": "tracking"},
+            self.reload,
+            lambda: self.link,
+            lambda kind, sentence: self.events.append((kind, sentence)),
+        )
+
+
+@dataclass
+class Rig:
+    wish: StandingWish
+    desk: EmergencyDesk
+    around: Around
+
+    def ask(self, command: str) -> dict[str, object]:
+        handlers = Commands(self.wish, self.desk, self.around.surroundings()).handlers()
+        return dict(handlers[command]({}))
+
+
+@pytest.fixture
+def rig(tmp_path: Path) -> Rig:
+    return Rig(StandingWish(tmp_path / "wish"), desk_of(Log()), Around())
+
+
+@pytest.mark.parametrize(
+    ("command", "wish"),
+    [("resume", Wish.FOLLOW_PLAN), ("stow", Wish.STOW), ("hold", Wish.HOLD)],
+)
+def test_a_wish_is_taken_up_and_put_on_record(rig: Rig, command: str, wish: Wish) -> None:
+    assert rig.ask(command) == {"wish": wish.value, "trouble": None}
+    assert rig.wish.wish is wish
+    assert rig.around.events == [(EventKind.REQUEST, f"told to {wish.value}")]
+
+
+@pytest.mark.parametrize("command", ["resume", "stow", "hold"])
+def test_while_stopped_nothing_that_could_move_the_mount_is_taken_on(
+    rig: Rig, command: str
+) -> None:
+    rig.desk.stop("the cow")
+    with pytest.raises(StopInForce, match="the cow"):
+        rig.ask(command)
+    assert rig.wish.wish is Wish.FOLLOW_PLAN
+
+
+def test_a_reset_lifts_the_stop_and_leaves_the_wish_at_hold(rig: Rig) -> None:
+    rig.desk.stop("the cow")
+    assert rig.ask("reset") == {"wish": "hold", "trouble": None}
+    assert rig.desk.latched is None
+    assert rig.wish.wish is Wish.HOLD
+
+
+@pytest.mark.parametrize(
+    ("link", "sentence"),
+    [
+        (LinkStatus(stop_pressed=True), "hardware stop input is pressed"),
+        (LinkStatus(fault="drive 2 too hot"), "drive 2 too hot"),
+    ],
+)
+def test_a_reset_is_refused_while_the_cause_is_there(
+    rig: Rig, link: LinkStatus, sentence: str
+) -> None:
+    rig.desk.stop("the cow")
+    rig.around.link = link
+    with pytest.raises(StopNotLifted, match=sentence):
+        rig.ask("reset")
+    assert rig.desk.latched is not None
+
+
+def test_status_and_reload_are_passed_on(rig: Rig) -> None:
+    assert rig.ask("status") == {"phase": "tracking"}
+    rig.ask("reload")
+    assert rig.around.reloads == 1
