@@ -21,7 +21,8 @@ def test_a_contact_begins_with_its_first_turn_and_ends_with_its_time() -> None:
     for since_s in (9.9, 10.3, 40.1, 69.9, 70.1):
         log.note(turn_at(since_s, 0.1))
     ((begun_s, name),) = listener.begun
-    assert (begun_s, name) == (pytest.approx(10.3), "evening")
+    assert begun_s == pytest.approx(10.3)
+    assert name == "evening"
     (flown,) = listener.ended
     assert flown.outcome is Outcome.DONE
     assert flown.end_utc_s == ASSIGNMENT.end_s
