@@ -95,6 +95,13 @@ class Lane:
             _log.warning("cannot take a connection: %s", error)
             self._make_room()
             return
+        try:
+            self._begin(accepted)
+        except Exception:
+            accepted.close()
+            raise
+
+    def _begin(self, accepted: socket.socket) -> None:
         accepted.settimeout(0.0)
         talk = self._converse(peer_of(accepted))
         connection = _Connection(accepted, talk, self._clock.monotonic_s())
