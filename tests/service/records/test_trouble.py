@@ -11,7 +11,6 @@ import pytest
 from tests.service.records.story import UTC_S, sample, start
 from trunnion.service.clock import VirtualClock
 from trunnion.service.records.queries import Records
-from trunnion.service.records.store import RecordStore, Retention
 from trunnion.service.records.values import EventKind, Outcome
 from trunnion.service.records.writer import RecordWriter
 
@@ -129,37 +128,3 @@ def test_a_full_disk_costs_samples_is_said_and_is_got_over(path: Path) -> None:
         assert contact.samples + int(lost) == 20_000
         assert 0 < contact.samples < 20_000
         assert [each.sentence for each in records.events()] == ["while the disk was full"]
-
-
-def test_what_is_older_than_it_may_be_goes_a_little_at_a_time(path: Path) -> None:
-    store = RecordStore(path)
-    for day in range(5):
-        utc_s = UTC_S + 86_400.0 * day
-        store.write([start(f"A-{day}", utc_s), sample(0, utc_s)])
-    retention = Retention(longest_days=2.5)
-    for _ in range(5):
-        store.forget(retention, UTC_S + 4 * 86_400.0)
-    store.close()
-    with Records(path) as records:
-        assert [each.contact for each in records.contacts()] == ["A-4", "A-3", "A-2"]
-        assert [each.samples for each in records.contacts()] == [1, 1, 1]
-
-
-def test_the_file_does_not_outgrow_its_size_and_summaries_stay(path: Path) -> None:
-    store = RecordStore(path)
-    largest_bytes = 3_000_000
-    retention = Retention(largest_bytes=largest_bytes)
-    sizes = []
-    for contact in range(12):
-        store.write([start(f"A-{contact}", UTC_S + 700.0 * contact)])
-        for _ in range(4):
-            store.write([sample(turn) for turn in range(1000)])
-            store.forget(retention, UTC_S)
-        sizes.append(path.stat().st_size)
-    store.close()
-    assert max(sizes) < 2 * largest_bytes
-    with Records(path) as records:
-        contacts = records.contacts()
-        assert len(contacts) == 12
-        assert contacts[0].samples == 4000
-        assert contacts[-1].samples == 0

@@ -3,10 +3,10 @@
 import json
 import sqlite3
 from collections.abc import Iterable, Mapping
-from dataclasses import dataclass
 from pathlib import Path
 
 from trunnion.service.records.presence import Presence
+from trunnion.service.records.retention import Retention, forget_some
 from trunnion.service.records.schema import SAMPLE_COLUMNS, prepare
 from trunnion.service.records.values import (
     ContactEnd,
@@ -24,21 +24,6 @@ _PRAGMAS = (
     f"PRAGMA journal_size_limit = {4 * 1024 * 1024}",
 )
 _BUSY_S = 2.0
-_SAMPLES_A_TURN = 10_000
-_EVENTS_A_TURN = 1_000
-_DAY_S = 86_400.0
-
-
-@dataclass(frozen=True, slots=True)
-class Retention:
-    """How much is kept: contacts and events of so many days, and a file of about so many bytes.
-
-    Beyond the size, the oldest samples go; the summaries of their contacts stay. The file keeps the
-    room that it has had once, and uses it again.
-    """
-
-    longest_days: float | None = None
-    largest_bytes: int = 512 * 1024 * 1024
 
 
 class RecordStore:
@@ -75,10 +60,7 @@ class RecordStore:
 
     def forget(self, retention: Retention, now_utc_s: float) -> None:
         """Remove a little of what is beyond the retention; to be called again and again."""
-        if retention.longest_days is not None:
-            self._forget_older(now_utc_s - retention.longest_days * _DAY_S)
-        if self._used_bytes() > retention.largest_bytes:
-            self._forget_oldest()
+        forget_some(self._connection, retention, now_utc_s)
 
     def close(self) -> None:
         """Let go of the file."""
@@ -128,36 +110,6 @@ class RecordStore:
             " (SELECT max(utc_s) FROM sample WHERE contact_id = contact.id) WHERE outcome IS NULL",
             (Outcome.INTERRUPTED.value,),
         )
-
-    def _forget_older(self, utc_s: float) -> None:
-        row = self._connection.execute(
-            "SELECT id FROM contact WHERE begin_utc_s < ? AND outcome IS NOT NULL LIMIT 1", (utc_s,)
-        ).fetchone()
-        self._connection.execute("BEGIN IMMEDIATE")
-        if row is not None:
-            self._connection.execute("DELETE FROM sample WHERE contact_id = ?", row)
-            self._connection.execute("DELETE FROM contact WHERE id = ?", row)
-        self._connection.execute("DELETE FROM event WHERE utc_s < ?", (utc_s,))
-        self._connection.execute("COMMIT")
-
-    def _forget_oldest(self) -> None:
-        gone = self._connection.execute(
-            "DELETE FROM sample WHERE (contact_id, number) IN (SELECT contact_id, number"
-            " FROM sample ORDER BY contact_id, number LIMIT ?)",
-            (_SAMPLES_A_TURN,),
-        ).rowcount
-        if not gone:
-            self._connection.execute(
-                "DELETE FROM event WHERE id IN (SELECT id FROM event ORDER BY id LIMIT ?)",
-                (_EVENTS_A_TURN,),
-            )
-
-    def _used_bytes(self) -> int:
-        pages, free, size = (
-            self._connection.execute(f"PRAGMA {name}").fetchone()[0]
-            for name in ("page_count", "freelist_count", "page_size")
-        )
-        return int((pages - free) * size)
 
 
 def _json(summary: Mapping[str, object]) -> str:

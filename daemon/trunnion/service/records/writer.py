@@ -11,8 +11,9 @@ from threading import Thread
 
 from trunnion.service.clock import Clock
 from trunnion.service.records.damage import is_damaged, set_aside
+from trunnion.service.records.retention import Retention
 from trunnion.service.records.schema import ForeignFile
-from trunnion.service.records.store import RecordStore, Retention
+from trunnion.service.records.store import RecordStore
 from trunnion.service.records.values import (
     ContactEnd,
     ContactStart,
