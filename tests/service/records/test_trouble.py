@@ -128,3 +128,47 @@ def test_a_full_disk_costs_samples_is_said_and_is_got_over(path: Path) -> None:
         assert contact.samples + int(lost) == 20_000
         assert 0 < contact.samples < 20_000
         assert [each.sentence for each in records.events()] == ["while the disk was full"]
+
+
+def test_records_that_are_removed_are_begun_anew_with_the_contact_under_way(path: Path) -> None:
+    writer = RecordWriter(path, VirtualClock(UTC_S))
+    writer.begin_contact(start())
+    writer.sample(sample(1))
+    writer.flush()
+    for each in path.parent.iterdir():
+        each.unlink()
+    writer.sample(sample(2))
+    writer.end_contact(UTC_S + 9.0, Outcome.DONE, {})
+    writer.flush()
+    writer.close()
+    with Records(path) as records:
+        (contact,) = records.contacts()
+        assert (contact.contact, contact.outcome, contact.samples) == ("A-17", Outcome.DONE, 1)
+
+
+def test_records_damaged_in_mid_contact_are_begun_anew_with_it(path: Path) -> None:
+    writer = RecordWriter(path, VirtualClock(UTC_S))
+    writer.begin_contact(start())
+    for turn in range(3000):
+        writer.sample(sample(turn))
+    writer.flush()
+    checkpoint(path)
+    with path.open("r+b") as file:
+        file.write(b"\x5a" * path.stat().st_size)
+    for turn in range(40):
+        writer.sample(sample(turn))
+        writer.flush()
+    writer.end_contact(UTC_S + 9.0, Outcome.DONE, {})
+    writer.flush()
+    assert writer.trouble is None
+    writer.close()
+    with Records(path) as records:
+        assert records.contacts()[0].outcome is Outcome.DONE
+    assert path.with_name(path.name + ".damaged-1").exists()
+
+
+def checkpoint(path: Path) -> None:
+    """Have everything in the database file itself, so that damaging it is damage indeed."""
+    connection = sqlite3.connect(path)
+    connection.execute("PRAGMA wal_checkpoint(TRUNCATE)")
+    connection.close()

@@ -3,6 +3,7 @@
 import json
 import sqlite3
 from collections.abc import Iterable, Mapping
+from os.path import samestat
 from pathlib import Path
 
 from trunnion.service.records.presence import Presence
@@ -40,9 +41,17 @@ class RecordStore:
                 self._connection.execute(pragma)
             prepare(self._connection)
             self._end_what_was_interrupted()
+            self._path, self._opened = path, path.stat()
         except BaseException:
             self.close()
             raise
+
+    def is_in_place(self) -> bool:
+        """Whether the file is still there; one that was removed is written to in vain."""
+        try:
+            return samestat(self._path.stat(), self._opened)
+        except OSError:
+            return False
 
     def write(self, batch: Iterable[Entry]) -> None:
         """Write all of it, or nothing."""

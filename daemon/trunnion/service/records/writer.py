@@ -2,7 +2,7 @@
 
 import logging
 import sqlite3
-from collections.abc import Mapping
+from collections.abc import Iterable, Mapping
 from contextlib import suppress
 from pathlib import Path
 from queue import Empty, SimpleQueue
@@ -54,6 +54,7 @@ class RecordWriter:
         self._waiting: SimpleQueue[Entry | Signal] = SimpleQueue()
         self._batch: list[Entry] = []
         self._store: RecordStore | None = None
+        self._under_way: ContactStart | None = None
         self._hurry = Signal()
         self._is_closing = False
         self._dropped = 0
@@ -142,13 +143,26 @@ class RecordWriter:
         return flushed
 
     def _write(self) -> None:
-        store = self._store = self._store or RecordStore(self._path)
+        store = self._opened()
         store.write(self._batch)
+        self._under_way = _under_way_after(self._batch, self._under_way)
         self._batch = []
         store.forget(self._retention, self._clock.utc_s())
         if self._trouble is not None:
             _log.info("records are written again; %d entries were lost", self._dropped)
             self._trouble = None
+
+    def _opened(self) -> RecordStore:
+        """The file, made anew where it is gone; the contact under way begins anew in it."""
+        if self._store is not None and not self._store.is_in_place():
+            _log.error("the records were removed from %s; new ones are begun", self._path)
+            self._close_store()
+        if self._store is None:
+            self._store = RecordStore(self._path)
+            if self._under_way is not None:
+                self._batch.insert(0, self._under_way)
+                self._under_way = None
+        return self._store
 
     def _keep_over_a_failure(self) -> None:
         """Samples may go; what began, ended and happened is kept for the next attempt."""
@@ -179,3 +193,14 @@ class RecordWriter:
         if store is not None:
             with suppress(sqlite3.Error, OSError):
                 store.close()
+
+
+def _under_way_after(batch: Iterable[Entry], before: ContactStart | None) -> ContactStart | None:
+    """The contact that has begun and not ended once all of these are written."""
+    under_way = before
+    for entry in batch:
+        if isinstance(entry, ContactStart):
+            under_way = entry
+        elif isinstance(entry, ContactEnd):
+            under_way = None
+    return under_way
