@@ -9,11 +9,12 @@ import numpy as np
 import pytest
 
 from tests.published.reference_sky import EARTH, EPHEMERIS, apart_arcsec, de421, skyfield_look
-from trunnion.sky.bodies import Body, SeriesBody
+from trunnion.sky.bodies import SeriesBody
 from trunnion.sky.celestial import Celestial
 from trunnion.sky.course import course_at
 from trunnion.sky.instants import parse_utc
 from trunnion.sky.look import FloatArray
+from trunnion.sky.naming import Body
 from trunnion.sky.place import Place
 from trunnion.sky.refraction import NoRefraction
 from trunnion.sky.site import Site

@@ -15,11 +15,12 @@ import pytest
 from skyfield.api import Loader, wgs84
 from skyfield_data import get_skyfield_data_path
 
-from trunnion.sky.bodies import Body, SeriesBody
+from trunnion.sky.bodies import SeriesBody
 from trunnion.sky.course import course_at
 from trunnion.sky.earth import EarthOrientation
 from trunnion.sky.instants import julian_date, parse_utc
 from trunnion.sky.leap_seconds import LeapSeconds
+from trunnion.sky.naming import Body
 from trunnion.sky.place import AU_KM
 from trunnion.sky.refraction import NoRefraction
 from trunnion.sky.site import Site

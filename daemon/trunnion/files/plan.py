@@ -54,8 +54,9 @@ class Contact(Section):
     """One stretch of time in which the antenna follows one target."""
 
     target: Annotated[Name, AfterValidator(checked_target)]
-    """`sun`, `fixed:AZIMUTH,ELEVATION`, a name from the station file's `targets`, or the name or
-    the catalogue number of a set of orbit elements."""
+    """`sun`, `moon` or a planet, `icrs:RIGHT_ASCENSION,DECLINATION`, `fixed:AZIMUTH,ELEVATION`,
+    `file:PATH` from the station file's folder on, a name from the station file's `targets`, or the
+    name or the catalogue number of a set of orbit elements."""
     from_s: Instant = Field(alias="from")
     """When it begins, in ISO 8601 with Z or an offset: 2026-12-01T10:15:00Z."""
     until_s: Instant = Field(alias="until")

@@ -48,8 +48,10 @@ class StationFile(Section):
     cadence: CadenceSection = _ALL_DEFAULTS
     files: FilesSection = _ALL_DEFAULTS
     targets: dict[TargetName, TargetText] = Field(default_factory=dict)
-    """Names of your own for targets: `sun`, `fixed:AZIMUTH,ELEVATION`, or the name or the catalogue
-    number of a set of orbit elements."""
+    """Names of your own for targets: `sun`, `moon` or a planet, `icrs:RIGHT_ASCENSION,DECLINATION`,
+    `fixed:AZIMUTH,ELEVATION`, `file:PATH` (orbit elements, an ephemeris or an angle table; the path
+    begins at the station file's folder), or the name or the catalogue number of a set of orbit
+    elements."""
 
     _source: YamlText = PrivateAttr()
 

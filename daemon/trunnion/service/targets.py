@@ -7,12 +7,13 @@ from pathlib import Path
 from trunnion.files.elements import SUFFIXES, load_elements
 from trunnion.files.problems import FileProblems, Problem, did_you_mean
 from trunnion.files.station import StationFile
-from trunnion.files.target_text import SUN, fixed_direction, is_builtin, is_sun
+from trunnion.files.target_file import load_target_file
+from trunnion.files.target_text import is_builtin, target_file
 from trunnion.service.errors import ServiceError
+from trunnion.sky.builtin import builtin_target
 from trunnion.sky.elements import ElementSet, Satellite
-from trunnion.sky.fixed import FixedDirection
 from trunnion.sky.look import Target
-from trunnion.sky.sun import Sun
+from trunnion.sky.naming import BODY_NAMES, meaning
 from trunnion.sky.viewpoint import Viewpoint
 
 _MOST_LISTED = 12
@@ -37,24 +38,44 @@ class TargetBook:
     def resolve(self, text: str) -> Target:
         """Find the target that a plan means by this text.
 
-        The station's own names come first, then `sun` and `fixed:AZIMUTH,ELEVATION`, then name or
-        catalogue number of orbit elements, of which the newest count. Raises UnknownTarget, and
-        FileProblems for elements that cannot be read.
+        The station's own names come first, then what has a meaning of its own (`sun`, `moon`,
+        `icrs:…`, `fixed:…`, `file:…`), then name or catalogue number of orbit elements, of which
+        the newest count. Raises UnknownTarget, FileProblems for files that cannot be read, and
+        SkyError for an ephemeris file that cannot.
         """
         meant = self._station.targets.get(text, text)
-        if is_builtin(meant):
-            return _builtin(meant, self._viewpoint)
-        return Satellite(_newest(self._called(meant), meant), self._viewpoint)
+        path = target_file(meant)
+        if path is not None:
+            return self._from_file(self._station.path.parent / path, text)
+        return self._builtin(meant) or Satellite(
+            _newest(self._called(meant), meant), self._viewpoint
+        )
 
     def resolve_or_read(self, text: str) -> Target:
-        """Find what a command line means: a target as above, or a file with one set of elements."""
+        """Find what a command line means: a target as above, or a file with one target."""
         if self.means_file(text) or Path(text).suffix.lower() in SUFFIXES:
-            return Satellite(_newest(load_elements(Path(text)), text), self._viewpoint)
+            return self._from_file(Path(text), text)
         return self.resolve(text)
 
     def means_file(self, text: str) -> bool:
-        """Whether a command line means a file of elements by this text."""
+        """Whether a command line means a file with a target in it by this text."""
         return not (text in self._station.targets or is_builtin(text)) and Path(text).is_file()
+
+    def _from_file(self, path: Path, text: str) -> Target:
+        found = load_target_file(path)
+        if isinstance(found, tuple):
+            return Satellite(_newest(found, text), self._viewpoint)
+        return found
+
+    def _builtin(self, text: str) -> Target | None:
+        try:
+            meant = meaning(text)
+        except ValueError as error:
+            raise UnknownTarget(str(error)) from None
+        if meant is None:
+            return None
+        ephemeris = self._station.files.ephemeris
+        return builtin_target(meant, self._viewpoint, str(ephemeris) if ephemeris else None)
 
     def _called(self, name: str) -> Sequence[ElementSet]:
         found = [each for each in self.elements if _is_called(each, name)]
@@ -63,7 +84,7 @@ class TargetBook:
         return found
 
     def _suggestion(self, name: str) -> str:
-        known = [SUN, *self._station.targets, *(each.name for each in self.elements)]
+        known = [*self._station.targets, *(each.name for each in self.elements), *BODY_NAMES]
         listed = ", ".join(known[:_MOST_LISTED]) + (", …" if len(known) > _MOST_LISTED else "")
         return did_you_mean(name, known) or f"; known here: {listed}"
 
@@ -71,18 +92,6 @@ class TargetBook:
 def resolve_target(text: str, station: StationFile, viewpoint: Viewpoint) -> Target:
     """Find one target; a TargetBook finds many without reading the elements again and again."""
     return TargetBook(station, viewpoint).resolve(text)
-
-
-def _builtin(text: str, viewpoint: Viewpoint) -> Target:
-    if is_sun(text):
-        return Sun(viewpoint)
-    try:
-        direction = fixed_direction(text)
-    except ValueError as error:
-        raise UnknownTarget(str(error)) from None
-    if direction is None:
-        raise UnknownTarget(f"expected a target that has a meaning of its own, got {text!r}")
-    return FixedDirection(*direction)
 
 
 def _is_called(element_set: ElementSet, name: str) -> bool:

@@ -5,7 +5,6 @@ ELP 2000-82), the planets by plan94 (Simon et al. 1994).
 """
 
 from dataclasses import dataclass
-from enum import Enum
 from typing import Any
 
 import erfa
@@ -13,22 +12,8 @@ import numpy as np
 
 from trunnion.sky.light import as_seen, earth_state
 from trunnion.sky.look import FloatArray
+from trunnion.sky.naming import Body
 from trunnion.sky.place import AU_KM, J2000_JD, check_span
-
-
-class Body(Enum):
-    """A body of the solar system, by its name in a plan; all but the Earth."""
-
-    SUN = "sun"
-    MOON = "moon"
-    MERCURY = "mercury"
-    VENUS = "venus"
-    MARS = "mars"
-    JUPITER = "jupiter"
-    SATURN = "saturn"
-    URANUS = "uranus"
-    NEPTUNE = "neptune"
-
 
 _PLAN94 = {
     Body.MERCURY: 1,

@@ -8,10 +8,11 @@ from typing import Any
 
 import numpy as np
 
-from trunnion.sky.bodies import MOON_NODE_DAYS, SLOW_NODE_DAYS, Body
+from trunnion.sky.bodies import MOON_NODE_DAYS, SLOW_NODE_DAYS
 from trunnion.sky.errors import SkyError
 from trunnion.sky.light import as_seen
 from trunnion.sky.look import FloatArray
+from trunnion.sky.naming import Body
 from trunnion.sky.place import AU_KM, J2000_JD, check_span
 
 _SUN, _EARTH, _BARYCENTRE = 10, 399, 0

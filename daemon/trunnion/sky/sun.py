@@ -1,7 +1,8 @@
 """The Sun as a target: for the noise it makes, and for keeping away from it."""
 
-from trunnion.sky.bodies import Body, SeriesBody
+from trunnion.sky.bodies import SeriesBody
 from trunnion.sky.celestial import Celestial
+from trunnion.sky.naming import Body
 from trunnion.sky.viewpoint import Viewpoint
 
 
