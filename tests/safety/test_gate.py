@@ -15,7 +15,7 @@ from trunnion.mount.mount import JointBox
 from trunnion.safety.emergency import EmergencyStop
 from trunnion.safety.gate import Gate
 from trunnion.safety.places import find_at, find_on_the_way, stopping_place
-from trunnion.safety.verdict import Halt, Move, Rule
+from trunnion.safety.verdict import Halt, Move, Rule, Verdict
 from trunnion.safety.world import World
 
 STILL = Motion(201.7, 41.3)
@@ -25,11 +25,11 @@ def test_a_demand_within_all_limits_leaves_as_it_is() -> None:
     bench = Bench()
     bench.turn(STILL)
     demand = Motion(201.7101, 41.3023, 0.202, 0.046)
-    assert bench.turn(demand) == (Move(demand), (), False, None)
+    assert bench.turn(demand) == Verdict(Move(demand))
 
 
 def test_rest_is_no_intervention() -> None:
-    assert Bench().turn(None) == (Halt(), (), False, None)
+    assert Bench().turn(None) == Verdict(Halt())
 
 
 def test_a_demand_that_leaps_is_slowed_to_what_the_joints_can_do() -> None:
@@ -118,6 +118,7 @@ def test_an_old_reading_halts_and_a_missing_one_too() -> None:
 def test_one_impossible_reading_halts_for_one_turn() -> None:
     bench = Bench()
     bench.turn(STILL)
+    bench.turn(STILL)
     place, bench.place = bench.place, Joints(311.7, 41.3)
     assert rules(bench.turn(STILL)) == {Rule.READING_IMPOSSIBLE}
     bench.place = Joints(231.7, 41.3)
@@ -129,11 +130,13 @@ def test_one_impossible_reading_halts_for_one_turn() -> None:
 def test_a_mount_that_stays_behind_is_stopped_for_good() -> None:
     bench = Bench()
     demand, stuck, latched = STILL, bench.place, None
+    seen: list[Verdict] = []
     for _ in range(60):
         demand = approach(demand, Motion(231.7, 41.3), MOUNT, 0.1)
         verdict = bench.turn(demand)
-        bench.place = stuck
         latched = latched or verdict.latch
+        bench.place = bench.place._replace(first_deg=stuck.first_deg + 0.001 * (len(seen) % 3))
+        seen.append(verdict)
     assert latched is not None
     assert "from where it was ordered to be" in latched
 
@@ -147,7 +150,8 @@ def test_a_mount_that_moves_by_itself_is_stopped_for_good() -> None:
         bench.place = Joints(201.7, bench.place.second_deg - 0.2)
         verdict = bench.turn(None)
     assert verdict.latch is not None
-    assert rules(verdict) == {Rule.SLIPPED}
+    assert verdict.must_cut_power
+    assert rules(verdict) == {Rule.SLIPPED, Rule.EMERGENCY_STOP}
 
 
 def test_a_mount_wired_the_wrong_way_is_stopped_for_good() -> None:
@@ -161,14 +165,37 @@ def test_a_mount_wired_the_wrong_way_is_stopped_for_good() -> None:
     assert latched
 
 
-def test_a_mount_outside_moves_only_inwards_slowly_and_with_leave() -> None:
-    outside = Joints(201.7, 4.9)
+def test_a_mount_outside_does_not_move_without_leave() -> None:
+    bench = Bench(place=Joints(201.7, 4.9))
+    bench.turn(None)
+    assert rules(bench.turn(Motion(201.7, 41.3))) == {Rule.OUTSIDE}
+
+
+def test_with_leave_it_moves_inwards_and_slowly_however_far_is_asked_for() -> None:
+    bench = Bench(place=Joints(201.7, 3.1))
     leave = CALM._replace(may_recover=True)
-    up, down = Motion(201.7, 5.0, 0.0, 0.3), Motion(201.7, 4.8, 0.0, -0.3)
-    assert rules(Bench(place=outside).turn(up)) == {Rule.OUTSIDE}
-    assert rules(Bench(place=outside).turn(down, leave)) == {Rule.OUTSIDE}
-    assert rules(Bench(place=outside).turn(up._replace(second_rate_deg_s=0.6), leave))
-    assert Bench(place=outside).turn(up, leave).order == Move(up)
+    fastest, heights = 0.0, [3.1]
+    bench.turn(None)
+    for _ in range(60):
+        order = bench.turn(Motion(201.7, 5.9), leave).order
+        assert isinstance(order, Move)
+        fastest = max(fastest, order.motion.second_rate_deg_s)
+        heights.append(order.motion.second_deg)
+    assert heights == sorted(heights)
+    assert (heights[-1], fastest) == (5.9, 0.5)
+
+
+@pytest.mark.parametrize(
+    "demand",
+    [Motion(201.7, 2.1), Motion(260.3, 3.1), Motion(float("nan"), 5.9)],
+    ids=["outwards", "along and deeper", "nowhere"],
+)
+def test_with_leave_it_moves_nowhere_else(demand: Motion) -> None:
+    bench = Bench(place=Joints(201.7, 3.1))
+    leave = CALM._replace(may_recover=True)
+    bench.turn(None)
+    bench.turn(demand, leave)
+    assert rules(bench.turn(demand, leave)) == {Rule.OUTSIDE}
 
 
 @pytest.mark.parametrize(

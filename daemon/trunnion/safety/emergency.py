@@ -28,7 +28,10 @@ def decode(text: str) -> EmergencyStop:
     lines = body.split("\n")
     if digest != _digest(f"{body}\n") or len(lines) != 3 or lines[0] != FORMAT:
         return EmergencyStop(_DAMAGED, 0.0)
-    return EmergencyStop(lines[2], float(lines[1]))
+    try:
+        return EmergencyStop(lines[2], float(lines[1]))
+    except ValueError:
+        return EmergencyStop(_DAMAGED, 0.0)
 
 
 def _digest(body: str) -> str:

@@ -1,20 +1,26 @@
 """The gate: the last thing between anybody's wish and the mount. It believes nobody.
 
-Pure: the time is an argument, and its small memory is the last order and the last readings. What it
-lets through is within the travel, the rates and the accelerations, clear of floor, mask and
-keep-outs at its end, on the way there from where the mount says it is, and within the stopping
-distance behind it.
+Pure: the time is an argument, and its small memory is the last order, the last readings and how
+long each hazard has lasted. What it lets through is within the travel, the rates and the
+accelerations, clear of floor, mask and keep-outs at its end, on the way there from where the mount
+says it is, and within the stopping distance behind it. What follows from a hazard stands in the
+policy.
 """
 
-from math import isfinite
+from collections.abc import Iterator
 
 from trunnion.mount.joints import Motion, Reading
-from trunnion.mount.motion import approach
+from trunnion.safety.belief import Belief
+from trunnion.safety.clock_watch import ClockWatch
 from trunnion.safety.hazard import Hazard
+from trunnion.safety.lasting import Lasting
 from trunnion.safety.limits import SafetyLimits
-from trunnion.safety.places import find_at, find_on_the_way, stopping_place
+from trunnion.safety.obedience import Obedience
+from trunnion.safety.orders import Examined, Mounted, examine
+from trunnion.safety.places import find_at
 from trunnion.safety.policy import POLICY
-from trunnion.safety.readings import ReadingWatch
+from trunnion.safety.recovery import examine_return
+from trunnion.safety.rest import Rest
 from trunnion.safety.surroundings import find_around
 from trunnion.safety.verdict import Action, Halt, Intervention, Move, Rule, Verdict
 from trunnion.safety.world import World
@@ -22,13 +28,11 @@ from trunnion.safety.world import World
 LONGEST_STEP_S = 0.25
 """After a late turn an order moves on as if this little time had passed, not by a leap."""
 
-NOTICEABLE_DEG_S = 0.1
-"""Less than this a measured rate may differ from the ordered one by the encoder's noise alone."""
+AT_STOW_DEG = 1.0
+"""This near to its stow position the mount counts as stowed."""
 
-_BLIND = frozenset(
-    {Rule.NO_READING, Rule.READING_OLD, Rule.READING_IMPOSSIBLE, Rule.READING_JUMPED}
-)
-"""With one of these nobody knows where the mount is, and no order can be judged."""
+_STOWING = frozenset(rule for rule, policy in POLICY.items() if policy.action is Action.STOW)
+"""Rules that send the mount to stow."""
 
 
 class Gate:
@@ -36,129 +40,112 @@ class Gate:
 
     def __init__(self, limits: SafetyLimits) -> None:
         self._limits = limits
-        self._watch = ReadingWatch(limits)
+        self._belief = Belief(limits)
+        self._obedience = Obedience(limits)
+        self._rest = Rest(limits)
+        self._clock = ClockWatch(limits)
+        self._lasting = Lasting()
         self._ordered: Motion | None = None
         self._judged_s: float | None = None
+        self._latch: str | None = None
+        self._was_stopped = False
 
     def judge(
         self, mono_s: float, demand: Motion | None, reading: Reading | None, world: World
     ) -> Verdict:
         """The order that leaves in this turn; a demand of None asks for rest."""
         dt_s = self._elapsed_s(mono_s)
-        hazards = [
-            *find_around(world, self._limits),
-            *self._watch.find(mono_s, reading, self._ordered),
-        ]
-        motion: Motion | None = None
-        is_blind = any(hazard.rule in _BLIND for hazard in hazards)
-        if demand is not None and reading is not None and not is_blind:
-            motion, found = self._examine(demand, reading, dt_s, may_recover=world.may_recover)
-            hazards += found
-        return self._verdict(motion, hazards)
+        self._see_to_the_stop(world)
+        hazards = list(self._find(mono_s, reading, world))
+        examined = self._examine(demand, dt_s, hazards, may_recover=world.may_recover)
+        hazards += examined.hazards
+        return self._verdict(examined.motion, self._lasting.acting_at(mono_s, hazards))
 
     def _elapsed_s(self, mono_s: float) -> float:
         last_s, self._judged_s = self._judged_s, mono_s
         return 0.0 if last_s is None else min(max(mono_s - last_s, 0.0), LONGEST_STEP_S)
 
+    def _see_to_the_stop(self, world: World) -> None:
+        """Once it is reset, begin anew: meanwhile people may have worked on the mount."""
+        is_stopped = world.emergency is not None
+        if is_stopped or self._was_stopped:
+            self._latch = None
+        if self._was_stopped and not is_stopped:
+            self._belief.forget()
+            self._rest.forget()
+        self._was_stopped = is_stopped
+
+    # -- what is wrong --------------------------------------------------------------------------
+
+    def _find(self, mono_s: float, reading: Reading | None, world: World) -> Iterator[Hazard]:
+        if self._latch is not None:
+            yield Hazard(Rule.EMERGENCY_STOP, f"emergency stop: {self._latch}")
+        yield from find_around(world, self._limits, self._lasting.acting)
+        yield from self._clock.find(mono_s, world.utc_s)
+        yield from self._belief.find(mono_s, reading)
+        yield from self._find_in_motion(mono_s, is_link_up=world.is_link_up)
+
+    def _find_in_motion(self, mono_s: float, *, is_link_up: bool) -> Iterator[Hazard]:
+        """Whether the mount moves as it was told in the turn before."""
+        reading, measured = self._belief.reading, self._belief.measured()
+        if reading is None or measured is None:
+            return
+        if not _STOWING.isdisjoint(self._lasting.acting) and not self._is_stowed(reading):
+            yield Hazard(Rule.STOW_OVERDUE, "the mount was to go to stow and is not there")
+        if self._ordered is not None:
+            self._rest.forget()
+            yield from self._obedience.find(self._ordered, reading)
+            return
+        self._obedience.forget()
+        if is_link_up:
+            yield from self._rest.find(mono_s, reading, measured)
+        else:
+            self._rest.forget()
+
+    def _is_stowed(self, reading: Reading) -> bool:
+        stow = self._limits.mount.stow
+        return (
+            abs(reading.first_deg - stow.first_deg) <= AT_STOW_DEG
+            and abs(reading.second_deg - stow.second_deg) <= AT_STOW_DEG
+        )
+
     def _examine(
-        self, demand: Motion, reading: Reading, dt_s: float, *, may_recover: bool
-    ) -> tuple[Motion | None, list[Hazard]]:
-        """The motion nearest to the demand that may leave, if any, and what kept it from more."""
-        if not isfinite(sum(demand)):
-            return None, [Hazard(Rule.NOT_FINITE, f"asked for {demand}")]
+        self, demand: Motion | None, dt_s: float, hazards: list[Hazard], *, may_recover: bool
+    ) -> Examined:
+        reading, measured = self._belief.reading, self._belief.measured()
+        if demand is None or reading is None or measured is None or _is_halting(hazards):
+            return Examined(None)
+        now = Mounted(self._ordered or Motion(*reading.joints), reading, measured)
         outside = find_at(reading.joints, self._limits, self._limits.encoder_error_deg)
-        if outside is not None:
-            return self._examine_return(demand, reading, outside, may_recover=may_recover)
-        base = self._ordered or Motion(*reading.joints)
-        motion = approach(base, demand, self._limits.mount, dt_s)
-        found = (
-            [] if motion == demand else [Hazard(Rule.RATE, "asked for more than a joint can do")]
-        )
-        forbidden = self._find_before(motion, reading)
-        if forbidden is None and motion != demand:
-            forbidden = find_at(demand.joints, self._limits)
-        if forbidden is not None:
-            return None, [*found, forbidden]
-        beyond = self._find_beyond(motion)
-        if beyond is None:
-            return motion, found
-        found.append(Hazard(Rule.STOPPING, f"could not stop in time: {beyond.finding}"))
-        braking = approach(
-            base, Motion(*stopping_place(base, self._limits)), self._limits.mount, dt_s
-        )
-        if self._find_before(braking, reading) is not None:
-            return None, [*found, beyond]
-        return braking, found
+        if outside is None:
+            return examine(demand, now, dt_s, self._limits)
+        return examine_return(demand, now, dt_s, self._limits, outside, may_recover=may_recover)
 
-    def _find_beyond(self, motion: Motion) -> Hazard | None:
-        """What forbids the place where the joints would rest if they braked from now on.
+    # -- what follows from it -------------------------------------------------------------------
 
-        From the order's own rate, and from the rate that the readings show: a mount that runs ahead
-        of its orders, or after them, needs its own room.
-        """
-        beyond = find_at(stopping_place(motion, self._limits), self._limits)
-        measured = self._watch.measured()
-        if beyond is not None or measured is None or not _is_faster(measured, motion):
-            return beyond
-        place = stopping_place(measured, self._limits)
-        return find_at(place, self._limits, self._limits.encoder_error_deg)
-
-    def _find_before(self, motion: Motion, reading: Reading) -> Hazard | None:
-        """What forbids the order itself, or the way to it from where the mount says it is.
-
-        A mount that reads just outside a limit, by no more than its encoder's error, may be there.
-        """
-        return find_on_the_way(reading.joints, motion.joints, self._limits)
-
-    def _examine_return(
-        self, demand: Motion, reading: Reading, outside: Hazard, *, may_recover: bool
-    ) -> tuple[Motion | None, list[Hazard]]:
-        """A mount outside its limits moves only back inside, slowly, and only with leave."""
-        hazard = Hazard(Rule.OUTSIDE, f"the mount is outside its limits: {outside.finding}")
-        slowest = self._limits.recovery_rate_deg_s
-        is_slow = (
-            abs(demand.first_rate_deg_s) <= slowest and abs(demand.second_rate_deg_s) <= slowest
-        )
-        if not (may_recover and is_slow and self._leads_inside(demand, reading)):
-            return None, [hazard]
-        return demand, []
-
-    def _leads_inside(self, demand: Motion, reading: Reading) -> bool:
-        """Whether a demand brings every joint nearer to its travel, and the beam no lower."""
-        limits = self._limits.mount
-        for was_deg, will_deg, joint in (
-            (reading.first_deg, demand.first_deg, limits.first),
-            (reading.second_deg, demand.second_deg, limits.second),
-        ):
-            was_out = max(joint.lower_deg - was_deg, was_deg - joint.upper_deg, 0.0)
-            if max(joint.lower_deg - will_deg, will_deg - joint.upper_deg, 0.0) > was_out:
-                return False
-        _, was_elevation = limits.hinges.boresight(reading.joints)
-        _, will_elevation = limits.hinges.boresight(demand.joints)
-        return will_elevation >= was_elevation
-
-    def _verdict(self, motion: Motion | None, hazards: list[Hazard]) -> Verdict:
-        if not hazards:
-            self._ordered = motion
-            return Verdict(Halt() if motion is None else Move(motion))
-        policies = [POLICY[hazard.rule] for hazard in hazards]
-        worst = max((policy.action for policy in policies), default=Action.SLOW)
-        order = Halt() if motion is None or worst >= Action.HALT else Move(motion)
-        self._ordered = order.motion if isinstance(order, Move) else None
-        latching = [hazard for hazard in hazards if POLICY[hazard.rule].action is Action.LATCH]
+    def _verdict(self, motion: Motion | None, acting: tuple[Hazard, ...]) -> Verdict:
+        worst = max((POLICY[hazard.rule].action for hazard in acting), default=Action.SLOW)
+        if worst is Action.LATCH:
+            self._latch = next(each.finding for each in acting if _action(each) is Action.LATCH)
+        self._ordered = None if worst >= Action.HALT or self._latch is not None else motion
         return Verdict(
-            order,
-            tuple(_intervention(hazard) for hazard in hazards),
-            wants_stow=any(policy.action is Action.STOW for policy in policies),
-            latch=latching[0].finding if latching else None,
+            Halt() if self._ordered is None else Move(self._ordered),
+            tuple(map(_intervention, acting)),
+            wants_stow=any(_action(hazard) is Action.STOW for hazard in acting),
+            latch=self._latch,
+            must_cut_power=any(hazard.rule is Rule.SLIPPED for hazard in acting),
         )
 
 
-def _is_faster(measured: Motion, ordered: Motion) -> bool:
-    """Whether a joint moves noticeably faster than it was told to, and so needs more room."""
-    return (
-        abs(measured.first_rate_deg_s) > abs(ordered.first_rate_deg_s) + NOTICEABLE_DEG_S
-        or abs(measured.second_rate_deg_s) > abs(ordered.second_rate_deg_s) + NOTICEABLE_DEG_S
+def _action(hazard: Hazard) -> Action:
+    return POLICY[hazard.rule].action
+
+
+def _is_halting(hazards: list[Hazard]) -> bool:
+    """Whether the mount is halted anyhow, before its demand has been looked at."""
+    return any(
+        POLICY[hazard.rule].action is Action.HALT and POLICY[hazard.rule].after_s == 0.0
+        for hazard in hazards
     )
 
 
@@ -171,6 +158,6 @@ _DONE = {
 
 
 def _intervention(hazard: Hazard) -> Intervention:
-    action, _, until = POLICY[hazard.rule]
-    sentence = f"{hazard.finding} ({hazard.rule.value}): {_DONE[action]} {until}"
-    return Intervention(hazard.rule, action, sentence)
+    policy = POLICY[hazard.rule]
+    sentence = f"{hazard.finding} ({hazard.rule.value}): {_DONE[policy.action]} {policy.until}"
+    return Intervention(hazard.rule, policy.action, sentence)

@@ -21,10 +21,9 @@ class SafetyLimits:
     turn_max_lateness_s: float = 0.5
     encoder_error_deg: float = 0.05
     stall_error_deg: float = 3.0
-    stall_s: float = 3.0
     slip_deg: float = 1.0
-    slip_s: float = 1.0
     recovery_rate_deg_s: float = 0.5
+    clock_max_step_s: float = 0.5
     clock_max_error_s: float | None = None
     wind_stow_gust_m_s: float | None = None
     wind_stow_mean_m_s: float | None = None

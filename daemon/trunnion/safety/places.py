@@ -3,15 +3,16 @@
 from collections.abc import Iterator
 from math import ceil
 
+from trunnion.mount.clearance import Sector
 from trunnion.mount.joints import Joints, Motion
 from trunnion.mount.motion import stopping_distance_deg
-from trunnion.mount.mount import JointLimits
+from trunnion.mount.mount import JointBox, JointLimits
 from trunnion.safety.hazard import Hazard
 from trunnion.safety.limits import SafetyLimits
 from trunnion.safety.verdict import Rule
 
-SPACING_DEG = 0.5
-"""The way is looked at in steps of this size: no narrower than obstacles are surveyed."""
+SPACING_DEG = 0.25
+"""The way is looked at in steps of this size: no obstacle is surveyed more finely."""
 
 ROUNDING_DEG = 1e-9
 
@@ -54,6 +55,41 @@ def stopping_place(motion: Motion, limits: SafetyLimits) -> Joints:
     return Joints(
         motion.first_deg + (first_deg if motion.first_rate_deg_s > 0.0 else -first_deg),
         motion.second_deg + (second_deg if motion.second_rate_deg_s > 0.0 else -second_deg),
+    )
+
+
+def depth_deg(place: Joints, limits: SafetyLimits) -> float:
+    """How far (deg) a place is outside its limits, by the worst of them; 0 inside."""
+    mount, clearance = limits.mount, limits.clearance
+    azimuth_deg, elevation_deg = mount.hinges.boresight(place)
+    sector = clearance.keep_out(azimuth_deg, elevation_deg)
+    return max(
+        0.0,
+        mount.first.lower_deg - place.first_deg,
+        place.first_deg - mount.first.upper_deg,
+        mount.second.lower_deg - place.second_deg,
+        place.second_deg - mount.second.upper_deg,
+        clearance.lowest_deg(azimuth_deg) - elevation_deg,
+        0.0 if sector is None else _depth_in_sector_deg(azimuth_deg, elevation_deg, sector),
+        *(_depth_in_box_deg(place, box) for box in mount.forbidden),
+    )
+
+
+def _depth_in_sector_deg(azimuth_deg: float, elevation_deg: float, sector: Sector) -> float:
+    return min(
+        (azimuth_deg - sector.from_azimuth_deg) % 360.0,
+        (sector.to_azimuth_deg - azimuth_deg) % 360.0,
+        elevation_deg - sector.lower_elevation_deg,
+        sector.upper_elevation_deg - elevation_deg,
+    )
+
+
+def _depth_in_box_deg(place: Joints, box: JointBox) -> float:
+    return min(
+        place.first_deg - box.first_lower_deg,
+        box.first_upper_deg - place.first_deg,
+        place.second_deg - box.second_lower_deg,
+        box.second_upper_deg - place.second_deg,
     )
 
 

@@ -40,6 +40,8 @@ class Rule(Enum):
     READING_OLD = "reading too old"
     READING_IMPOSSIBLE = "reading impossible"
     READING_JUMPED = "reading jumped"
+    POSITION_LOST = "position lost"
+    FROZEN = "reading frozen"
     STALLED = "stalled"
     SLIPPED = "moved unordered"
     WRONG_WAY = "moved the wrong way"
@@ -48,9 +50,11 @@ class Rule(Enum):
     TURN_LATE = "control turn late"
     MOUNT_FAULT = "fault of the mount"
     CLOCK_UNTRUSTED = "clock untrusted"
+    CLOCK_STEPPED = "clock stepped"
     WIND = "wind"
     WIND_UNKNOWN = "wind unknown"
     HEARTBEAT_LOST = "heartbeat lost"
+    STOW_OVERDUE = "stow overdue"
     NOT_FINITE = "order not finite"
     TRAVEL = "travel"
     RATE = "rate or acceleration"
@@ -72,10 +76,12 @@ class Verdict(NamedTuple):
     """The order that leaves for the mount, and why, where it is not the one that was asked for.
 
     `wants_stow` asks the pilot for the way to stow; `latch` is the cause of an emergency stop that
-    has to be kept from now on.
+    has to be kept from now on, and is told again until it is; `must_cut_power` asks for the power
+    of the motors to be removed, because a mount that was halted does not come to rest.
     """
 
     order: Order
     interventions: tuple[Intervention, ...] = ()
     wants_stow: bool = False
     latch: str | None = None
+    must_cut_power: bool = False

@@ -8,6 +8,7 @@ from trunnion.safety.emergency import EmergencyStop
 class World(NamedTuple):
     """The surroundings at this turn; None stands for "not known".
 
+    `utc_s` is the UTC of this turn (POSIX seconds), to be held against the monotonic clock;
     `lateness_s` is how late this turn began; `clock_error_s` the largest error of UTC that the
     system admits, infinite when it is not synchronised; winds in metres a second;
     `heartbeat_age_s` how long ago the outside heartbeat was last heard. `may_recover` is the
@@ -23,3 +24,4 @@ class World(NamedTuple):
     wind_mean_m_s: float | None = None
     heartbeat_age_s: float | None = None
     may_recover: bool = False
+    utc_s: float | None = None

@@ -1,0 +1,91 @@
+"""What of a demand may leave: the motion nearest to it that is within every limit."""
+
+from math import isfinite
+from typing import NamedTuple
+
+from trunnion.mount.joints import Motion, Reading
+from trunnion.mount.motion import approach
+from trunnion.safety.hazard import Hazard
+from trunnion.safety.limits import SafetyLimits
+from trunnion.safety.places import find_at, find_on_the_way, stopping_place
+from trunnion.safety.verdict import Rule
+
+NOTICEABLE_DEG_S = 0.1
+"""Less than this a measured rate may differ from the ordered one by the encoder's noise alone."""
+
+
+class Examined(NamedTuple):
+    """The motion that may leave, if any, and what kept it from being the one asked for."""
+
+    motion: Motion | None
+    hazards: tuple[Hazard, ...] = ()
+
+
+class Mounted(NamedTuple):
+    """How the mount is held to move: by its last order, or at rest, and by its readings."""
+
+    base: Motion
+    reading: Reading
+    measured: Motion
+
+
+def examine(demand: Motion, now: Mounted, dt_s: float, limits: SafetyLimits) -> Examined:
+    """Bring a demand within rates and accelerations, and refuse or brake what leads outside."""
+    if not isfinite(sum(demand)):
+        return Examined(None, (Hazard(Rule.NOT_FINITE, f"asked for {tuple(demand)}"),))
+    motion = approach(now.base, demand, limits.mount, dt_s)
+    if motion == demand:
+        forbidden = find_on_the_way(now.reading.joints, motion.joints, limits)
+        found: tuple[Hazard, ...] = ()
+    else:
+        forbidden = find_on_the_way(now.reading.joints, motion.joints, limits) or find_at(
+            demand.joints, limits
+        )
+        found = (Hazard(Rule.RATE, f"{_asked(demand)}, more than a joint can do at once"),)
+    if forbidden is not None:
+        return Examined(None, (*found, _in_words(forbidden, demand)))
+    beyond = _find_beyond(motion, now.measured, limits)
+    if beyond is None:
+        return Examined(motion, found)
+    return _brake(now, dt_s, (*found, _too_fast(beyond, demand)), limits)
+
+
+def _find_beyond(motion: Motion, measured: Motion, limits: SafetyLimits) -> Hazard | None:
+    """What forbids the place where the joints would rest if they braked from now on.
+
+    From the order's own rate, and from the rate that the readings show: a mount that runs ahead of
+    its orders, or after them, needs its own room.
+    """
+    beyond = find_at(stopping_place(motion, limits), limits)
+    if beyond is not None or not _is_faster(measured, motion):
+        return beyond
+    return find_at(stopping_place(measured, limits), limits, limits.encoder_error_deg)
+
+
+def _brake(now: Mounted, dt_s: float, found: tuple[Hazard, ...], limits: SafetyLimits) -> Examined:
+    """Brake along the way that the mount is on; where even that is not clear, nothing leaves."""
+    rest = Motion(*stopping_place(now.base, limits))
+    braking = approach(now.base, rest, limits.mount, dt_s)
+    if find_on_the_way(now.reading.joints, braking.joints, limits) is not None:
+        return Examined(None, found)
+    return Examined(braking, found)
+
+
+def _is_faster(measured: Motion, ordered: Motion) -> bool:
+    """Whether a joint moves noticeably faster than it was told to, and so needs more room."""
+    return (
+        abs(measured.first_rate_deg_s) > abs(ordered.first_rate_deg_s) + NOTICEABLE_DEG_S
+        or abs(measured.second_rate_deg_s) > abs(ordered.second_rate_deg_s) + NOTICEABLE_DEG_S
+    )
+
+
+def _asked(demand: Motion) -> str:
+    return f"asked for {demand.first_deg:.1f}°/{demand.second_deg:.1f}°"
+
+
+def _in_words(hazard: Hazard, demand: Motion) -> Hazard:
+    return Hazard(hazard.rule, f"{_asked(demand)}: {hazard.finding}")
+
+
+def _too_fast(hazard: Hazard, demand: Motion) -> Hazard:
+    return Hazard(Rule.STOPPING, f"{_asked(demand)}, could not stop in time: {hazard.finding}")
