@@ -118,6 +118,7 @@ class Daemon:
             self._beat(cadence)
             self._notifier.ready()
             while not self._is_ending.is_set():
+                self._see_to_the_plan()
                 self._beat(cadence)
             self._notifier.stopping()
             if self._station.safety.stow_on_exit:
@@ -128,7 +129,6 @@ class Daemon:
     def _beat(self, cadence: Cadence, wish: Wish | None = None) -> Turn:
         self._last_beat = cadence.wait()
         self._missed = cadence.missed_in_all
-        self._see_to_the_plan()
         orders = Orders(self._plans.assignments, wish or self._wish.wish)
         turn = self._control.run(orders, self._look_around)
         if turn.verdict.latch is not None:
@@ -137,7 +137,10 @@ class Daemon:
         return turn
 
     def _see_to_the_plan(self) -> None:
-        """Plan from where the mount stands: at the start, and whenever a file was replaced."""
+        """Plan from where the mount stands: at the start, and whenever a file was replaced.
+
+        Between the turns: starting the child takes some milliseconds.
+        """
         reading = self._link.newest()
         if self._watch.take_change():
             self._plans.plan_anew()
