@@ -37,17 +37,26 @@ class _Driver(BaseModel):
     kind: str
 
 
+class _Safety(_Part):
+    elevation_floor_deg: float
+
+
 class _Station(_Part):
     mount: _Mount
+    safety: _Safety | None = None
     driver: _Driver
 
 
 class BenchStation(NamedTuple):
-    """The mount, the driver's kind, and its settings."""
+    """The mount, the driver's kind and settings, and the floor below which nothing may go (deg).
+
+    Without a floor in the file it is the lower end of the second joint's travel.
+    """
 
     facts: MountFacts
     kind: str
     settings: Mapping[str, object]
+    floor_deg: float
 
 
 def read_station(path: Path) -> BenchStation:
@@ -65,4 +74,7 @@ def read_station(path: Path) -> BenchStation:
     mount = station.mount
     folder = path.absolute().parent
     facts = MountFacts(mount.first.facts(), mount.second.facts(), *mount.stow_deg, folder)
-    return BenchStation(facts, station.driver.kind, station.driver.model_extra or {})
+    safety = station.safety
+    floor_deg = safety.elevation_floor_deg if safety else facts.second.lower_deg
+    settings = station.driver.model_extra or {}
+    return BenchStation(facts, station.driver.kind, settings, floor_deg)
