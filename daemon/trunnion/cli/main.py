@@ -19,6 +19,7 @@ from trunnion.cli.rehearse import rehearse
 from trunnion.cli.run import run
 from trunnion.cli.schema import schema
 from trunnion.cli.show import show
+from trunnion.cli.tools import AS_TYPED, bench, commission, dialect
 
 _COMMANDS = (
     demo,
@@ -36,6 +37,7 @@ _COMMANDS = (
     stow,
     resume,
 )
+_TOOLS = (bench, dialect, commission)
 
 
 class _Commands(TyperGroup):
@@ -78,6 +80,8 @@ def build_app() -> typer.Typer:
     app.callback()(_trunnion)
     for command in _COMMANDS:
         app.command()(command)
+    for tool in _TOOLS:
+        app.command(context_settings=AS_TYPED, add_help_option=False)(tool)
     app.add_typer(records_app(), name="records")
     return app
 

@@ -1,6 +1,6 @@
 """Put a simulated mount where the station's driver looks for the real one.
 
-`python -m trunnion_drivers.bench STATION` opens a pseudo-terminal at the path, or listens on the
+`trunnion bench STATION` opens a pseudo-terminal at the path, or listens on the
 port of this machine, that the station file gives as the driver's url, speaks what that driver
 speaks, and prints the wire. Then run the station in another terminal.
 """
@@ -88,7 +88,7 @@ def _as_tuples(value: object) -> object:
 
 
 def _parser() -> argparse.ArgumentParser:
-    parser = argparse.ArgumentParser(prog="python -m trunnion_drivers.bench", description=__doc__)
+    parser = argparse.ArgumentParser(prog="trunnion bench", description=__doc__)
     parser.add_argument("station", type=Path, help="the station file")
     parser.add_argument(
         "--machine", default="{}", help="settings of the simulated machine, as a JSON object"

@@ -1,4 +1,4 @@
-"""Commission a mount: `python -m trunnion_drivers.commission STATION`. No daemon may run beside it.
+"""Commission a mount: `trunnion commission STATION`. No daemon may run beside it.
 
 Step by step, each with your agreement: link, stop input, sense and scale of each joint, speed and
 stopping, limit switches, stow. Writes a dated report beside the station file.
@@ -64,9 +64,7 @@ def _now(pattern: str) -> str:
 
 
 def _parser() -> argparse.ArgumentParser:
-    parser = argparse.ArgumentParser(
-        prog="python -m trunnion_drivers.commission", description=__doc__
-    )
+    parser = argparse.ArgumentParser(prog="trunnion commission", description=__doc__)
     parser.add_argument("station", type=Path, help="the station file")
     parser.add_argument(
         "--creep",

@@ -1,4 +1,4 @@
-"""Show a dialect: `python -m trunnion_drivers.dialect FILE [--first DEG …] [--captured TEXT]`."""
+"""Show a dialect: `trunnion dialect FILE [--first DEG …] [--captured TEXT]`."""
 
 import argparse
 import codecs
@@ -40,7 +40,7 @@ def _captured(given: argparse.Namespace) -> bytes:
 
 
 def _parser() -> argparse.ArgumentParser:
-    parser = argparse.ArgumentParser(prog="python -m trunnion_drivers.dialect", description=__doc__)
+    parser = argparse.ArgumentParser(prog="trunnion dialect", description=__doc__)
     parser.add_argument("file", type=Path)
     for name, example in (("first", 12.5), ("second", 33.25)):
         parser.add_argument(f"--{name}", type=float, default=example, help="angle in degrees")
