@@ -27,6 +27,9 @@ from trunnion.mount.sphere import direction, principal_deg, unit_vector
 
 Vector = tuple[float, float, float]
 
+TINY = 1e-150
+"""Nothing nearer to the first axis than this is told from it: its square must not vanish."""
+
 UPRIGHT_DEG = 90.0 - 1e-9
 """A first axis at least this high is vertical: azimuths and elevations need no rotation."""
 
@@ -42,10 +45,10 @@ class Hinges:
     axis_azimuth_deg: float
     axis_elevation_deg: float
     is_clockwise: bool
-    _frame: tuple[Vector, Vector, Vector] = field(init=False, repr=False, compare=False)
+    frame: tuple[Vector, Vector, Vector] = field(init=False, repr=False, compare=False)
 
     def __post_init__(self) -> None:
-        object.__setattr__(self, "_frame", _frame_of(self))
+        object.__setattr__(self, "frame", _frame_of(self))
 
     @classmethod
     def azimuth_elevation(cls) -> Self:
@@ -79,7 +82,7 @@ class Hinges:
         """Azimuth (0 <= azimuth < 360) and elevation (deg) of the beam at these joint angles."""
         if self.is_upright:
             return _upright(joints)
-        r, s, a = self._frame
+        r, s, a = self.frame
         first, second = radians(joints.first_deg), radians(joints.second_deg)
         along_r, along_s = cos(second) * cos(first), cos(second) * sin(first)
         along_a = sin(second)
@@ -129,14 +132,14 @@ class Hinges:
             _velocity(azimuth_deg, elevation_deg, azimuth_rate_deg_s, elevation_rate_deg_s)
         )
         level = hypot(along_r, along_s)
-        if level == 0.0:
+        if level < TINY:
             return Motion(*joints, 0.0, sign * hypot(d_r, d_s))
         first_rate = (along_r * d_s - along_s * d_r) / (level * level)
         second_rate = level * d_a - along_a * (along_r * d_r + along_s * d_s) / level
         return Motion(*joints, first_rate, sign * second_rate)
 
     def _components(self, vector: Vector) -> Vector:
-        r, s, a = self._frame
+        r, s, a = self.frame
         return _dot(vector, r), _dot(vector, s), _dot(vector, a)
 
 

@@ -59,6 +59,18 @@ def _step(
     """One joint: angle and rate after the step."""
     if _can_land(goal - angle, rate, goal_rate, limits, dt_s):
         return goal, goal_rate
+    next_rate = chase_rate_deg_s(angle, rate, goal, goal_rate, limits, dt_s)
+    return angle + 0.5 * (rate + next_rate) * dt_s, next_rate
+
+
+def chase_rate_deg_s(
+    angle: float, rate: float, goal: float, goal_rate: float, limits: JointLimits, dt_s: float
+) -> float:
+    """The rate at the end of a step that closes in on a goal soonest and still stops at it.
+
+    Angles in degrees, rates in degrees per second; `goal` is where the goal is at the end of the
+    step. The joint accelerates evenly over the step.
+    """
     behind = goal - goal_rate * dt_s - angle
     sign = 1.0 if behind >= 0.0 else -1.0
     closing = _closing_rate(
@@ -66,8 +78,7 @@ def _step(
     )
     reach = limits.acceleration_deg_s2 * dt_s
     wanted = min(max(goal_rate + sign * closing, rate - reach), rate + reach)
-    next_rate = min(max(wanted, -limits.rate_deg_s), limits.rate_deg_s)
-    return angle + 0.5 * (rate + next_rate) * dt_s, next_rate
+    return min(max(wanted, -limits.rate_deg_s), limits.rate_deg_s)
 
 
 def _can_land(

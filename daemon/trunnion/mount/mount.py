@@ -30,6 +30,10 @@ class JointLimits:
         """Upper end of what plans use."""
         return self.upper_deg - self.margin_deg
 
+    def nearest_deg(self, angle_deg: float) -> float:
+        """The angle that plans use nearest to this one."""
+        return min(max(angle_deg, self.soft_lower_deg), self.soft_upper_deg)
+
 
 @dataclass(frozen=True, slots=True)
 class JointBox:
