@@ -4,22 +4,24 @@ The joints do not arrive together, and how they are late depends on the mount; s
 clear only where every pair of angles between the two places is.
 """
 
-from math import ceil
+from math import asin, cos, degrees, radians, sin
 from typing import NamedTuple
 
 from trunnion.mount.clearance import Clearance, Sector
 from trunnion.mount.joints import Joints
 from trunnion.mount.mount import Mount
 
-GRID_DEG = 0.25
-"""Spacing at which a box of a mount that does not stand upright is looked at."""
+SMALLEST_DEG = 0.25
+"""A box of a mount that does not stand upright is halved down to this size."""
 
 
 def is_box_clear(one: Joints, other: Joints, mount: Mount, clearance: Clearance) -> bool:
-    """Whether the boresight is clear at every pair of joint angles between these two."""
+    """Whether mount and boresight are clear at every pair of joint angles between these two."""
+    if any(box.meets(one, other) for box in mount.forbidden):
+        return False
     if mount.hinges.is_upright:
         return all(_is_patch_clear(patch, clearance) for patch in _patches(one, other))
-    return _is_grid_clear(one, other, mount, clearance)
+    return _is_turned_box_clear(one, other, mount, clearance)
 
 
 class _Patch(NamedTuple):
@@ -64,14 +66,51 @@ def _touches(patch: _Patch, sector: Sector) -> bool:
     return is_begin_within or (sector.from_azimuth_deg - patch.begin_deg) % 360.0 <= span_deg
 
 
-def _is_grid_clear(one: Joints, other: Joints, mount: Mount, clearance: Clearance) -> bool:
-    return all(
-        clearance.is_clear(*mount.hinges.boresight(Joints(first_deg, second_deg)))
-        for first_deg in _between(one.first_deg, other.first_deg)
-        for second_deg in _between(one.second_deg, other.second_deg)
+def _is_turned_box_clear(one: Joints, other: Joints, mount: Mount, clearance: Clearance) -> bool:
+    """The same where the sky of a box is no box: by halves, until each lies in a clear patch.
+
+    Turning a joint by an angle moves the boresight by no more than that angle.
+    """
+    middle = Joints(
+        0.5 * (one.first_deg + other.first_deg), 0.5 * (one.second_deg + other.second_deg)
+    )
+    azimuth_deg, elevation_deg = mount.hinges.boresight(middle)
+    if not clearance.is_clear(azimuth_deg, elevation_deg):
+        return False
+    wide_deg = abs(one.first_deg - other.first_deg)
+    high_deg = abs(one.second_deg - other.second_deg)
+    radius_deg = 0.5 * (wide_deg + high_deg)
+    if radius_deg <= SMALLEST_DEG or _is_cap_clear(
+        azimuth_deg, elevation_deg, radius_deg, clearance
+    ):
+        return True
+    if wide_deg >= high_deg:
+        halves = (
+            Joints(middle.first_deg, one.second_deg),
+            Joints(middle.first_deg, other.second_deg),
+        )
+    else:
+        halves = (
+            Joints(one.first_deg, middle.second_deg),
+            Joints(other.first_deg, middle.second_deg),
+        )
+    return _is_turned_box_clear(one, halves[1], mount, clearance) and _is_turned_box_clear(
+        halves[0], other, mount, clearance
     )
 
 
-def _between(begin_deg: float, end_deg: float) -> list[float]:
-    steps = max(1, ceil(abs(end_deg - begin_deg) / GRID_DEG))
-    return [begin_deg + (end_deg - begin_deg) * step / steps for step in range(steps + 1)]
+def _is_cap_clear(
+    azimuth_deg: float, elevation_deg: float, radius_deg: float, clearance: Clearance
+) -> bool:
+    """Whether all directions this near to one are clear."""
+    if abs(elevation_deg) + radius_deg >= 90.0:
+        aside_deg = 180.0
+    else:
+        aside_deg = degrees(asin(sin(radians(radius_deg)) / cos(radians(elevation_deg))))
+    patch = _Patch(
+        azimuth_deg - aside_deg,
+        azimuth_deg + aside_deg,
+        elevation_deg - radius_deg,
+        elevation_deg + radius_deg,
+    )
+    return _is_patch_clear(patch, clearance)

@@ -9,15 +9,20 @@ from trunnion.track.path import Assignment
 class FindingKind(Enum):
     """What can be said about a contact before it happens."""
 
-    NEVER_VISIBLE = "never visible"
+    EMPTY = "empty"
     PAST = "past"
     NO_POSITION = "no position"
+    NEVER_VISIBLE = "never visible"
     GIVES_WAY = "gives way"
-    UNWINDS = "unwinds"
     OFF_TRAVEL = "off travel"
+    UNWINDS = "unwinds"
+    OBSTRUCTED = "obstructed"
     TOO_FAST = "too fast"
+    TOO_SUDDEN = "too sudden"
+    OUT_OF_REACH = "out of reach"
     NO_WAY = "no way"
     LATE = "late"
+    LEFT_OUT = "left out"
 
 
 @dataclass(frozen=True, slots=True)
@@ -39,7 +44,8 @@ class Forecast:
     """What one wanted contact will be like; times are UTC, None where there is nothing to point at.
 
     `worst_error_deg` is the largest angle between boresight and target once the mount has had time
-    to get there, `outside_beam_s` the time in which it is above half the beamwidth.
+    to get there, `outside_beam_s` the time in which it is above half the beamwidth, `worst_loss_db`
+    what the largest error costs in power.
     """
 
     contact: str
@@ -52,6 +58,7 @@ class Forecast:
     worst_error_deg: float
     outside_beam_s: float
     findings: tuple[Finding, ...]
+    worst_loss_db: float = 0.0
 
     @property
     def is_served(self) -> bool:
