@@ -6,7 +6,8 @@ import pytest
 
 from tests.service.stations import write_plan, write_station
 from trunnion.files.problems import FileProblems
-from trunnion.service.briefing import Briefing, BriefingOrder, brief
+from trunnion.service.briefing import Briefing, brief
+from trunnion.service.briefing_order import BriefingOrder
 from trunnion.sky.instants import parse_utc
 from trunnion.track.programme import FindingKind
 

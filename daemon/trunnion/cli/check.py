@@ -27,7 +27,8 @@ def check(
 
     Exit code 1 when something would fail.
     """
-    from trunnion.service.briefing import BriefingOrder, brief
+    from trunnion.service.briefing import brief
+    from trunnion.service.briefing_order import BriefingOrder
     from trunnion.service.clock import SystemClock
     from trunnion.service.drivers import build_driver
 

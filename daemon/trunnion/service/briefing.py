@@ -6,13 +6,11 @@ keep the others from being served; it is told with its reason.
 
 from collections.abc import Iterable
 from dataclasses import dataclass
-from pathlib import Path
-from typing import NamedTuple
 
 from trunnion.files.plan import Contact, load_plan
 from trunnion.files.station import StationFile, load_station
-from trunnion.mount.joints import Joints
 from trunnion.service.antenna import beam_of, flown_mount_of
+from trunnion.service.briefing_order import BriefingOrder
 from trunnion.service.clearance import clearance_of
 from trunnion.service.errors import ServiceError
 from trunnion.service.targets import TargetBook
@@ -24,18 +22,6 @@ from trunnion.track.day import plan_day
 from trunnion.track.path import Assignment
 from trunnion.track.programme import Forecast
 from trunnion.track.wanted import Wanted
-
-
-class BriefingOrder(NamedTuple):
-    """What to prepare: which files, from where the mount stands, from when on.
-
-    Without a plan path the station's own; without a place the mount's stow position.
-    """
-
-    station: Path
-    plan: Path | None
-    now_s: float
-    place: Joints | None = None
 
 
 @dataclass(frozen=True, slots=True)

@@ -5,12 +5,16 @@ A plan that cannot be read does not replace the one that is being flown.
 
 from collections.abc import Callable
 from pathlib import Path
+from typing import TYPE_CHECKING
 
 from trunnion.mount.joints import Joints
-from trunnion.service.briefing import Briefing, BriefingOrder, brief
+from trunnion.service.briefing_order import BriefingOrder, brief_elsewhere
 from trunnion.service.clock import Clock
 from trunnion.service.planner import Planner
 from trunnion.track.path import Assignment
+
+if TYPE_CHECKING:
+    from trunnion.service.briefing import Briefing
 
 
 class PlanKeeper:
@@ -23,7 +27,7 @@ class PlanKeeper:
         self._plan = plan
         self._clock = clock
         self._tell = tell
-        self._planner: Planner[BriefingOrder, Briefing] = Planner(brief)
+        self._planner: Planner[BriefingOrder, Briefing] = Planner(brief_elsewhere)
         self._is_wanted = True
         self._assignments: tuple[Assignment, ...] | None = None
         self._trouble: str | None = None
@@ -66,7 +70,7 @@ class PlanKeeper:
         """Drop what is being made."""
         self._planner.close()
 
-    def _take_up(self, briefing: Briefing) -> None:
+    def _take_up(self, briefing: "Briefing") -> None:
         self._assignments = briefing.assignments
         self._trouble = None
         for each in briefing.contacts:

@@ -17,7 +17,8 @@ from trunnion.safety.emergency import EmergencyStop
 from trunnion.safety.gate import Gate
 from trunnion.safety.world import World
 from trunnion.service.antenna import beam_of, flown_mount_of, mount_of
-from trunnion.service.briefing import Briefing, BriefingOrder, brief
+from trunnion.service.briefing import Briefing, brief
+from trunnion.service.briefing_order import BriefingOrder
 from trunnion.service.clearance import clearance_of
 from trunnion.service.clock import VirtualClock
 from trunnion.service.contact_log import ContactLog, Flown

@@ -1,0 +1,32 @@
+"""What is asked of a briefing, apart from it: whoever asks needs none of its tools.
+
+The daemon asks a child process; orbits, passes and paths are loaded there. In the daemon they are
+not needed before the first plan comes back, long after the first control turn.
+"""
+
+from pathlib import Path
+from typing import TYPE_CHECKING, NamedTuple
+
+from trunnion.mount.joints import Joints
+
+if TYPE_CHECKING:
+    from trunnion.service.briefing import Briefing
+
+
+class BriefingOrder(NamedTuple):
+    """What to prepare: which files, from where the mount stands, from when on.
+
+    Without a plan path the station's own; without a place the mount's stow position.
+    """
+
+    station: Path
+    plan: Path | None
+    now_s: float
+    place: Joints | None = None
+
+
+def brief_elsewhere(order: BriefingOrder) -> "Briefing":
+    """Prepare a plan, loading what that needs; raises FileProblems."""
+    from trunnion.service.briefing import brief
+
+    return brief(order)
