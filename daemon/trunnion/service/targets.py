@@ -12,6 +12,7 @@ from trunnion.files.target_text import is_builtin, target_file
 from trunnion.service.errors import ServiceError
 from trunnion.sky.builtin import builtin_target
 from trunnion.sky.elements import ElementSet, Satellite
+from trunnion.sky.ephemeris import Ephemeris, EphemerisCraft
 from trunnion.sky.look import Target
 from trunnion.sky.naming import BODY_NAMES, meaning
 from trunnion.sky.viewpoint import Viewpoint
@@ -65,7 +66,7 @@ class TargetBook:
         found = load_target_file(path)
         if isinstance(found, tuple):
             return Satellite(_newest(found, text), self._viewpoint)
-        return found
+        return EphemerisCraft(found, self._viewpoint) if isinstance(found, Ephemeris) else found
 
     def _builtin(self, text: str) -> Target | None:
         try:
