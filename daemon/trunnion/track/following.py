@@ -16,8 +16,8 @@ SLACK = 1e-6
 ROUNDINGS = (1e-9, 1e-7, 1e-5, 1e-3)
 """Degrees, and degrees per second, by which a state may miss a polygon."""
 
-SWING_DEG = 0.01
-"""How far a joint may swing out between two samples where it comes to rest at an end."""
+SWING_DEG = 1e-3
+"""How far out of the travel a step may look: planning again takes care of true swings."""
 
 
 def follow(

@@ -16,12 +16,16 @@ from trunnion.track.branches import IntArray, motions_on
 from trunnion.track.corridor import passable_states, walls
 from trunnion.track.course import Course
 from trunnion.track.cubic import refined
-from trunnion.track.following import SWING_DEG, catch_up, follow
+from trunnion.track.following import catch_up, follow
 from trunnion.track.keyhole import Keyhole, bisected, nearest_state, stride_for
 from trunnion.track.objective import Objective
 from trunnion.track.picture import best_second_deg
 from trunnion.track.polygon import Polygon, contains
 from trunnion.track.windows import Window, smooth_steps, windows_round
+
+TRIES = 3
+FINE_PARTS = 8
+ROUNDING_DEG = 1e-5
 
 EXACT_DEG = 1e-9
 """No further from the target's own angle, a joint counts as being there."""
@@ -40,28 +44,54 @@ class Aim(NamedTuple):
 
 
 def steer(course: Course, branch: IntArray, aim: Aim) -> Motions:
-    """Both joints at the samples of the course, within their limits, near to its branches."""
-    exact = motions_on(course.motions, branch, aim.mount.second)
-    limits = _kept_off_the_ends(exact.first_deg, aim.mount.first)
-    aim = aim._replace(mount=replace(aim.mount, first=limits))
-    first = _held(exact.first_deg, exact.first_rate_deg_s, limits)
-    is_smooth = smooth_steps(*first, limits, course.step_s) & (np.diff(branch) == 0)
-    for window in windows_round(is_smooth, limits, course.step_s):
+    """Both joints at the samples of the course, within their limits, near to its branches.
+
+    A joint that comes to rest at an end of its travel may swing out between two samples; then the
+    path is planned again with as much less travel.
+    """
+    mount = aim.mount
+    motions = _steered(course, branch, aim)
+    for _ in range(TRIES):
+        first, second = mount.first, mount.second
+        swing_deg = (
+            _swing_deg(motions.first_deg, motions.first_rate_deg_s, aim.mount.first, course.step_s),
+            _swing_deg(
+                motions.second_deg, motions.second_rate_deg_s, aim.mount.second, course.step_s
+            ),
+        )
+        if max(swing_deg) < ROUNDING_DEG:
+            break
+        mount = replace(
+            mount,
+            first=replace(first, margin_deg=first.margin_deg + 1.5 * swing_deg[0]),
+            second=replace(second, margin_deg=second.margin_deg + 1.5 * swing_deg[1]),
+        )
+        motions = _steered(course, branch, aim._replace(mount=mount))
+    return motions
+
+
+def _swing_deg(
+    angle_deg: FloatArray, rate_deg_s: FloatArray, limits: JointLimits, step_s: float
+) -> float:
+    """How far a joint leaves its travel, between its samples too."""
+    fine_deg, _ = refined(angle_deg, rate_deg_s, step_s, FINE_PARTS)
+    below_deg = limits.soft_lower_deg - float(fine_deg.min())
+    above_deg = float(fine_deg.max()) - limits.soft_upper_deg
+    return max(below_deg, above_deg, 0.0)
+
+
+def _steered(course: Course, branch: IntArray, aim: Aim) -> Motions:
+    mount, step_s = aim.mount, course.step_s
+    exact = motions_on(course.motions, branch, mount.second)
+    first = _held(exact.first_deg, exact.first_rate_deg_s, mount.first)
+    is_smooth = smooth_steps(*first, mount.first, step_s) & (np.diff(branch) == 0)
+    for window in windows_round(is_smooth, mount.first, step_s):
         _steer_first(*first, course, branch, window, aim)
-    angle_deg, rate = _second_for(first[0], exact, course, aim)
-    limits = _kept_off_the_ends(angle_deg, aim.mount.second)
-    second = _held(angle_deg, rate, limits)
-    is_smooth = smooth_steps(*second, limits, course.step_s)
-    for window in windows_round(is_smooth, limits, course.step_s):
-        _steer_second(*second, course.step_s, window, limits)
+    second = _held(*_second_for(first[0], exact, course, aim), mount.second)
+    is_smooth = smooth_steps(*second, mount.second, step_s)
+    for window in windows_round(is_smooth, mount.second, step_s):
+        _steer_second(*second, step_s, window, mount.second)
     return Motions(first[0], second[0], first[1], second[1])
-
-
-def _kept_off_the_ends(angle_deg: FloatArray, limits: JointLimits) -> JointLimits:
-    """Limits that leave room for swinging out between samples, if the joint is to touch an end."""
-    if angle_deg.min() > limits.soft_lower_deg and angle_deg.max() < limits.soft_upper_deg:
-        return limits
-    return replace(limits, margin_deg=limits.margin_deg + SWING_DEG)
 
 
 def _held(
