@@ -2,6 +2,7 @@
 
 from collections.abc import Iterator
 from pathlib import Path
+from textwrap import dedent
 from typing import Any
 
 import pytest
@@ -13,6 +14,7 @@ from trunnion_drivers.bench.modbus_frames import Rtu, Tcp
 from trunnion_drivers.bench.modbus_peer import ModbusPeer
 from trunnion_drivers.conformance.kit import DriverConformance
 from trunnion_drivers.conformance.rig import Rig
+from trunnion_drivers.dialect.yaml_lines import read_lined_yaml
 from trunnion_drivers.interface.errors import BadSettings
 from trunnion_drivers.modbus.driver import ModbusDriver
 from trunnion_drivers.modbus.settings import ModbusSettings
@@ -91,3 +93,16 @@ class TestConformance(DriverConformance):
 def test_what_is_wrong_with_a_map_is_told(change: dict[str, Any], reason: str) -> None:
     with pytest.raises(BadSettings, match=reason):
         ModbusDriver.from_settings({"url": "/dev/null", **POSITION, **change}, FACTS, HandClock())
+
+
+def test_the_map_in_the_handbook_is_one(tmp_path: Path) -> None:
+    handbook = (Path(__file__).parents[2] / "drivers" / "README.md").read_text()
+    block = handbook[handbook.index("    driver:\n      kind: modbus") :].partition("\n\n")[0]
+    path = tmp_path / "driver.yaml"
+    path.write_text(dedent(block))
+    section = read_lined_yaml(path, "driver").value
+    assert isinstance(section, dict)
+    settings = dict(section["driver"])
+    assert settings.pop("kind") == "modbus"
+    driver = ModbusDriver.from_settings(settings, FACTS, HandClock())
+    assert driver.capabilities.reports_stop_input
