@@ -25,8 +25,8 @@ from trunnion.service.link.threaded import ThreadedLink
 from trunnion.service.records.writer import RecordWriter
 
 PERIOD_S = 0.1
-BEATS = 120
-STRETCHES = 5
+BEATS = 250
+STRETCHES = 4
 HANDOVERS = 3000
 STOPS = 1000
 LONGEST_STOP_S = 0.005
