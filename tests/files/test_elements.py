@@ -59,7 +59,9 @@ def test_a_folder_gives_the_sets_of_its_element_files(tmp_path: Path) -> None:
 
 
 def test_a_folder_without_element_files_is_told(tmp_path: Path) -> None:
-    assert problems(tmp_path) == [(None, "expected .tle or .txt files in the folder, got none")]
+    assert problems(tmp_path) == [
+        (None, "expected element files in the folder (.tle, .txt, .omm, …), got none")
+    ]
 
 
 def test_a_file_without_elements_and_a_missing_one_are_told(tmp_path: Path) -> None:

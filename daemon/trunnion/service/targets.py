@@ -104,7 +104,7 @@ def _is_called(element_set: ElementSet, name: str) -> bool:
 
 def _newest(sets: Iterable[ElementSet], text: str) -> ElementSet:
     """Return the newest set of the one object that they are all of."""
-    by_number = {each.catalogue_number: each for each in sorted(sets, key=_epoch)}
+    by_number = {_identity(each): each for each in sorted(sets, key=_epoch)}
     if len(by_number) != 1:
         listed = ", ".join(f"{each.name} ({number})" for number, each in by_number.items())
         raise UnknownTarget(
@@ -112,6 +112,11 @@ def _newest(sets: Iterable[ElementSet], text: str) -> ElementSet:
         )
     (newest,) = by_number.values()
     return newest
+
+
+def _identity(element_set: ElementSet) -> int | str:
+    """The catalogue number, or the name of what has none."""
+    return element_set.catalogue_number or element_set.name
 
 
 def _epoch(element_set: ElementSet) -> float:

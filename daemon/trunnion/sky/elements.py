@@ -1,7 +1,8 @@
 """Satellites by their orbit elements: SGP4, seen from a viewpoint."""
 
 from dataclasses import dataclass, field
-from typing import Any
+from math import radians
+from typing import Any, NamedTuple
 
 import numpy as np
 from sgp4.api import SGP4_ERRORS, WGS72, Satrec
@@ -19,16 +20,32 @@ from trunnion.sky.site import Vector
 from trunnion.sky.topocentric import topocentric_many
 from trunnion.sky.viewpoint import Viewpoint
 
+SGP4_EPOCH_JD = 2433281.5
+"""The midnight from which SGP4 counts the days of an epoch: 1949-12-31."""
+
+
+class MeanElements(NamedTuple):
+    """The elements that SGP4 takes, where they did not come as two lines."""
+
+    bstar: float
+    eccentricity: float
+    argument_of_perigee_deg: float
+    inclination_deg: float
+    mean_anomaly_deg: float
+    mean_motion_rad_min: float
+    node_deg: float
+
 
 @dataclass(frozen=True, slots=True)
 class ElementSet:
-    """Two-line elements as they were issued, checked by whoever read them."""
+    """Elements as they were issued, checked by whoever read them: two lines, or mean elements."""
 
     name: str
     catalogue_number: int
     epoch_utc_s: float
-    line_1: str
-    line_2: str
+    line_1: str = ""
+    line_2: str = ""
+    mean: MeanElements | None = None
 
     def age_days(self, utc_s: float) -> float:
         """Days from the epoch to this instant; negative before the epoch."""
@@ -43,7 +60,7 @@ class Propagator:
 
     def __init__(self, element_set: ElementSet, gravity: int = WGS72) -> None:
         self._element_set = element_set
-        self._satrec: Any = Satrec.twoline2rv(element_set.line_1, element_set.line_2, gravity)
+        self._satrec: Any = _satrec(element_set, gravity)
 
     def at(self, jd_midnight: float, fraction: float) -> tuple[Vector, Vector]:
         """Position (km) and velocity (km/s); raises NoPosition by SGP4's own error code.
@@ -67,6 +84,29 @@ class Propagator:
     def _sentence(self, error: int) -> str:
         reason = SGP4_ERRORS.get(error, f"error {error}")
         return f"{self._element_set.name}: expected an orbit, got none from SGP4: {reason}"
+
+
+def _satrec(element_set: ElementSet, gravity: int) -> Any:
+    mean = element_set.mean
+    if mean is None:
+        return Satrec.twoline2rv(element_set.line_1, element_set.line_2, gravity)
+    satrec = Satrec()
+    satrec.sgp4init(
+        gravity,
+        "i",  # the improved mode, which `twoline2rv` takes too
+        0,  # SGP4 does not look at the catalogue number, and not all have room here
+        element_set.epoch_utc_s / SECONDS_A_DAY + (UNIX_EPOCH_JD - SGP4_EPOCH_JD),
+        mean.bstar,
+        0.0,  # the derivatives of the mean motion are not for SGP4
+        0.0,
+        mean.eccentricity,
+        radians(mean.argument_of_perigee_deg),
+        radians(mean.inclination_deg),
+        radians(mean.mean_anomaly_deg),
+        mean.mean_motion_rad_min,
+        radians(mean.node_deg),
+    )
+    return satrec
 
 
 @dataclass(frozen=True, slots=True, eq=False)
