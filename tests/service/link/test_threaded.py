@@ -12,7 +12,7 @@ from trunnion.safety.verdict import Halt, Move
 from trunnion.service.clock import SystemClock
 from trunnion.service.link.status import LinkState
 from trunnion.service.link.threaded import ThreadedLink
-from trunnion_drivers.interface.errors import LinkLost
+from trunnion_drivers.interface.errors import Garbled, LinkLost
 from trunnion_drivers.interface.values import DriverMotion
 
 POLL_S = 0.005
@@ -160,3 +160,13 @@ def test_a_driver_that_hangs_does_not_keep_anybody_from_ending(
     begin_s = time.monotonic()
     link.close()
     assert time.monotonic() - begin_s < 20.0
+
+
+def test_a_change_of_the_link_is_logged_once_with_its_reason(
+    driver: SlowDriver, link: ThreadedLink, caplog: pytest.LogCaptureFixture
+) -> None:
+    caplog.set_level("INFO")
+    driver.fail("read", *[Garbled("noise")] * 3)
+    until(lambda: link.status.failures == 3 and link.status.state is LinkState.UP)
+    until(lambda: len(caplog.messages) == 2)
+    assert caplog.messages == ["the mount's answer cannot be trusted: noise", "the mount answers"]

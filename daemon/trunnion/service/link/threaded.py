@@ -1,5 +1,6 @@
 """The link with a thread of its own, so that a slow mount never makes a control turn late."""
 
+import logging
 from contextlib import suppress
 from queue import Empty, SimpleQueue
 from threading import Thread
@@ -8,9 +9,11 @@ from trunnion.mount.joints import Reading
 from trunnion.safety.verdict import Order
 from trunnion.service.clock import Clock
 from trunnion.service.link.outbox import Outbox
-from trunnion.service.link.status import LinkStatus
+from trunnion.service.link.status import LinkState, LinkStatus
 from trunnion.service.link.wire import Wire
 from trunnion_drivers.interface.driver import Driver
+
+_log = logging.getLogger(__name__)
 
 LONGEST_GOODBYE_S = 3.0
 """How long closing waits for a driver that hangs in a call."""
@@ -28,6 +31,7 @@ class ThreadedLink:
         self._wire = Wire(driver, clock, self._outbox)
         self._seen_connection = 0
         self._news: SimpleQueue[None] = SimpleQueue()  # may be put to by a signal in mid-put
+        self._logged = LinkState.CLOSED
         self._is_closing = False
         self._thread = Thread(target=self._run, name="link", daemon=True)
         self._thread.start()
@@ -77,10 +81,21 @@ class ThreadedLink:
             while not self._is_closing:
                 self._wire.send()
                 self._wire.look()
+                self._log_a_change()
                 with suppress(Empty):
                     self._news.get(timeout=self._poll_s)
         finally:
             self._wire.close()
+
+    def _log_a_change(self) -> None:
+        status = self._wire.status
+        if status.state is self._logged:
+            return
+        self._logged = status.state
+        if status.state is LinkState.UP:
+            _log.info("%s", status.state.value)
+        else:
+            _log.warning("%s: %s", status.state.value, status.last_error)
 
     def _wake(self) -> None:
         if self._news.empty():
