@@ -12,6 +12,7 @@ from trunnion.mount.sphere import separation_deg
 from trunnion.sky.look import Target
 from trunnion.track.day import plan_day
 from trunnion.track.programme import FindingKind, Programme
+from trunnion.track.transit import transit, transit_time_s
 from trunnion.track.wanted import Wanted
 
 
@@ -117,3 +118,35 @@ def test_programmes_travel_between_processes() -> None:
     utc_s = programme.assignments[0].begin_s + 37.7
     assert there.assignments[0].path.at(utc_s) == programme.assignments[0].path.at(utc_s)
     assert there.forecasts == programme.forecasts
+
+
+def test_a_less_wanted_contact_ends_early_enough_for_the_next_one() -> None:
+    low = wanted(Overflight(48.1, 17.3), 60.0, 400.0, priority=1, name="low")
+    high = wanted(Overflight(48.1, 193.1), 400.0, 740.0, priority=2, name="high")
+    programme = plan(low, high)
+    first, second = programme.assignments
+    assert (first.contact, second.contact) == ("low", "high")
+    assert second.begin_s == START_S + 400.0
+    assert FindingKind.LATE not in kinds(programme, 1)
+    assert FindingKind.GIVES_WAY in kinds(programme, 0)
+    way = transit(
+        first.path.at(first.end_s).joints,
+        second.path.at(second.begin_s).joints,
+        mount(),
+        CLEARANCE,
+    )
+    slew_s = transit_time_s(first.path.at(first.end_s).joints, way, mount())
+    assert first.end_s + slew_s == pytest.approx(second.begin_s, abs=0.05)
+
+
+def test_among_equals_the_next_one_begins_when_the_mount_has_got_there() -> None:
+    early = wanted(Overflight(48.1, 17.3), 60.0, 400.0, name="early")
+    late = wanted(Overflight(48.1, 193.1), 400.0, 740.0, name="late")
+    programme = plan(early, late)
+    first, second = programme.assignments
+    assert first.end_s == START_S + 400.0
+    assert second.begin_s > START_S + 401.0
+    assert FindingKind.LATE in kinds(programme, 1)
+    begins, place = second.path.at(second.begin_s).joints, first.path.at(first.end_s).joints
+    slew_s = transit_time_s(place, transit(place, begins, mount(), CLEARANCE), mount())
+    assert first.end_s + slew_s == pytest.approx(second.begin_s, abs=0.05)

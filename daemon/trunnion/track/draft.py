@@ -60,6 +60,15 @@ class Draft:
             )
         self.stretches = left
 
+    def end_early(self, early: Assignment, other: str) -> None:
+        """End the last assignment early, so that a more wanted contact begins in time."""
+        lost_s = self.assignments[-1].end_s - early.end_s
+        span = (early.end_s, self.assignments[-1].end_s)
+        self.assignments[-1] = early
+        self.outside_beam_s += lost_s
+        sentence = f"it ends {lost_s:.0f} s early, for the mount to be at {other} in time"
+        self.find(FindingKind.GIVES_WAY, sentence, span)
+
     def find(
         self,
         kind: FindingKind,

@@ -7,6 +7,7 @@ from trunnion.mount.joints import Joints, Motion
 from trunnion.track.beam import Beam
 from trunnion.track.course import Course
 from trunnion.track.draft import Draft
+from trunnion.track.handover import begin_late, end_early
 from trunnion.track.keeping_clear import clear_parts
 from trunnion.track.options import Leg, Option
 from trunnion.track.outcome import outcome
@@ -16,7 +17,8 @@ from trunnion.track.planned_arrays import planned_path
 from trunnion.track.programme import FindingKind
 from trunnion.track.reasons import Reason, reason_for
 from trunnion.track.steering import Aim, steer
-from trunnion.track.transit import NoWay, transit, transit_time_s
+from trunnion.track.transit import NoWay
+from trunnion.track.wanted import Wanted
 
 
 @dataclass
@@ -27,6 +29,17 @@ class Serving:
     beam: Beam
     place: Joints
     free_s: float
+    last: Draft | None = None
+
+    def make_room(self, wanted: Wanted, begins: Joints, begin_s: float) -> None:
+        """Have a less wanted contact just before end early enough for this one; raises NoWay."""
+        if self.last is None or self.last.wanted.priority >= wanted.priority:
+            return
+        before = self.last.assignments[-1]
+        early = end_early(before, begins, begin_s, self.aim.mount, self.aim.clearance)
+        if early.end_s < before.end_s:
+            self.last.end_early(early, wanted.contact)
+            self.place, self.free_s = early.path.at(early.end_s).joints, early.end_s
 
 
 def serve(draft: Draft, course: Course, option: Option, serving: Serving) -> None:
@@ -57,24 +70,23 @@ def _fly(draft: Draft, path: PlannedPath, span: tuple[float, float], serving: Se
     """Take a part of a path into the programme, and note what will come of it."""
     aim, beam, wanted = serving.aim, serving.beam, draft.wanted
     begin_s, end_s = span
-    begins = path.at(begin_s).joints
     try:
-        way = transit(serving.place, begins, aim.mount, aim.clearance)
+        serving.make_room(wanted, path.at(begin_s).joints, begin_s)
+        there_s = begin_late(path, span, serving.place, serving.free_s, aim.mount, aim.clearance)
     except NoWay as none:
         draft.find(FindingKind.NO_WAY, str(none), span)
         return
-    arrives_s = serving.free_s + transit_time_s(serving.place, way, aim.mount)
-    late_s = min(max(0.0, arrives_s - begin_s), end_s - begin_s)
-    if late_s > 0.0:
-        draft.find(FindingKind.LATE, f"the mount arrives {late_s:.0f} s late", span)
-        draft.outside_beam_s += late_s
-    if begin_s + late_s < end_s:
-        comes = outcome(path, (begin_s + late_s, end_s), Motion(*begins), aim.mount, beam)
-        draft.note(comes, beam)
+    if there_s > begin_s:
+        draft.find(FindingKind.LATE, f"the mount arrives {there_s - begin_s:.0f} s late", span)
+        draft.outside_beam_s += there_s - begin_s
+    if there_s >= end_s:
+        return
+    begins = Motion(*path.at(there_s).joints)
+    draft.note(outcome(path, (there_s, end_s), begins, aim.mount, beam), beam)
     draft.assignments.append(
-        Assignment(wanted.contact, wanted.target, begin_s, end_s, path, wanted.priority)
+        Assignment(wanted.contact, wanted.target, there_s, end_s, path, wanted.priority)
     )
-    serving.place, serving.free_s = path.at(end_s).joints, end_s
+    serving.place, serving.free_s, serving.last = path.at(end_s).joints, end_s, draft
 
 
 def _say_gap(
