@@ -10,7 +10,7 @@ import pytest
 
 from tests.service.records.story import UTC_S, sample, start
 from trunnion.service.clock import VirtualClock
-from trunnion.service.records.queries import Records
+from trunnion.service.records.queries import NoRecords, Records
 from trunnion.service.records.values import EventKind, Outcome
 from trunnion.service.records.writer import RecordWriter
 
@@ -172,3 +172,30 @@ def checkpoint(path: Path) -> None:
     connection = sqlite3.connect(path)
     connection.execute("PRAGMA wal_checkpoint(TRUNCATE)")
     connection.close()
+
+
+def test_a_second_damaged_file_does_not_replace_the_first_one(path: Path) -> None:
+    for content in (b"first garbage " * 900, b"second garbage " * 900):
+        path.write_bytes(content)
+        writer = RecordWriter(path, VirtualClock(UTC_S))
+        writer.flush()
+        writer.flush()
+        writer.close()
+    kept = [path.with_name(f"{path.name}.damaged-{number}").read_bytes() for number in (1, 2)]
+    assert [content[:5] for content in kept] == [b"first", b"secon"]
+
+
+def test_the_records_of_a_later_version_are_left_alone(path: Path) -> None:
+    writer = RecordWriter(path, VirtualClock(UTC_S))
+    writer.begin_contact(start())
+    writer.close()
+    later = sqlite3.connect(path)
+    later.execute("PRAGMA user_version = 99")
+    later.close()
+    writer = RecordWriter(path, VirtualClock(UTC_S))
+    writer.sample(sample())
+    writer.flush()
+    assert "version 1 or older, got 99" in str(writer.trouble)
+    writer.close()
+    with pytest.raises(NoRecords, match="got 99"):
+        Records(path)
