@@ -9,7 +9,7 @@ import numpy as np
 import pytest
 
 from tests.published.reference_sky import EARTH, EPHEMERIS, apart_arcsec, de421, skyfield_look
-from trunnion.sky.bodies import SeriesBody
+from trunnion.sky.bodies import SERIES_LIMIT_ARCSEC, SeriesBody
 from trunnion.sky.celestial import Celestial
 from trunnion.sky.course import course_at
 from trunnion.sky.instants import parse_utc
@@ -24,17 +24,6 @@ from trunnion.sky.viewpoint import Viewpoint
 SITES = (Site(52.347, 4.913, 27.4), Site(-33.871, 151.207, 61.9), Site(78.92, -170.3, 138.0))
 
 FILE_ARCSEC = 0.1
-SERIES_ARCSEC = {
-    Body.SUN: 1.0,
-    Body.MOON: 15.0,
-    Body.MERCURY: 2.0,
-    Body.VENUS: 11.0,
-    Body.MARS: 52.0,
-    Body.JUPITER: 60.0,
-    Body.SATURN: 95.0,
-    Body.URANUS: 75.0,
-    Body.NEPTUNE: 8.0,
-}
 DE421_NAMES = {
     Body.MERCURY: "mercury",
     Body.VENUS: "venus",
@@ -64,7 +53,7 @@ def apart_from_skyfield(place: Place, body: Body, site: Site, utc_s: FloatArray)
 @pytest.mark.parametrize("body", Body)
 def test_the_series_keep_the_limits_that_the_user_is_told(body: Body) -> None:
     place = SeriesBody(body)
-    assert apart_from_skyfield(place, body, SITES[0], instants(4001)) < SERIES_ARCSEC[body]
+    assert apart_from_skyfield(place, body, SITES[0], instants(4001)) < SERIES_LIMIT_ARCSEC[body]
 
 
 @pytest.mark.parametrize("site", SITES, ids=str)

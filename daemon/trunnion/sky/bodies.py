@@ -25,6 +25,19 @@ _PLAN94 = {
     Body.NEPTUNE: 8,
 }
 
+SERIES_LIMIT_ARCSEC = {
+    Body.SUN: 1.0,
+    Body.MOON: 15.0,
+    Body.MERCURY: 2.0,
+    Body.VENUS: 11.0,
+    Body.MARS: 52.0,
+    Body.JUPITER: 60.0,
+    Body.SATURN: 95.0,
+    Body.URANUS: 75.0,
+    Body.NEPTUNE: 8.0,
+}
+"""Largest difference of the apparent place from the JPL ephemeris DE421 between 2000 and 2050."""
+
 SLOW_NODE_DAYS = 0.5
 MOON_NODE_DAYS = 0.125
 

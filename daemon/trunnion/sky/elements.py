@@ -1,7 +1,7 @@
 """Satellites by their orbit elements: SGP4, seen from a viewpoint."""
 
 from dataclasses import dataclass, field
-from math import radians
+from math import radians, tau
 from typing import Any, NamedTuple
 
 import numpy as np
@@ -81,6 +81,11 @@ class Propagator:
             raise NoPosition(self._sentence(int(errors[np.flatnonzero(errors)[0]])))
         return positions_km.T, velocities_km_s.T
 
+    @property
+    def period_min(self) -> float:
+        """Minutes of a revolution, by the mean motion."""
+        return tau / float(self._satrec.no_kozai)
+
     def _sentence(self, error: int) -> str:
         reason = SGP4_ERRORS.get(error, f"error {error}")
         return f"{self._element_set.name}: expected an orbit, got none from SGP4: {reason}"
@@ -127,6 +132,11 @@ class Satellite:
     def name(self) -> str:
         """The satellite's name, or its catalogue number where it has none."""
         return self.element_set.name
+
+    @property
+    def period_min(self) -> float:
+        """Minutes of a revolution, by the mean motion."""
+        return self._propagator.period_min
 
     def look(self, utc_s: float) -> Look:
         """Where it stands; raises NoPosition."""
