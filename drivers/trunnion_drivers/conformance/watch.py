@@ -38,10 +38,15 @@ def move_and_read(rig: Rig, goal: DriverMotion) -> None:
     rig.driver.read()
 
 
-def motion_to(home: DriverMotion, joint: int, by_deg: float) -> DriverMotion:
+def moved(home: DriverMotion, joint: int, by_deg: float) -> DriverMotion:
     """A goal at rest, this far from home in one joint."""
-    values = list(home)
-    values[joint] += by_deg
+    return replaced(home, joint, home[joint] + by_deg)
+
+
+def replaced(motion: DriverMotion, place: int, value: float) -> DriverMotion:
+    """The same motion with another value in one place."""
+    values = list(motion)
+    values[place] = value
     return DriverMotion(*values)
 
 
