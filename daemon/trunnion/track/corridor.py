@@ -16,11 +16,8 @@ from trunnion.track.polygon import Polygon, clipped, rectangle, sheared, swept
 
 State = tuple[float, float]
 
-RESERVE = 1e-3
+RESERVE = 2e-4
 """Share of the acceleration that is kept to correct for rounding along the edge of the polygons."""
-
-TANGENTS = tuple((2 * tangent + 1) / 16 for tangent in range(8))
-"""Where the tangents touch, as shares of the rate that a joint gains in a step."""
 
 
 def passable_states(
@@ -31,13 +28,13 @@ def passable_states(
     The walls are angles at instants `step_s` apart.
     """
     rate, acceleration = limits.rate_deg_s, limits.acceleration_deg_s2 * (1.0 - RESERVE)
-    polygon = _stoppable(rectangle(lower_deg[-1], upper_deg[-1], -rate, rate), limits, step_s)
+    polygon = rectangle(lower_deg[-1], upper_deg[-1], -rate, rate)
     backwards = [polygon]
     for index in range(len(lower_deg) - 2, -1, -1):
         back = sheared(polygon, -step_s)
         wide = swept(back, 0.5 * acceleration * step_s * step_s, -acceleration * step_s)
         slow = clipped(wide, 1, -rate, rate)
-        polygon = _stoppable(clipped(slow, 0, lower_deg[index], upper_deg[index]), limits, step_s)
+        polygon = clipped(slow, 0, lower_deg[index], upper_deg[index])
         if not polygon:
             return None
         backwards.append(polygon)
@@ -52,27 +49,3 @@ def walls(
         np.maximum(goal_deg - half_deg, limits.soft_lower_deg),
         np.minimum(goal_deg + half_deg, limits.soft_upper_deg),
     )
-
-
-def _stoppable(polygon: Polygon, limits: JointLimits, step_s: float) -> Polygon:
-    """The states from which the joint does not swing out of its travel within a step.
-
-    They lie between two parabolas, angle ± rate² / 2a, which are cut out by their tangents.
-    """
-    acceleration = limits.acceleration_deg_s2
-    swing_deg = acceleration * step_s * step_s / 8.0
-    is_far = all(
-        limits.soft_lower_deg + swing_deg <= angle <= limits.soft_upper_deg - swing_deg
-        for angle, _ in polygon
-    )
-    if is_far:
-        return polygon
-    for share in TANGENTS:
-        rate = share * acceleration * step_s
-        beyond_deg = rate * rate / (2.0 * acceleration)
-        turned = sheared(polygon, rate / acceleration)
-        within = clipped(
-            turned, 0, limits.soft_lower_deg - beyond_deg, limits.soft_upper_deg + beyond_deg
-        )
-        polygon = sheared(within, -rate / acceleration)
-    return polygon

@@ -10,10 +10,10 @@ from trunnion.mount.hinges import Hinges
 from trunnion.sky.errors import NoPosition
 from trunnion.sky.look import Looks, Target
 
-STEP_S = 0.5
+STEP_S = 0.25
 """Spacing of the samples; a low pass needs no finer one, see the tests of planned paths."""
 
-MOST_STEPS = 2400
+MOST_STEPS = 4800
 """Longer contacts are of slower targets: they are sampled more widely."""
 
 

@@ -28,7 +28,7 @@ LEVEL_SHARE = 0.002
 LEVEL_DEG = 1e-5
 """How well the least level is found: this share of it, and never better than this angle."""
 
-SPLITS = (0.5, 0.4, 0.6, 0.3, 0.7)
+SPLITS = (0.5, 0.3, 0.7, 0.15, 0.85, 0.05, 0.95)
 """Which share of the time outside the beam lies after the middle of the keyhole."""
 
 
@@ -49,14 +49,13 @@ class Keyhole:
         start = self.start or nearest_state(states[0], goals[0])
         return list(follow(start, goals, states, self.mount.first, self.step_s))
 
-    @property
-    def is_passable(self) -> bool:
-        """Whether there is any way at all from its start."""
-        return self._passable(np.full(len(self.branch), 180.0)) is not None
+    def can_keep(self, level_deg: float) -> bool:
+        """Whether there is a way with no larger error than this (180: any way at all)."""
+        return self._passes(level_deg, np.ones(len(self.branch), dtype=bool))
 
     def _least(self, objective: Objective, half_beam_deg: float) -> list[Polygon]:
         whole = np.ones(len(self.branch), dtype=bool)
-        if objective is Objective.TIME_OUTSIDE_BEAM and not self._passes(half_beam_deg, whole):
+        if objective is Objective.TIME_OUTSIDE_BEAM and not self.can_keep(half_beam_deg):
             gap = self._shortest_gap(half_beam_deg)
             return self._least_within(gap, half_beam_deg)
         return self._least_within(whole, 0.0)
@@ -138,14 +137,21 @@ def stride_for(count: int) -> int:
 
 
 def bisected(
-    is_enough: Callable[[float], bool], low: float, high: float, guess: float = 1.0
+    is_enough: Callable[[float], bool],
+    low: float,
+    high: float,
+    guess: float = 1.0,
+    share: float = LEVEL_SHARE,
 ) -> float:
-    """About the least value that is enough, looked for from `guess` on; `high` is taken to be."""
+    """About the least value that is enough, to a share of it; `high` is taken to be enough.
+
+    It is looked for from `guess` on.
+    """
     guess = max(2.0 * low, guess)
     while guess < high and not is_enough(guess):
         low, guess = guess, 2.0 * guess
     high = min(guess, high)
-    while high - low > max(LEVEL_SHARE * high, LEVEL_DEG):
+    while high - low > max(share * high, LEVEL_DEG):
         tried = 0.5 * (low + high)
         if is_enough(tried):
             high = tried

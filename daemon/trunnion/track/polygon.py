@@ -37,9 +37,11 @@ def swept(polygon: Polygon, dx: float, dy: float) -> Polygon:
 
 def clipped(polygon: Polygon, axis: int, low: float, high: float) -> Polygon:
     """The part of the polygon with its coordinate `axis` between these bounds."""
-    for bound, sign in ((low, 1.0), (high, -1.0)):
-        if any(sign * corner[axis] < sign * bound for corner in polygon):
-            polygon = _cut(polygon, axis, bound, sign)
+    values = [corner[axis] for corner in polygon]
+    if values and min(values) < low:
+        polygon = _cut(polygon, axis, low, 1.0)
+    if values and max(values) > high and polygon:
+        polygon = _cut(polygon, axis, high, -1.0)
     return polygon
 
 
@@ -100,10 +102,9 @@ def _cut(polygon: Polygon, axis: int, bound: float, sign: float) -> Polygon:
 
 
 def _without_repeats(polygon: Polygon) -> Polygon:
-    kept: Polygon = []
-    for corner in polygon:
-        if not kept or abs(corner[0] - kept[-1][0]) + abs(corner[1] - kept[-1][1]) > TINY:
-            kept.append(corner)
-    if len(kept) > 1 and abs(kept[0][0] - kept[-1][0]) + abs(kept[0][1] - kept[-1][1]) <= TINY:
-        kept.pop()
-    return kept
+    kept = [
+        corner
+        for corner, before in zip(polygon, polygon[-1:] + polygon[:-1], strict=True)
+        if abs(corner[0] - before[0]) + abs(corner[1] - before[1]) > TINY
+    ]
+    return kept or polygon[:1]

@@ -23,7 +23,10 @@ from trunnion.track.picture import best_second_deg
 from trunnion.track.polygon import Polygon, contains
 from trunnion.track.windows import Window, smooth_steps, windows_round
 
-TRIES = 3
+FINE_DEG = 0.1
+"""Errors below this are worth steps of a single sample."""
+
+TRIES = 6
 FINE_PARTS = 8
 ROUNDING_DEG = 1e-5
 
@@ -63,8 +66,8 @@ def steer(course: Course, branch: IntArray, aim: Aim) -> Motions:
             break
         mount = replace(
             mount,
-            first=replace(first, margin_deg=first.margin_deg + 1.5 * swing_deg[0]),
-            second=replace(second, margin_deg=second.margin_deg + 1.5 * swing_deg[1]),
+            first=replace(first, margin_deg=first.margin_deg + 2.0 * swing_deg[0]),
+            second=replace(second, margin_deg=second.margin_deg + 2.0 * swing_deg[1]),
         )
         motions = _steered(course, branch, aim._replace(mount=mount))
     return motions
@@ -109,25 +112,29 @@ def _steer_first(
     branch: IntArray,
     window: Window,
     aim: Aim,
+    stride: int | None = None,
 ) -> None:
-    """Replace the samples of a window by the best way through it."""
+    """Replace the samples of a window by the best way through it, stepping by `stride` samples."""
     begin, last = window
-    stride = stride_for(last - begin)
-    last = begin + (last - begin) // stride * stride
-    picked = slice(begin, last + 1, stride)
+    step = stride or stride_for(last - begin)
+    last = begin + (last - begin) // step * step
+    picked = slice(begin, last + 1, step)
     start = (float(first_deg[begin]), float(first_rate[begin])) if begin > 0 else None
     keyhole = Keyhole(
         Motions(*(field[picked] for field in course.motions)),
         branch[picked],
         aim.mount,
-        stride * course.step_s,
+        step * course.step_s,
         start,
     )
-    if begin > 0 and not keyhole.is_passable:  # it would have had to leave the target even earlier
+    if begin > 0 and not keyhole.can_keep(180.0):  # it has to leave the target even earlier
         _steer_first(first_deg, first_rate, course, branch, (0, last), aim)
         return
+    if stride is None and step > 1 and keyhole.can_keep(FINE_DEG):
+        _steer_first(first_deg, first_rate, course, branch, window, aim, stride=1)
+        return
     way = np.array(keyhole.way(aim.objective, aim.half_beam_deg))
-    angle, rate = refined(way[:, 0], way[:, 1], stride * course.step_s, stride)
+    angle, rate = refined(way[:, 0], way[:, 1], step * course.step_s, step)
     first_deg[begin : last + 1], first_rate[begin : last + 1] = angle, rate
     _catch_up_after(last, first_deg, first_rate, aim.mount.first, course.step_s)
 
@@ -164,7 +171,7 @@ def _steer_second(
         is_on_the_way = begin == 0 or states is None or contains(states[0], goals[0])
         return states if is_on_the_way else None
 
-    off_deg = bisected(lambda each: states_within(each) is not None, 0.0, 360.0, SMALL_DEG)
+    off_deg = bisected(lambda each: states_within(each) is not None, 0.0, 360.0, SMALL_DEG, 0.05)
     states = states_within(off_deg)
     if states is None:  # it would have had to leave its goals even earlier
         _steer_second(second_deg, second_rate, step_s, (0, last), limits)
