@@ -11,8 +11,11 @@ from trunnion_drivers.control.command import Turn
 from trunnion_drivers.control.on_off import OnOffLaw, OnOffSettings
 from trunnion_drivers.control.position import PositionLaw, PositionSettings
 from trunnion_drivers.control.rate import RateLaw, RateSettings
-from trunnion_drivers.interface.values import DriverMotion, JointFacts, MountFacts
+from trunnion_drivers.control.steering import PositionSteering
+from trunnion_drivers.interface.errors import NoReply
+from trunnion_drivers.interface.values import DriverMotion, DriverReading, JointFacts, MountFacts
 from trunnion_drivers.simulator.driver import SimulatorDriver
+from trunnion_drivers.simulator.faults import Faults, LinkFault, healthy
 
 SWITCHED = MountFacts(
     JointFacts(-263.7, 271.3, 2.5, 8.0), JointFacts(1.7, 91.9, 2.3, 8.0), 17.3, 61.9
@@ -66,6 +69,32 @@ def test_a_coarse_controller_is_sent_whole_steps_only_when_they_change() -> None
     score = follow(coarse, 0.23)
     assert abs(score.mean_deg) < 0.05
     assert score.rms_deg < 0.5 / sqrt(12) + 0.05
+
+
+def test_a_coarse_order_that_may_be_lost_is_repeated() -> None:
+    steering = PositionSteering(PositionSettings(step_deg=0.5, follows_rate=False), FACTS)
+    goal, reading = DriverMotion(20.1, 61.9, 0.0, 0.0), DriverReading(10.0, 17.3, 61.9)
+    told = [steering.steer(10.0 + 0.1 * tick, goal, reading) is not None for tick in range(25)]
+    assert [tick for tick, was_told in enumerate(told) if was_told] == [0, 10, 20]
+    steering.forget(12.5)
+    assert steering.steer(12.5, goal, reading) == DriverMotion(20.0, 62.0, 0.0, 0.0)
+
+
+def test_an_order_that_failed_is_said_again() -> None:
+    clock = HandClock()
+    settings: dict[str, Any] = {"follows_rate": False, "control": {"step_deg": 0.5}}
+    driver = SimulatorDriver.from_settings(settings, FACTS, clock)
+    driver.open()
+    driver.read()
+    driver.inject(lambda _: Faults(link=LinkFault.SILENT))
+    goal = DriverMotion(19.0, 61.9, 0.0, 0.0)
+    with pytest.raises(NoReply):
+        driver.move(goal)
+    driver.inject(healthy)
+    clock.sleep(0.1)
+    driver.move(goal)
+    clock.sleep(1.9)
+    assert driver.true_motion().first_deg == pytest.approx(19.0)
 
 
 def test_an_order_stays_within_the_travel() -> None:

@@ -74,7 +74,7 @@ def has_come_to_rest(rig: Rig) -> bool:
 
 def still_s(rig: Rig) -> float:
     """How long to watch for motion."""
-    return rig.lag_s + 0.4
+    return rig.lag_s + 0.2
 
 
 def lasted_s(rig: Rig, call: Callable[[], object]) -> float:

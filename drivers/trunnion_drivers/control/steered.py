@@ -6,6 +6,7 @@ from math import isfinite
 from trunnion_drivers.control.command import Command
 from trunnion_drivers.control.steering import Steering
 from trunnion_drivers.interface.driver import Driver
+from trunnion_drivers.interface.errors import DriverError
 from trunnion_drivers.interface.values import Clock, DriverMotion, DriverReading, MountFacts
 
 
@@ -27,11 +28,19 @@ class SteeredDriver(Driver):
         seen = self._seen or self.read()
         command = self._steering.steer(self._clock.monotonic_s(), motion, seen)
         if command is not None:
-            self._tell(command)
+            self._must_tell(command)
 
     def _halt(self) -> None:
         self._steering.forget(self._clock.monotonic_s())
         self._rest()
+
+    def _must_tell(self, command: Command) -> None:
+        """What may not have arrived is not taken for said."""
+        try:
+            self._tell(command)
+        except DriverError:
+            self._steering.forget(self._clock.monotonic_s())
+            raise
 
     def _start_anew(self) -> None:
         """The link was opened: what was seen and said before holds no longer."""

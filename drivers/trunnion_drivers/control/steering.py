@@ -8,6 +8,8 @@ from trunnion_drivers.control.position import PositionLaw, PositionSettings
 from trunnion_drivers.control.rate import RateLaw, RateSettings
 from trunnion_drivers.interface.values import DriverMotion, DriverReading, MountFacts
 
+_REPEAT_S = 1.0
+
 
 class Steering(Protocol):
     """Says what to tell a mount; pure, the second is an argument."""
@@ -30,16 +32,21 @@ class PositionSteering:
             PositionLaw(settings, joint) for joint in (facts.first, facts.second)
         )
         self._told: tuple[float, float] | None = None
+        self._told_s = 0.0
 
     def steer(self, mono_s: float, goal: DriverMotion, _reading: DriverReading) -> Command | None:
         """Say where to go, unless a mount that only knows angles has been told so already."""
         first_deg = self._first.order_deg(mono_s, goal.first_deg, goal.first_rate_deg_s)
         second_deg = self._second.order_deg(mono_s, goal.second_deg, goal.second_rate_deg_s)
-        is_old = self._told == (first_deg, second_deg) and not self._settings.follows_rate
-        if is_old and self._settings.step_deg > 0.0:
+        if self._is_known(mono_s, (first_deg, second_deg)):
             return None
-        self._told = first_deg, second_deg
+        self._told, self._told_s = (first_deg, second_deg), mono_s
         return DriverMotion(first_deg, second_deg, goal.first_rate_deg_s, goal.second_rate_deg_s)
+
+    def _is_known(self, mono_s: float, order: tuple[float, float]) -> bool:
+        """Whether a coarse mount has been told so a moment ago; an order can get lost."""
+        is_coarse = self._settings.step_deg > 0.0 and not self._settings.follows_rate
+        return is_coarse and order == self._told and mono_s - self._told_s < _REPEAT_S
 
     def forget(self, _mono_s: float) -> None:
         """The mount was halted."""

@@ -6,11 +6,10 @@ begin with an underscore. A driver is called from one thread at a time.
 
 from abc import ABC, abstractmethod
 from collections.abc import Mapping
-from contextlib import suppress
 from math import isfinite
 from typing import Self
 
-from trunnion_drivers.interface.errors import DriverError, Garbled, WrongState
+from trunnion_drivers.interface.errors import Garbled, WrongState
 from trunnion_drivers.interface.values import (
     Capabilities,
     Clock,
@@ -91,9 +90,10 @@ class Driver(ABC):
         The one method that any thread may call. It waits for no answer and raises nothing, so
         `halt` must follow in the driver's own thread. Return whether the stop was sent.
         """
-        with suppress(DriverError, OSError):
+        try:
             return self._is_open and self._halt_at_once()
-        return False
+        except Exception:  # noqa: BLE001 - the port may be closed or reopened at this very moment
+            return False
 
     def _halt_at_once(self) -> bool:
         """Send the stop without waiting for anybody; False for a driver that cannot."""
