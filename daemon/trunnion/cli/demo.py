@@ -2,7 +2,7 @@
 
 import sys
 import time
-from collections.abc import Callable
+from collections.abc import Iterator
 from typing import TYPE_CHECKING, Annotated
 
 import typer
@@ -36,7 +36,8 @@ def demo(
 
     briefing, rehearsal = rehearsal_of(example_folder() / "station.yaml", None)
     if as_json:
-        _fly(rehearsal, lambda _: None, speed=float("inf"))
+        for _ in rehearsal.turns():
+            pass
         print_json(plain_results(briefing, rehearsal))
     else:
         _show(briefing, rehearsal, speed)
@@ -47,48 +48,46 @@ def demo(
 
 
 def _show(briefing: "Briefing", rehearsal: "Rehearsal", speed: float) -> None:
+    paced = _paced(rehearsal.turns(), speed)
     if not sys.stdout.isatty():
-        _fly(rehearsal, _Teller(), speed)
+        _tell(paced)
         return
     from rich.live import Live
 
     from trunnion.cli.scene import draw
 
+    shown_s = time.monotonic()
     with Live(auto_refresh=False, transient=True) as live:
-        _fly(rehearsal, lambda turn: live.update(draw(briefing, turn), refresh=True), speed)
+        for turn in paced:
+            if time.monotonic() >= shown_s + FRAME_S:
+                shown_s = time.monotonic()
+                live.update(draw(briefing, turn), refresh=True)
 
 
-def _fly(rehearsal: "Rehearsal", show: "Callable[[Turn], None]", speed: float) -> None:
-    """Fly at most so many times as fast as real time while the mount moves; rests are skipped."""
+def _paced(turns: "Iterator[Turn]", speed: float) -> "Iterator[Turn]":
+    """The turns, at most so many times as fast as real time while the mount moves."""
     from trunnion.service.rehearsal import RESTING
 
     before: Turn | None = None
-    due_s = shown_s = time.monotonic()
-    for turn in rehearsal.turns():
+    due_s = time.monotonic()
+    for turn in turns:
+        yield turn
         if before is not None and before.decision.phase not in RESTING:
             due_s += (turn.mono_s - before.mono_s) / speed
-        before = turn
-        now_s = time.monotonic()
-        if now_s >= shown_s + FRAME_S:
-            shown_s = now_s
-            show(turn)
+        before, now_s = turn, time.monotonic()
         if due_s > now_s + FRAME_S:
             time.sleep(due_s - now_s)
         due_s = max(due_s, now_s - FRAME_S)
 
 
-class _Teller:
+def _tell(turns: "Iterator[Turn]") -> None:
     """Without a terminal: a line whenever the mount begins to do something else."""
+    from trunnion.sky.instants import format_utc
 
-    def __init__(self) -> None:
-        self._told: tuple[object, object] | None = None
-
-    def __call__(self, turn: "Turn") -> None:
-        from trunnion.sky.instants import format_utc
-
+    told: tuple[object, str] | None = None
+    for turn in turns:
         assignment = turn.decision.assignment
-        contact = assignment.contact if assignment else ""
-        told = (turn.decision.phase, contact)
-        if told != self._told:
-            self._told = told
-            say(f"{format_utc(turn.utc_s, 0)}  {turn.decision.phase.value:<10} {contact}")
+        now = (turn.decision.phase, assignment.contact if assignment else "")
+        if now != told:
+            told = now
+            say(f"{format_utc(turn.utc_s, 0)}  {turn.decision.phase.value:<10} {now[1]}")
