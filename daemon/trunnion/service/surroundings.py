@@ -2,7 +2,7 @@
 
 from trunnion.safety.emergency import EmergencyStop
 from trunnion.safety.world import World
-from trunnion.service.link.status import LinkState, LinkStatus
+from trunnion.service.link.status import LinkStatus
 
 HARDWARE_STOP = "the hardware stop input is pressed, or its signal is lost"
 
@@ -11,7 +11,7 @@ def world_of(latched: EmergencyStop | None, link: LinkStatus, lateness_s: float)
     """The surroundings at this turn."""
     return World(
         emergency=latched,
-        is_link_up=link.state is LinkState.UP,
+        is_link_up=link.is_up,
         lateness_s=lateness_s,
         mount_fault=link.fault,
     )
