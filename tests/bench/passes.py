@@ -24,6 +24,7 @@ from trunnion.track.stretches import clear_stretches
 from trunnion.track.wanted import Wanted
 
 SOLVE: Any = optimize.linprog
+BESIDE: Any = hstack
 
 CLEARANCE = Clearance(5.0, None)
 
@@ -74,14 +75,14 @@ def linear_programme_deg(target: Overflight, mount: Mount) -> float:
     count = course.size
     first = diags([-1.0, 1.0], [0, 1], shape=(count - 1, count))
     second = diags([1.0, -2.0, 1.0], [0, 1, 2], shape=(count - 2, count))
-    rows: list[Any] = [hstack([sign * diags(weight), -np.ones((count, 1))]) for sign in (1.0, -1.0)]
+    rows: list[Any] = [BESIDE([sign * diags(weight), -np.ones((count, 1))]) for sign in (1.0, -1.0)]
     most = [sign * weight * wanted_deg for sign in (1.0, -1.0)]
     for difference, limit in (
         (first, limits.rate_deg_s * course.step_s),
         (second, limits.acceleration_deg_s2 * course.step_s**2),
     ):
         height = difference.shape[0]
-        rows += [hstack([sign * difference, np.zeros((height, 1))]) for sign in (1.0, -1.0)]
+        rows += [BESIDE([sign * difference, np.zeros((height, 1))]) for sign in (1.0, -1.0)]
         most += [np.full(height, limit)] * 2
     found = SOLVE(
         np.append(np.zeros(count), 1.0),

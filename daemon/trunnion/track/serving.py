@@ -20,6 +20,9 @@ from trunnion.track.steering import Aim, steer
 from trunnion.track.transit import NoWay
 from trunnion.track.wanted import Wanted
 
+NEAR_DEG = 5.0
+"""A path that begins no further from the mount is taken up at once, and caught on the way."""
+
 
 @dataclass
 class Serving:
@@ -30,6 +33,11 @@ class Serving:
     place: Joints
     free_s: float
     last: Draft | None = None
+
+    def is_near(self, begins: Joints, begin_s: float) -> bool:
+        """Whether the mount, free by then, stands near enough to follow from there at once."""
+        off_deg = max(abs(a - b) for a, b in zip(self.place, begins, strict=True))
+        return off_deg <= NEAR_DEG and self.free_s <= begin_s
 
     def make_room(self, wanted: Wanted, begins: Joints, begin_s: float) -> None:
         """Have a less wanted contact just before end early enough for this one; raises NoWay."""
@@ -72,7 +80,11 @@ def _fly(draft: Draft, path: PlannedPath, span: tuple[float, float], serving: Se
     begin_s, end_s = span
     try:
         serving.make_room(wanted, path.at(begin_s).joints, begin_s)
-        there_s = begin_late(path, span, serving.place, serving.free_s, aim.mount, aim.clearance)
+        there_s = begin_s
+        if not serving.is_near(path.at(begin_s).joints, begin_s):
+            there_s = begin_late(
+                path, span, serving.place, serving.free_s, aim.mount, aim.clearance
+            )
     except NoWay as none:
         draft.find(FindingKind.NO_WAY, str(none), span)
         return
@@ -81,7 +93,8 @@ def _fly(draft: Draft, path: PlannedPath, span: tuple[float, float], serving: Se
         draft.outside_beam_s += there_s - begin_s
     if there_s >= end_s:
         return
-    begins = Motion(*path.at(there_s).joints)
+    is_in_time = serving.free_s < begin_s or there_s > begin_s
+    begins = Motion(*(path.at(there_s).joints if is_in_time else serving.place))
     draft.note(outcome(path, (there_s, end_s), begins, aim.mount, beam), beam)
     draft.assignments.append(
         Assignment(wanted.contact, wanted.target, there_s, end_s, path, wanted.priority)
