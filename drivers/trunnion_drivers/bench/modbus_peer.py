@@ -1,144 +1,105 @@
 """A simulated machine as a Modbus server, by the same map that its driver has."""
 
-from collections.abc import Callable
-from enum import IntEnum
+from collections.abc import Mapping
 
-from trunnion_drivers.bench.modbus_frames import Framing, Request
+from trunnion_drivers.bench.modbus_frames import Framing
+from trunnion_drivers.bench.modbus_server import ModbusServer
 from trunnion_drivers.control.command import CommandMode, Rates, Switches, Turn
 from trunnion_drivers.interface.values import DriverMotion
 from trunnion_drivers.modbus.registers import decode, encode
 from trunnion_drivers.modbus.settings import JointMap, ModbusSettings
 from trunnion_drivers.simulator.machine import SimulatedMachine
 
-_ON = b"\xff\x00"
-
-
-class _Exception(IntEnum):
-    """Exception codes of the standard, section 7."""
-
-    ILLEGAL_FUNCTION = 1
-    ILLEGAL_ADDRESS = 2
-
 
 class ModbusPeer:
-    """Answers functions 1 to 6, 15 and 16."""
+    """The machine's tables behind a server."""
 
     def __init__(
         self, settings: ModbusSettings, machine: SimulatedMachine, framing: Framing
     ) -> None:
-        self._settings = settings
-        self._machine = machine
-        self._framing = framing
-        self._buffer = b""
-        self._holding: dict[int, int] = {}
-        self._coils: dict[int, bool] = {}
-        if settings.power is not None:
-            self._coils[settings.power] = True
+        self._server = ModbusServer(settings.unit, framing)
+        self._tables = MachineTables(settings, machine)
 
     def hear(self, mono_s: float, come: bytes) -> bytes:
         """Answer every whole request that is for this unit."""
-        self._buffer += come
-        said = b""
-        while True:
-            request, self._buffer = self._framing.take(self._buffer)
-            if request is None:
-                return said
-            if request.unit == self._settings.unit:
-                said += self._framing.wrap(request, self._answer(mono_s, request))
+        self._tables.mono_s = mono_s
+        return self._server.hear(come, self._tables)
 
     def says_unasked(self, _mono_s: float) -> bytes:
         """A server never does."""
         return b""
 
-    def _answer(self, mono_s: float, request: Request) -> bytes:
-        function, data = request.pdu[0], request.pdu[1:]
-        known: dict[int, Callable[[float, bytes], bytes]] = {
-            1: self._read_coils,
-            2: self._read_inputs,
-            3: self._read_holding,
-            4: self._read_input_registers,
-            5: self._write_coil,
-            6: self._write_register,
-            15: self._write_coils,
-            16: self._write_registers,
-        }
-        if function not in known:
-            return bytes([function | 0x80, _Exception.ILLEGAL_FUNCTION])
-        try:
-            return bytes([function]) + known[function](mono_s, data)
-        except (KeyError, ValueError):
-            return bytes([function | 0x80, _Exception.ILLEGAL_ADDRESS])
 
-    def _read_coils(self, _mono_s: float, data: bytes) -> bytes:
-        return _bits([self._coils.get(address, False) for address in _span(data)])
+class MachineTables:
+    """What is read is the machine's state at `mono_s`; what is written commands it."""
 
-    def _read_inputs(self, mono_s: float, data: bytes) -> bytes:
-        look, stop = self._machine.look(mono_s), self._settings.stop_input
-        inputs = dict.fromkeys(self._settings.limits, look.at_limit)
-        if stop is not None:
-            inputs[stop.input] = look.stop_pressed is stop.pressed_when
-        return _bits([inputs[address] for address in _span(data)])
+    def __init__(self, settings: ModbusSettings, machine: SimulatedMachine) -> None:
+        self.mono_s = 0.0
+        self._settings = settings
+        self._joints = settings.first, settings.second
+        self._machine = machine
+        self._holding: dict[int, int] = {}
+        self._coils: dict[int, bool] = {}
+        if settings.power is not None:
+            self._coils[settings.power] = True
 
-    def _read_holding(self, mono_s: float, data: bytes) -> bytes:
-        words = {**self._holding, **self._angle_words(mono_s)}
-        return _words([words.get(address, 0) for address in _span(data)])
+    def coil(self, address: int) -> bool:
+        """What was written last."""
+        return self._coils.get(address, False)
 
-    def _read_input_registers(self, mono_s: float, data: bytes) -> bytes:
-        words = self._angle_words(mono_s)
-        return _words([words.get(address, 0) for address in _span(data)])
+    def input(self, address: int) -> bool:
+        """The stop input and the limit switches; KeyError for any other."""
+        look, stop = self._machine.look(self.mono_s), self._settings.stop_input
+        if stop is not None and address == stop.input:
+            return look.stop_pressed is stop.pressed_when
+        if address not in self._settings.limits:
+            raise KeyError(address)
+        return look.at_limit
 
-    def _write_coil(self, mono_s: float, data: bytes) -> bytes:
-        self._set_coil(mono_s, int.from_bytes(data[:2], "big"), is_on=data[2:4] == _ON)
-        return data
+    def holding(self, address: int) -> int:
+        """An angle, or what was written last."""
+        return self._angle_words().get(address, self._holding.get(address, 0))
 
-    def _write_coils(self, mono_s: float, data: bytes) -> bytes:
-        for number, address in enumerate(_span(data)):
-            is_on = bool(data[5 + number // 8] >> number % 8 & 1)
-            self._set_coil(mono_s, address, is_on=is_on)
-        return data[:4]
+    def input_register(self, address: int) -> int:
+        """An angle, or zero."""
+        return self._angle_words().get(address, 0)
 
-    def _write_register(self, mono_s: float, data: bytes) -> bytes:
-        self._set_registers(mono_s, {int.from_bytes(data[:2], "big"): _word(data[2:4])})
-        return data
+    def set_coils(self, states: Mapping[int, bool]) -> None:
+        """Halt, cut the power, go, or switch the motors."""
+        self._coils |= states
+        for address, is_on in states.items():
+            self._obey(address, is_on=is_on)
+        contacts = {at for joint in self._joints for at in (joint.up, joint.down)}
+        if self._settings.command is CommandMode.ON_OFF and contacts & states.keys():
+            self._machine.command(self.mono_s, Switches(*map(self._turn, self._joints)))
 
-    def _write_registers(self, mono_s: float, data: bytes) -> bytes:
-        words = [_word(data[at : at + 2]) for at in range(5, len(data), 2)]
-        self._set_registers(mono_s, dict(zip(_span(data), words, strict=True)))
-        return data[:4]
-
-    def _set_coil(self, mono_s: float, address: int, *, is_on: bool) -> None:
-        self._coils[address] = is_on
-        settings = self._settings
-        if address == settings.halt.coil and is_on == bool(settings.halt.value):
-            self._machine.halt(mono_s)
-        elif address == settings.power:
-            self._machine.cut_power(mono_s, is_cut=not is_on)
-        elif address == settings.go and is_on:
-            self._go(mono_s)
-        elif settings.command is CommandMode.ON_OFF:
-            self._machine.command(mono_s, Switches(*map(self._turn, self._joints)))
-
-    def _set_registers(self, mono_s: float, words: dict[int, int]) -> None:
+    def set_holding(self, words: Mapping[int, int]) -> None:
+        """Halt, or take a goal; without a coil for it, go there at once."""
         self._holding |= words
         halt = self._settings.halt
         if halt.register_address is not None and words.get(halt.register_address) == halt.value:
-            self._machine.halt(mono_s)
-        goals = {joint.write for joint in self._joints} | {j.write_rate for j in self._joints}
+            self._machine.halt(self.mono_s)
+        goals = {at for joint in self._joints for at in (joint.write, joint.write_rate)}
         if self._settings.go is None and goals & words.keys():
-            self._go(mono_s)
+            self._go()
 
-    def _go(self, mono_s: float) -> None:
+    def _obey(self, address: int, *, is_on: bool) -> None:
+        settings = self._settings
+        if address == settings.halt.coil and is_on is bool(settings.halt.value):
+            self._machine.halt(self.mono_s)
+        elif address == settings.power:
+            self._machine.cut_power(self.mono_s, is_cut=not is_on)
+        elif address == settings.go and is_on:
+            self._go()
+
+    def _go(self) -> None:
         rates = [self._rate(joint) for joint in self._joints]
         if self._settings.command is CommandMode.RATE:
-            self._machine.command(mono_s, Rates(*rates))
+            self._machine.command(self.mono_s, Rates(*rates))
         else:
-            now = self._machine.true_motion(mono_s)
+            now = self._machine.true_motion(self.mono_s)
             goal = [self._goal(joint, now[n]) for n, joint in enumerate(self._joints)]
-            self._machine.command(mono_s, DriverMotion(*goal, *rates))
-
-    @property
-    def _joints(self) -> tuple[JointMap, JointMap]:
-        return self._settings.first, self._settings.second
+            self._machine.command(self.mono_s, DriverMotion(*goal, *rates))
 
     def _goal(self, joint: JointMap, now_deg: float) -> float:
         if joint.write is None or joint.write not in self._holding:
@@ -155,12 +116,12 @@ class ModbusPeer:
 
     def _turn(self, joint: JointMap) -> Turn:
         up, down = (joint.down, joint.up) if joint.reversed else (joint.up, joint.down)
-        if up is not None and self._coils.get(up, False):
+        if up is not None and self.coil(up):
             return Turn.UP
-        return Turn.DOWN if down is not None and self._coils.get(down, False) else Turn.OFF
+        return Turn.DOWN if down is not None and self.coil(down) else Turn.OFF
 
-    def _angle_words(self, mono_s: float) -> dict[int, int]:
-        look = self._machine.look(mono_s)
+    def _angle_words(self) -> dict[int, int]:
+        look = self._machine.look(self.mono_s)
         angles = look.first_deg, look.second_deg
         return {
             joint.read + n: word
@@ -169,25 +130,3 @@ class ModbusPeer:
                 encode(joint.scale().written(angle_deg), joint.type, self._settings.word_order)
             )
         }
-
-
-def _span(data: bytes) -> range:
-    begin, count = int.from_bytes(data[:2], "big"), int.from_bytes(data[2:4], "big")
-    if not 1 <= count <= 2000:
-        raise ValueError(f"expected 1 to 2000 of them, got {count}")
-    return range(begin, begin + count)
-
-
-def _word(data: bytes) -> int:
-    return int.from_bytes(data, "big")
-
-
-def _words(words: list[int]) -> bytes:
-    data = b"".join(word.to_bytes(2, "big") for word in words)
-    return bytes([len(data)]) + data
-
-
-def _bits(states: list[bool]) -> bytes:
-    size = (len(states) + 7) // 8
-    packed = sum(state << number for number, state in enumerate(states))
-    return bytes([size]) + packed.to_bytes(size, "little")

@@ -35,7 +35,11 @@ class Leg(NamedTuple):
 
     def until_s(self, angle_deg: float) -> float:
         """Seconds from the beginning until the angle is first reached; infinite for never."""
-        ahead, rate, acceleration = angle_deg - self.angle_deg, self.rate_deg_s, self[3]
+        ahead, rate, acceleration = (
+            angle_deg - self.angle_deg,
+            self.rate_deg_s,
+            self.acceleration_deg_s2,
+        )
         if acceleration == 0.0:
             roots: tuple[float, ...] = (ahead / rate,) if rate != 0.0 else ()
         else:
