@@ -7,8 +7,8 @@ import numpy as np
 
 from trunnion.mount.arrays import FloatArray, Motions, plain_motions
 from trunnion.mount.hinges import Hinges
-from trunnion.sky.errors import NoPosition
 from trunnion.sky.look import Looks, Target
+from trunnion.track.looking import finite_looks
 
 STEP_S = 0.25
 """Spacing of the samples; a low pass needs no finer one, see the tests of planned paths."""
@@ -55,14 +55,12 @@ class Course(NamedTuple):
 def sample_course(target: Target, begin_s: float, end_s: float, hinges: Hinges) -> Course:
     """Sample a target; raises NoPosition where it has none, or none that is finite."""
     steps = min(max(2, ceil((end_s - begin_s) / STEP_S)), MOST_STEPS)
-    utc_s = np.linspace(begin_s, end_s, steps + 1)
-    looks = target.looks(utc_s)
-    fields = (
+    looks = finite_looks(target, np.linspace(begin_s, end_s, steps + 1))
+    motions = plain_motions(
+        hinges,
         looks.azimuth_deg,
         looks.elevation_deg,
         looks.azimuth_rate_deg_s,
         looks.elevation_rate_deg_s,
     )
-    if not all(np.isfinite(field).all() for field in fields):
-        raise NoPosition(f"expected finite directions of {target.name}, got one that is not")
-    return Course(begin_s, (end_s - begin_s) / steps, looks, plain_motions(hinges, *fields))
+    return Course(begin_s, (end_s - begin_s) / steps, looks, motions)

@@ -6,7 +6,7 @@ from trunnion.mount.clearance import Clearance
 from trunnion.mount.joints import Joints
 from trunnion.mount.mount import Mount
 from trunnion.track.beam import Beam
-from trunnion.track.course import Course, sample_course
+from trunnion.track.course import Course
 from trunnion.track.draft import Draft
 from trunnion.track.objective import Objective
 from trunnion.track.options import options_for
@@ -39,9 +39,9 @@ def plan_day(
     aim = Aim(mount, clearance, objective, beam.half_width_deg)
     pieces = sorted(
         (
-            (stretch, draft, sample_course(draft.wanted.target, *stretch, mount.hinges))
+            (stretch, draft, course)
             for draft in drafts
-            for stretch in draft.stretches
+            for stretch, course in draft.courses(mount.hinges)
         ),
         key=lambda piece: piece[0].begin_s,
     )

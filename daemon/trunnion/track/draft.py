@@ -6,8 +6,10 @@ from dataclasses import dataclass, field, replace
 import numpy as np
 
 from trunnion.mount.clearance import Clearance
+from trunnion.mount.hinges import Hinges
 from trunnion.sky.errors import SkyError
 from trunnion.track.beam import Beam
+from trunnion.track.course import Course, sample_course
 from trunnion.track.loss import MOST_LOSS_DB, loss_db
 from trunnion.track.outcome import Lost, Outcome
 from trunnion.track.path import Assignment
@@ -47,6 +49,16 @@ class Draft:
             if not self.stretches:
                 sentence = "the target never stands clear of floor, horizon mask and keep-outs"
                 self.find(FindingKind.NEVER_VISIBLE, sentence)
+
+    def courses(self, hinges: Hinges) -> list[tuple[Stretch, Course]]:
+        """Each stretch, and where the target takes the joints in it."""
+        try:
+            return [
+                (each, sample_course(self.wanted.target, *each, hinges)) for each in self.stretches
+            ]
+        except SkyError as error:
+            self.find(FindingKind.NO_POSITION, str(error))
+            return []
 
     def give_way(self, other: "Draft") -> None:
         """Leave the time that a more wanted contact has taken."""

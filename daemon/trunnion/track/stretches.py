@@ -7,6 +7,7 @@ import numpy as np
 
 from trunnion.mount.clearance import Clearance
 from trunnion.sky.look import FloatArray, Looks
+from trunnion.track.looking import finite_looks
 from trunnion.track.wanted import Wanted
 
 GRID_S = 1.0
@@ -33,7 +34,7 @@ def clear_stretches(wanted: Wanted, clearance: Clearance) -> tuple[Stretch, ...]
         )
 
     times = grid(wanted.from_s, wanted.until_s)
-    clear = _are_clear(wanted.target.looks(times), wanted, clearance)
+    clear = _are_clear(finite_looks(wanted.target, times), wanted, clearance)
     edges = np.flatnonzero(clear[1:] != clear[:-1])
     bounds = [
         *([wanted.from_s] if clear[0] else []),
