@@ -1,1 +1,5 @@
-"""Conformance: the test kit that any driver must pass."""
+"""Conformance: the test kit that any driver must pass. Needs pytest."""
+
+import pytest
+
+pytest.register_assert_rewrite("trunnion_drivers.conformance.kit")
