@@ -11,6 +11,7 @@ import pytest
 from tests.drivers.benches import SystemClock
 from tests.drivers.mounts import HandClock
 from tests.drivers.rfc2217_server import HandHeldAdapter, Rfc2217Server
+from tests.drivers.scripted_port import Scripted
 from trunnion_drivers.bench.endpoint import PtyEndpoint, TcpEndpoint
 from trunnion_drivers.interface.errors import Garbled, LinkLost, NoReply
 from trunnion_drivers.serial_port.any_port import AnyPort, port_for
@@ -150,30 +151,6 @@ def eventually(is_so: Callable[[], bool]) -> bool:
     while not is_so() and time.monotonic() < until_s:
         time.sleep(0.01)
     return is_so()
-
-
-class Scripted:
-    """A port under a clock by hand: what comes, and when (s after the message was sent)."""
-
-    def __init__(self, clock: HandClock, *answers: list[tuple[float, bytes]]) -> None:
-        self._clock = clock
-        self._answers = list(answers)
-        self._coming: list[tuple[float, bytes]] = []
-        self.sent: list[bytes] = []
-
-    def send(self, message: bytes) -> None:
-        self.sent.append(message)
-        now_s = self._clock.monotonic_s()
-        answer = self._answers.pop(0) if self._answers else []
-        self._coming += [(now_s + after_s, data) for after_s, data in answer]
-
-    def receive(self, until_s: float) -> bytes:
-        if self._coming and self._coming[0][0] <= until_s:
-            at_s, data = self._coming.pop(0)
-            self._clock.sleep(max(0.0, at_s - self._clock.monotonic_s()))
-            return data
-        self._clock.sleep(max(0.0, until_s - self._clock.monotonic_s()))
-        return b""
 
 
 def line(come: bytes) -> bytes | None:
