@@ -119,6 +119,9 @@ class _EchoLink:
     def emergency_halt(self) -> None:
         self.submit(Halt())
 
+    def cut_power(self) -> None:
+        pass
+
     def release(self) -> None:
         pass
 

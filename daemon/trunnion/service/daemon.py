@@ -15,6 +15,7 @@ from trunnion.pilot.departure import Facts
 from trunnion.pilot.phase import Phase, Wish
 from trunnion.pilot.pilot import Pilot
 from trunnion.safety.gate import Gate
+from trunnion.safety.power import PowerJudge
 from trunnion.safety.world import World
 from trunnion.service.antenna import beam_of, flown_mount_of, mount_of
 from trunnion.service.cadence import Beat, Cadence
@@ -31,6 +32,7 @@ from trunnion.service.limits import safety_limits_of
 from trunnion.service.link.threaded import ThreadedLink
 from trunnion.service.notify import Notifier, Watchdog, watchdog_timeout_s
 from trunnion.service.plan_keeper import PlanKeeper
+from trunnion.service.power_cut import PowerCut
 from trunnion.service.recorder import Recorder
 from trunnion.service.records.values import EventKind
 from trunnion.service.records.writer import RecordWriter
@@ -82,7 +84,8 @@ class Daemon:
         driver = build_driver(station, clock)
         clearance = clearance_of(station)
         pilot = Pilot(Facts(flown_mount_of(station), clearance, beam_of(station).tolerance_deg))
-        gate = Gate(safety_limits_of(station, mount_of(station), clearance))
+        limits = safety_limits_of(station, mount_of(station), clearance)
+        gate = Gate(limits)
         with ExitStack() as held:
             self._wish = StandingWish(station.files.latch.with_name(WISH_FILE))
             self._desk = EmergencyDesk(EmergencyLatch(station.files.latch), clock, self._tell_stop)
@@ -99,6 +102,7 @@ class Daemon:
             self._link = ThreadedLink(driver, clock, poll_s=0.5 / station.cadence.tick_hz)
             held.callback(self._link.close)
             self._desk.attach(self._link)
+            self._power = PowerCut(PowerJudge(limits), self._link, self._tell_trouble)
             self._plans = PlanKeeper(paths.station, paths.plan, clock, self._tell_trouble)
             held.callback(self._plans.close)
             self._watch = FileWatch(_watched(paths, station))
@@ -133,6 +137,7 @@ class Daemon:
         turn = self._control.run(orders, self._look_around)
         if turn.verdict.latch is not None:
             self.emergency_stop(turn.verdict.latch)
+        self._power.see_to_it(turn, is_stopped=self._desk.latched is not None)
         self._last_turn = turn
         return turn
 

@@ -95,6 +95,7 @@ def _link(link: LinkStatus) -> dict[str, object]:
         "stop_pressed": link.stop_pressed,
         "at_limit": link.at_limit,
         "fault": link.fault,
+        "is_power_cut": link.is_power_cut,
     }
 
 

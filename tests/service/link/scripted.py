@@ -6,6 +6,7 @@ from typing import Self
 
 from trunnion_drivers.interface.driver import Driver
 from trunnion_drivers.interface.values import (
+    Capabilities,
     Clock,
     DriverMotion,
     DriverReading,
@@ -19,8 +20,9 @@ FACTS = MountFacts(JointFacts(-270.0, 270.0, 6.0, 3.0), JointFacts(2.0, 90.0, 4.
 class ScriptedDriver(Driver):
     """Raises what is in `failures` of a call, in order, before it does it again."""
 
-    def __init__(self, clock: Clock) -> None:
+    def __init__(self, clock: Clock, *, cuts_power: bool = False) -> None:
         super().__init__(FACTS, clock)
+        self.capabilities = Capabilities(cuts_power=cuts_power)
         self.calls: list[str] = []
         self.moves: list[DriverMotion] = []
         self.failures: dict[str, deque[Exception]] = {}
@@ -52,6 +54,9 @@ class ScriptedDriver(Driver):
 
     def _halt(self) -> None:
         self._note("halt")
+
+    def _cut_power(self) -> None:
+        self._note("cut power")
 
     def _note(self, call: str) -> None:
         self.calls.append(call)

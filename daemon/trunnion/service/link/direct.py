@@ -46,6 +46,11 @@ class DirectLink:
         self._outbox.bar()
         self._wire.send()
 
+    def cut_power(self) -> None:
+        """Take the power from the motors where the mount can, until released."""
+        self._outbox.cut_power()
+        self._wire.send()
+
     def release(self) -> None:
         """Let motion pass again; sends nothing."""
         self._outbox.release()

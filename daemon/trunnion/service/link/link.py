@@ -35,8 +35,18 @@ class Link(Protocol):
         """
         ...
 
+    def cut_power(self) -> None:
+        """Take the power from the motors where the mount can, until released.
+
+        Does nothing while no emergency halt is in force; may be called again and again.
+        """
+        ...
+
     def release(self) -> None:
-        """Let motion pass again; sends nothing, and nothing submitted before counts."""
+        """Let motion pass again; sends nothing, and nothing submitted before counts.
+
+        Power that was taken comes back when the link is opened anew, which follows by itself.
+        """
         ...
 
     def close(self) -> None:

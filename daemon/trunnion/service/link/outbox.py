@@ -13,6 +13,7 @@ class Outbox:
         self._order: Order | None = None
         self._connection = 0
         self._is_barred = False
+        self._must_cut_power = False
 
     def put(self, order: Order, connection: int) -> None:
         """Keep this order, made by a reading of this connection, instead of any older one."""
@@ -24,10 +25,20 @@ class Outbox:
         with self._lock:
             self._is_barred = True
 
-    def release(self) -> None:
-        """Let orders out again that are put in from now on."""
+    def cut_power(self) -> None:
+        """Want the motors without power until released; nothing while motion is not barred."""
         with self._lock:
-            self._is_barred, self._order = False, None
+            self._must_cut_power = self._is_barred
+
+    @property
+    def must_cut_power(self) -> bool:
+        """Whether the motors are to be without power."""
+        return self._must_cut_power
+
+    def release(self) -> None:
+        """Let orders out again that are put in from now on, and motors have power."""
+        with self._lock:
+            self._is_barred, self._must_cut_power, self._order = False, False, None
 
     def take(self, connection: int) -> Order | None:
         """Take out what is to be sent now on this connection; a halt every time while barred."""

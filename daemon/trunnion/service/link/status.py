@@ -30,7 +30,8 @@ class LinkStatus(NamedTuple):
 
     `failures_in_row` counts failed calls of the driver since the last faultless exchange,
     `failures` all of them, `connections` how often the link was opened; `last_error` is kept until
-    the next one, so that a cured fault can still be read about.
+    the next one, so that a cured fault can still be read about. `is_power_cut` tells that we have
+    taken the power from the motors.
     """
 
     state: LinkState = LinkState.CLOSED
@@ -41,6 +42,7 @@ class LinkStatus(NamedTuple):
     stop_pressed: bool = False
     at_limit: bool = False
     fault: str | None = None
+    is_power_cut: bool = False
 
     @property
     def is_up(self) -> bool:

@@ -63,6 +63,11 @@ class ThreadedLink:
         self._wake()
         self._wire.halt_at_once()
 
+    def cut_power(self) -> None:
+        """Take the power from the motors where the mount can, until released."""
+        self._outbox.cut_power()
+        self._wake()
+
     def release(self) -> None:
         """Let motion pass again; sends nothing, and nothing submitted before counts."""
         self._outbox.release()

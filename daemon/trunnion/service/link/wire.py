@@ -45,6 +45,7 @@ class Wire:
 
     def send(self) -> None:
         """Send what waits in the outbox; after a reconnect a halt comes before everything."""
+        self._give_power_back()
         if not self._is_ready():
             return
         order = self._outbox.take(self.status.connections)
@@ -53,6 +54,8 @@ class Wire:
             self._order(lambda: self._driver.move(motion))
         elif order is not None:
             self._order(self._driver.halt)
+        if self._outbox.must_cut_power:
+            self._cut_power()
 
     def halt_at_once(self) -> None:
         """Send a halt past the call that is under way, where the driver can; from any thread.
@@ -87,9 +90,25 @@ class Wire:
         self._attempt(self._driver.open)
         if not self._driver.is_open:
             return False
-        self.status = self.status._replace(connections=self.status.connections + 1)
+        self.status = self.status._replace(
+            connections=self.status.connections + 1, is_power_cut=False
+        )
         self._order(self._driver.halt)
         return self._driver.is_open
+
+    def _cut_power(self) -> None:
+        """Take the power from the motors, where the driver can."""
+        if self.status.is_power_cut or not self._driver.capabilities.cuts_power:
+            return
+        failures = self.status.failures
+        self._attempt(self._driver.cut_power)
+        is_cut = self.status.failures == failures
+        self.status = self.status._replace(is_power_cut=is_cut)
+
+    def _give_power_back(self) -> None:
+        """Opening a driver gives the motors power: so close it once the stop is reset."""
+        if self.status.is_power_cut and not self._outbox.must_cut_power:
+            self._attempt(self._driver.close)
 
     def _order(self, call: Callable[[], None]) -> None:
         failures = self.status.failures
@@ -124,5 +143,7 @@ class Wire:
             failures=self.status.failures + 1,
             last_error=sentence(error),
         )
+        if self.status.is_power_cut:
+            return  # to open anew would give the motors power
         if self._driver.is_open and in_row >= REOPEN_AFTER.get(state, in_row + 1):
             self._attempt(self._driver.close)
