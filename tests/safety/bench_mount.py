@@ -1,6 +1,7 @@
 """A station for the gate's tests, and a mount that obeys it exactly."""
 
 from dataclasses import dataclass, field
+from typing import Self
 
 from tests.mount.mounts import MOUNT
 from trunnion.mount.clearance import Clearance, Sector
@@ -24,6 +25,12 @@ class Bench:
     place: Joints = field(default_factory=lambda: Joints(201.7, 41.3))
     gate: Gate = field(default_factory=lambda: Gate(LIMITS))
     mono_s: float = 1234.7
+
+    def settle(self) -> Self:
+        """Let the gate see for a moment that the mount stands still."""
+        for _ in range(4):
+            self.turn(None)
+        return self
 
     def turn(
         self, demand: Motion | None, world: World = CALM, dt_s: float = 0.1, age_s: float = 0.031

@@ -1,33 +1,38 @@
-"""UTC against the monotonic clock."""
+"""UTC held against the monotonic clock."""
 
-from math import nan
+import pytest
 
 from tests.safety.bench_mount import LIMITS
 from trunnion.safety.clock_watch import ClockWatch
-from trunnion.safety.verdict import Rule
 
-MONO_S, UTC_S = 913.4, 1.8e9 + 0.3
+UTC_S = 1_796_083_217.25
 
 
-def rules_after(step_s: float, then_s: float | None = None) -> list[Rule]:
+@pytest.mark.parametrize("step_s", [-0.51, 0.51, 3600.0, float("nan")])
+def test_a_step_is_found_in_the_turn_after_it_and_no_longer(step_s: float) -> None:
     watch = ClockWatch(LIMITS)
-    assert not list(watch.find(MONO_S, UTC_S))
-    utc_s = UTC_S + 0.7 + step_s if then_s is None else then_s
-    return [hazard.rule for hazard in watch.find(MONO_S + 0.7, utc_s)]
+    assert list(watch.find(71.0, UTC_S)) == []
+    assert len(list(watch.find(71.1, UTC_S + 0.1 + step_s))) == 1
+    if step_s == step_s:
+        assert list(watch.find(71.2, UTC_S + 0.2 + step_s)) == []
 
 
-def test_steps_are_seen_both_ways_and_steering_is_not() -> None:
-    most_s = LIMITS.clock_max_step_s
-    assert rules_after(1.1 * most_s) == [Rule.CLOCK_STEPPED]
-    assert rules_after(-1.1 * most_s) == [Rule.CLOCK_STEPPED]
-    assert rules_after(0.9 * most_s) == rules_after(-0.9 * most_s) == []
-
-
-def test_a_clock_that_is_no_number_counts_as_stepped() -> None:
-    assert rules_after(0.0, nan) == [Rule.CLOCK_STEPPED]
-
-
-def test_an_unknown_clock_is_not_held_against_anything() -> None:
+@pytest.mark.parametrize("step_s", [-0.49, 0.49])
+def test_a_small_one_is_none(step_s: float) -> None:
     watch = ClockWatch(LIMITS)
-    assert not list(watch.find(MONO_S, None))
-    assert not list(watch.find(MONO_S + 0.7, UTC_S))
+    assert list(watch.find(71.0, UTC_S)) == []
+    assert list(watch.find(73.0, UTC_S + 2.0 + step_s)) == []
+
+
+def test_an_unknown_time_is_held_against_nothing() -> None:
+    watch = ClockWatch(LIMITS)
+    assert list(watch.find(71.0, UTC_S)) == []
+    assert list(watch.find(71.1, None)) == []
+    assert list(watch.find(71.2, UTC_S + 99.0)) == []
+
+
+def test_the_finding_says_by_how_much_and_which_way() -> None:
+    watch = ClockWatch(LIMITS)
+    list(watch.find(71.0, UTC_S))
+    (hazard,) = watch.find(71.5, UTC_S - 3.25 + 0.5)
+    assert hazard.finding == "the clock was set by -3.2 s"

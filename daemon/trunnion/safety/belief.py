@@ -21,20 +21,21 @@ JUMP_ENCODER_ERRORS = 4.0
 
 
 class Belief:
-    """The last reading that could be true, and the one before it.
+    """The last reading that could be true, and the motion that it and the one before it show.
 
-    The first reading of all is believed on its word; one that contradicts it takes its place.
+    The first reading of all is believed on its word, and shows no motion yet; one that contradicts
+    it takes its place.
     """
 
     def __init__(self, limits: SafetyLimits) -> None:
         self._limits = limits
         self.reading: Reading | None = None
-        self._before: Reading | None = None
+        self.measured: Motion | None = None
         self._jumped_s: float | None = None
 
     def forget(self) -> None:
         """Begin anew: somebody may have moved or calibrated the mount."""
-        self.reading = self._before = self._jumped_s = None
+        self.reading = self.measured = self._jumped_s = None
 
     def find(self, mono_s: float, reading: Reading | None) -> Iterator[Hazard]:
         """What keeps this reading from being believed, if anything."""
@@ -51,21 +52,6 @@ class Belief:
             yield Hazard(Rule.READING_IMPOSSIBLE, finding)
         else:
             yield from self._hold_against_the_last(reading)
-
-    def measured(self) -> Motion | None:
-        """The reading believed, with the rates between it and the one before."""
-        now, before = self.reading, self._before
-        if now is None:
-            return None
-        if before is None:
-            return Motion(*now.joints)
-        since_s = now.taken_s - before.taken_s
-        return Motion(
-            now.first_deg,
-            now.second_deg,
-            (now.first_deg - before.first_deg) / since_s,
-            (now.second_deg - before.second_deg) / since_s,
-        )
 
     def _is_possible(self, reading: Reading) -> bool:
         mount = self._limits.mount
@@ -84,23 +70,25 @@ class Belief:
             f"to {reading.first_deg:.1f}°/{reading.second_deg:.1f}°"
         )
         yield Hazard(Rule.READING_JUMPED, finding)
-        if self._before is None:
-            self.reading = reading
+        if self.measured is None:
+            self._begin_with(reading)
             return
         yield Hazard(Rule.POSITION_LOST, f"{finding} and stays there")
         if self._jumped_s is None:
             self._jumped_s = reading.taken_s
 
+    def _begin_with(self, reading: Reading) -> None:
+        self.reading, self.measured = reading, None
+
     def _believe(self, reading: Reading) -> None:
         last = self.reading
         if last is None:
-            self.reading = reading
+            self._begin_with(reading)
         elif reading.taken_s > last.taken_s:
-            self._before, self.reading = last, reading
+            self.reading, self.measured = reading, _motion_between(last, reading)
 
     def _is_jump(self, last: Reading, reading: Reading) -> bool:
-        mount, rates = self._limits.mount, self.measured()
-        assert rates is not None  # noqa: S101 - there is a last reading
+        mount, rates = self._limits.mount, self.measured or Motion(*last.joints)
         until_s = reading.taken_s if self._jumped_s is None else self._jumped_s
         since_s = abs(until_s - last.taken_s)
         first_deg = self._reach_deg(mount.first, since_s, rates.first_rate_deg_s)
@@ -116,6 +104,16 @@ class Belief:
         if self._jumped_s is not None:
             reach_deg += stopping_distance_deg(rate_deg_s, joint)
         return JUMP_MARGIN * reach_deg + JUMP_ENCODER_ERRORS * self._limits.encoder_error_deg
+
+
+def _motion_between(before: Reading, now: Reading) -> Motion:
+    since_s = now.taken_s - before.taken_s
+    return Motion(
+        now.first_deg,
+        now.second_deg,
+        (now.first_deg - before.first_deg) / since_s,
+        (now.second_deg - before.second_deg) / since_s,
+    )
 
 
 def _is_near(angle_deg: float, joint: JointLimits) -> bool:

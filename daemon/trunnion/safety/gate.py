@@ -7,7 +7,7 @@ says it is, and within the stopping distance behind it. What follows from a haza
 policy.
 """
 
-from collections.abc import Iterator
+from collections.abc import Iterable, Iterator, Mapping
 
 from trunnion.mount.joints import Motion, Reading
 from trunnion.safety.belief import Belief
@@ -18,9 +18,10 @@ from trunnion.safety.limits import SafetyLimits
 from trunnion.safety.obedience import Obedience
 from trunnion.safety.orders import Examined, Mounted, examine
 from trunnion.safety.places import find_at
-from trunnion.safety.policy import POLICY
+from trunnion.safety.policy import POLICY, Policy
 from trunnion.safety.recovery import examine_return
 from trunnion.safety.rest import Rest
+from trunnion.safety.stillness import Stillness
 from trunnion.safety.surroundings import find_around
 from trunnion.safety.verdict import Action, Halt, Intervention, Move, Rule, Verdict
 from trunnion.safety.world import World
@@ -31,24 +32,24 @@ LONGEST_STEP_S = 0.25
 AT_STOW_DEG = 1.0
 """This near to its stow position the mount counts as stowed."""
 
-_STOWING = frozenset(rule for rule, policy in POLICY.items() if policy.action is Action.STOW)
-"""Rules that send the mount to stow."""
-
 
 class Gate:
     """Judges one demand a turn."""
 
-    def __init__(self, limits: SafetyLimits) -> None:
+    def __init__(self, limits: SafetyLimits, policy: Mapping[Rule, Policy] = POLICY) -> None:
         self._limits = limits
+        self._policy = policy
         self._belief = Belief(limits)
         self._obedience = Obedience(limits)
         self._rest = Rest(limits)
+        self._stillness = Stillness(limits)
         self._clock = ClockWatch(limits)
-        self._lasting = Lasting()
+        self._lasting = Lasting(policy)
         self._ordered: Motion | None = None
         self._judged_s: float | None = None
         self._latch: str | None = None
         self._was_stopped = False
+        self._is_still = False
 
     def judge(
         self, mono_s: float, demand: Motion | None, reading: Reading | None, world: World
@@ -56,7 +57,7 @@ class Gate:
         """The order that leaves in this turn; a demand of None asks for rest."""
         dt_s = self._elapsed_s(mono_s)
         self._see_to_the_stop(world)
-        hazards = list(self._find(mono_s, reading, world))
+        hazards = list(self._find(mono_s, reading, world, is_motion_asked=demand is not None))
         examined = self._examine(demand, dt_s, hazards, may_recover=world.may_recover)
         hazards += examined.hazards
         return self._verdict(examined.motion, self._lasting.acting_at(mono_s, hazards))
@@ -73,34 +74,49 @@ class Gate:
         if self._was_stopped and not is_stopped:
             self._belief.forget()
             self._rest.forget()
+            self._stillness.forget()
         self._was_stopped = is_stopped
 
     # -- what is wrong --------------------------------------------------------------------------
 
-    def _find(self, mono_s: float, reading: Reading | None, world: World) -> Iterator[Hazard]:
+    def _find(
+        self, mono_s: float, reading: Reading | None, world: World, *, is_motion_asked: bool
+    ) -> Iterator[Hazard]:
         if self._latch is not None:
             yield Hazard(Rule.EMERGENCY_STOP, f"emergency stop: {self._latch}")
         yield from find_around(world, self._limits, self._lasting.acting)
         yield from self._clock.find(mono_s, world.utc_s)
         yield from self._belief.find(mono_s, reading)
-        yield from self._find_in_motion(mono_s, is_link_up=world.is_link_up)
+        self._is_still = self._ordered is not None or self._stands_still()
+        is_on_time = world.lateness_s <= self._limits.turn_max_lateness_s
+        yield from self._find_in_motion(mono_s, can_be_told=world.is_link_up and is_on_time)
+        if is_motion_asked and not self._is_still:
+            yield Hazard(Rule.UNSETTLED, "the mount is not known to be at rest yet")
 
-    def _find_in_motion(self, mono_s: float, *, is_link_up: bool) -> Iterator[Hazard]:
+    def _find_in_motion(self, mono_s: float, *, can_be_told: bool) -> Iterator[Hazard]:
         """Whether the mount moves as it was told in the turn before."""
-        reading, measured = self._belief.reading, self._belief.measured()
+        reading, measured = self._belief.reading, self._belief.measured
         if reading is None or measured is None:
             return
-        if not _STOWING.isdisjoint(self._lasting.acting) and not self._is_stowed(reading):
+        if self._is_to_stow(self._lasting.acting) and not self._is_stowed(reading):
             yield Hazard(Rule.STOW_OVERDUE, "the mount was to go to stow and is not there")
-        if self._ordered is not None:
+        if self._ordered is None or not can_be_told:
+            self._obedience.forget()
+        if self._ordered is not None or not can_be_told:
             self._rest.forget()
-            yield from self._obedience.find(self._ordered, reading)
+        if not can_be_told:
             return
-        self._obedience.forget()
-        if is_link_up:
-            yield from self._rest.find(mono_s, reading, measured)
+        if self._ordered is not None:
+            yield from self._obedience.find(self._ordered, reading)
         else:
-            self._rest.forget()
+            yield from self._rest.find(mono_s, reading, measured)
+
+    def _is_to_stow(self, acting: Iterable[Rule]) -> bool:
+        return any(self._policy[rule].action is Action.STOW for rule in acting)
+
+    def _stands_still(self) -> bool:
+        reading = self._belief.reading
+        return reading is not None and self._stillness.is_still(reading)
 
     def _is_stowed(self, reading: Reading) -> bool:
         stow = self._limits.mount.stow
@@ -112,8 +128,10 @@ class Gate:
     def _examine(
         self, demand: Motion | None, dt_s: float, hazards: list[Hazard], *, may_recover: bool
     ) -> Examined:
-        reading, measured = self._belief.reading, self._belief.measured()
-        if demand is None or reading is None or measured is None or _is_halting(hazards):
+        reading, measured = self._belief.reading, self._belief.measured
+        if demand is None or not self._is_still or self._is_halting(hazards):
+            return Examined(None)
+        if reading is None or measured is None:
             return Examined(None)
         now = Mounted(self._ordered or Motion(*reading.joints), reading, measured)
         outside = find_at(reading.joints, self._limits, self._limits.encoder_error_deg)
@@ -121,32 +139,41 @@ class Gate:
             return examine(demand, now, dt_s, self._limits)
         return examine_return(demand, now, dt_s, self._limits, outside, may_recover=may_recover)
 
+    def _is_halting(self, hazards: Iterable[Hazard]) -> bool:
+        """Whether the mount is halted anyhow, before its demand has been looked at."""
+        policies = [self._policy[hazard.rule] for hazard in hazards]
+        return any(each.action is Action.HALT and each.after_s == 0.0 for each in policies)
+
     # -- what follows from it -------------------------------------------------------------------
 
     def _verdict(self, motion: Motion | None, acting: tuple[Hazard, ...]) -> Verdict:
-        worst = max((POLICY[hazard.rule].action for hazard in acting), default=Action.SLOW)
-        if worst is Action.LATCH:
-            self._latch = next(each.finding for each in acting if _action(each) is Action.LATCH)
-        self._ordered = None if worst >= Action.HALT or self._latch is not None else motion
+        if acting:
+            return self._with_interventions(motion, acting)
+        self._ordered = motion
+        return Verdict(Halt() if motion is None else Move(motion))
+
+    def _with_interventions(self, motion: Motion | None, acting: tuple[Hazard, ...]) -> Verdict:
+        interventions = tuple(map(self._intervention, acting))
+        worst = max(each.action for each in interventions)
+        if worst is Action.LATCH and not self._was_stopped:
+            self._latch = self._cause(acting)
+        self._ordered = motion if worst < Action.HALT else None
         return Verdict(
             Halt() if self._ordered is None else Move(self._ordered),
-            tuple(map(_intervention, acting)),
-            wants_stow=any(_action(hazard) is Action.STOW for hazard in acting),
+            interventions,
+            wants_stow=self._is_to_stow(hazard.rule for hazard in acting),
             latch=self._latch,
             must_cut_power=any(hazard.rule is Rule.SLIPPED for hazard in acting),
         )
 
+    def _cause(self, acting: tuple[Hazard, ...]) -> str:
+        latching = (each for each in acting if self._policy[each.rule].action is Action.LATCH)
+        return next(latching).finding
 
-def _action(hazard: Hazard) -> Action:
-    return POLICY[hazard.rule].action
-
-
-def _is_halting(hazards: list[Hazard]) -> bool:
-    """Whether the mount is halted anyhow, before its demand has been looked at."""
-    return any(
-        POLICY[hazard.rule].action is Action.HALT and POLICY[hazard.rule].after_s == 0.0
-        for hazard in hazards
-    )
+    def _intervention(self, hazard: Hazard) -> Intervention:
+        action, until = self._policy[hazard.rule].action, self._policy[hazard.rule].until
+        sentence = f"{hazard.finding} ({hazard.rule.value}): {_DONE[action]} {until}"
+        return Intervention(hazard.rule, action, sentence)
 
 
 _DONE = {
@@ -155,9 +182,3 @@ _DONE = {
     Action.HALT: "halted",
     Action.LATCH: "stopped for good",
 }
-
-
-def _intervention(hazard: Hazard) -> Intervention:
-    policy = POLICY[hazard.rule]
-    sentence = f"{hazard.finding} ({hazard.rule.value}): {_DONE[policy.action]} {policy.until}"
-    return Intervention(hazard.rule, policy.action, sentence)

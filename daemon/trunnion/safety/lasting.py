@@ -3,17 +3,18 @@
 Pure: the second is an argument, never earlier than that of the call before.
 """
 
-from collections.abc import Iterable
+from collections.abc import Iterable, Mapping
 
 from trunnion.safety.hazard import Hazard
-from trunnion.safety.policy import POLICY
+from trunnion.safety.policy import Policy
 from trunnion.safety.verdict import Rule
 
 
 class Lasting:
     """Remembers since when each hazard is there, and when one that acts was last seen."""
 
-    def __init__(self) -> None:
+    def __init__(self, policy: Mapping[Rule, Policy]) -> None:
+        self._policy = policy
         self._since_s: dict[Rule, float] = {}
         self._acting: dict[Rule, tuple[Hazard, float]] = {}
 
@@ -29,11 +30,11 @@ class Lasting:
             return ()
         self._since_s = {rule: self._since_s.get(rule, mono_s) for rule in present}
         for rule, hazard in present.items():
-            if mono_s - self._since_s[rule] >= POLICY[rule].after_s:
+            if mono_s - self._since_s[rule] >= self._policy[rule].after_s:
                 self._acting[rule] = (hazard, mono_s)
         self._acting = {
             rule: (hazard, seen_s)
             for rule, (hazard, seen_s) in self._acting.items()
-            if rule in present or mono_s - seen_s < POLICY[rule].calm_s
+            if rule in present or mono_s - seen_s < self._policy[rule].calm_s
         }
         return tuple(hazard for hazard, _ in self._acting.values())

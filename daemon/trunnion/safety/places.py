@@ -1,11 +1,10 @@
 """Where the mount may be: travel of both joints, and the sky its beam may look at."""
 
 from collections.abc import Iterator
-from math import ceil
+from math import ceil, inf
 
 from trunnion.mount.clearance import Sector
 from trunnion.mount.joints import Joints, Motion
-from trunnion.mount.motion import stopping_distance_deg
 from trunnion.mount.mount import JointBox, JointLimits
 from trunnion.safety.hazard import Hazard
 from trunnion.safety.limits import SafetyLimits
@@ -47,15 +46,48 @@ def find_on_the_way(begin: Joints, end: Joints, limits: SafetyLimits) -> Hazard 
     return None
 
 
+def find_while_stopping(
+    motion: Motion, limits: SafetyLimits, allowance_deg: float = ROUNDING_DEG
+) -> Hazard | None:
+    """What forbids the way on which both joints come to rest if they brake from this motion.
+
+    Each joint brakes by itself, so that the way is bent.
+    """
+    for place in _braking_steps(motion, limits):
+        found = find_at(place, limits, allowance_deg)
+        if found is not None:
+            return found
+    return None
+
+
 def stopping_place(motion: Motion, limits: SafetyLimits) -> Joints:
-    """Where both joints come to rest if they brake fully from this motion."""
-    first, second = limits.mount.first, limits.mount.second
-    first_deg = stopping_distance_deg(motion.first_rate_deg_s, first)
-    second_deg = stopping_distance_deg(motion.second_rate_deg_s, second)
+    """Where both joints come to rest if they brake from this motion, with something in reserve."""
     return Joints(
-        motion.first_deg + (first_deg if motion.first_rate_deg_s > 0.0 else -first_deg),
-        motion.second_deg + (second_deg if motion.second_rate_deg_s > 0.0 else -second_deg),
+        _braking_deg(motion.first_deg, motion.first_rate_deg_s, limits.braking.first, inf),
+        _braking_deg(motion.second_deg, motion.second_rate_deg_s, limits.braking.second, inf),
     )
+
+
+def _braking_steps(motion: Motion, limits: SafetyLimits) -> Iterator[Joints]:
+    first, second = limits.braking.first, limits.braking.second
+    first_s = abs(motion.first_rate_deg_s) / first.acceleration_deg_s2
+    second_s = abs(motion.second_rate_deg_s) / second.acceleration_deg_s2
+    fastest_deg_s = max(abs(motion.first_rate_deg_s), abs(motion.second_rate_deg_s))
+    longest_s = max(first_s, second_s)
+    steps = max(1, ceil(fastest_deg_s * longest_s / SPACING_DEG))
+    for step in range(steps + 1):
+        after_s = longest_s * step / steps
+        yield Joints(
+            _braking_deg(motion.first_deg, motion.first_rate_deg_s, first, after_s),
+            _braking_deg(motion.second_deg, motion.second_rate_deg_s, second, after_s),
+        )
+
+
+def _braking_deg(angle_deg: float, rate_deg_s: float, joint: JointLimits, after_s: float) -> float:
+    """Where a joint is that has braked for so long, or is at rest since."""
+    braking_s = min(after_s, abs(rate_deg_s) / joint.acceleration_deg_s2)
+    slowing = joint.acceleration_deg_s2 if rate_deg_s > 0.0 else -joint.acceleration_deg_s2
+    return angle_deg + (rate_deg_s - 0.5 * slowing * braking_s) * braking_s
 
 
 def depth_deg(place: Joints, limits: SafetyLimits) -> float:

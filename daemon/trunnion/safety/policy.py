@@ -44,8 +44,10 @@ def _refuse(meaning: str, remedy: str) -> Policy:
     return Policy(Action.HALT, 0.0, 0.0, Clears.BY_ORDER, until, meaning, remedy)
 
 
-def _halt(until: str, meaning: str, remedy: str, *, calm_s: float = 0.0) -> Policy:
-    return Policy(Action.HALT, 0.0, calm_s, Clears.BY_ITSELF, until, meaning, remedy)
+def _halt(
+    until: str, meaning: str, remedy: str, *, after_s: float = 0.0, calm_s: float = 0.0
+) -> Policy:
+    return Policy(Action.HALT, after_s, calm_s, Clears.BY_ITSELF, until, meaning, remedy)
 
 
 def _stow(until: str, meaning: str, remedy: str, *, calm_s: float = 0.0) -> Policy:
@@ -84,11 +86,13 @@ POLICY: dict[Rule, Policy] = {
         "until a possible reading comes",
         "The mount says it is where it cannot be, or gives no number.",
         "If it stays, check the encoders and the travel in the station file.",
+        after_s=0.25,
     ),
     Rule.READING_JUMPED: _halt(
         "until the readings follow each other again",
         "Two readings are further apart than the mount could have moved.",
         "If it comes again, check encoder, coupling and cable.",
+        after_s=0.25,
     ),
     Rule.POSITION_LOST: _latch(
         1.0,
@@ -115,6 +119,12 @@ POLICY: dict[Rule, Policy] = {
         0.0,
         "The mount moves away from where it was told to go.",
         "Reversed wiring or a reversed encoder after work on the mount; else a drive run away.",
+    ),
+    Rule.UNSETTLED: _halt(
+        "until it has stood still for a moment",
+        "After a start or a halt the mount has to stand still before it moves again.",
+        "Nothing; it takes a moment. If it stays, look who or what moves the mount.",
+        after_s=1.0,
     ),
     Rule.OUTSIDE: _halt(
         "until it was brought back by hand or by leave",

@@ -45,6 +45,7 @@ class Rule(Enum):
     STALLED = "stalled"
     SLIPPED = "moved unordered"
     WRONG_WAY = "moved the wrong way"
+    UNSETTLED = "not at rest yet"
     OUTSIDE = "outside its limits"
     LINK_DOWN = "link down"
     TURN_LATE = "control turn late"

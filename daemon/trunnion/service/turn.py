@@ -68,7 +68,7 @@ class ControlTurn:
         """Do one turn now."""
         utc_s, mono_s = self._clock.utc_s(), self._clock.monotonic_s()
         reading = self._link.newest()
-        world = look_around()
+        world = look_around()._replace(utc_s=utc_s)
         decision = self._pilot.decide(
             Situation(
                 utc_s,

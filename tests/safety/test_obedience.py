@@ -1,0 +1,122 @@
+"""Readings held against orders: behind, frozen, away."""
+
+import pytest
+
+from tests.safety.bench_mount import LIMITS
+from trunnion.mount.joints import Motion, Reading
+from trunnion.safety.obedience import Obedience
+from trunnion.safety.verdict import Rule
+
+# stall error 3.0, slip 1.0, encoder error 0.05: more than 1.1 deg counts
+
+
+class Watched:
+    """An obedience that is fed with one joint's angles, the other one obeying exactly."""
+
+    def __init__(self, joint: int) -> None:
+        self.obedience = Obedience(LIMITS)
+        self.joint = joint
+        self.mono_s = 71.25
+
+    def see(self, ordered_deg: float, read_deg: float, *, is_new: bool = True) -> set[Rule]:
+        self.mono_s += 0.1 * is_new
+        ordered, read = [20.3, 41.3], [20.3, 41.3]
+        ordered[self.joint], read[self.joint] = ordered_deg, read_deg
+        found = self.obedience.find(Motion(*ordered), Reading(self.mono_s, *read))
+        return {hazard.rule for hazard in found}
+
+
+joints = pytest.mark.parametrize("joint", [0, 1])
+
+
+@joints
+def test_a_joint_that_follows_its_orders_obeys(joint: int) -> None:
+    watched = Watched(joint)
+    for step in range(300):
+        assert watched.see(30.0 + 0.1 * step, 30.0 + 0.1 * max(0, step - 8)) == set()
+
+
+@joints
+@pytest.mark.parametrize("side", [-1.0, 1.0])
+def test_a_joint_may_be_behind_by_the_limit(joint: int, side: float) -> None:
+    watched = Watched(joint)
+    assert watched.see(50.0, 50.0) == set()
+    assert watched.see(50.0 + side * 3.0, 50.0) == set()
+    assert watched.see(50.0 + side * 3.01, 50.01 * 1.0 if side < 0 else 50.0) >= {Rule.STALLED}
+
+
+@joints
+@pytest.mark.parametrize("side", [-1.0, 1.0])
+def test_moving_away_from_the_orders_shows_at_any_speed(joint: int, side: float) -> None:
+    for step_deg in (0.02, 0.5):
+        watched = Watched(joint)
+        seen = set()
+        for step in range(round(1.05 / step_deg)):
+            seen |= watched.see(50.0 + side * step * step_deg, 50.0 - side * step * step_deg)
+        assert Rule.WRONG_WAY not in seen
+        for step in range(round(1.05 / step_deg), round(2.5 / step_deg)):
+            seen |= watched.see(50.0 + side * step * step_deg, 50.0 - side * step * step_deg)
+        assert Rule.WRONG_WAY in seen
+
+
+def test_a_joint_that_runs_away_from_orders_to_stay_is_seen() -> None:
+    watched = Watched(1)
+    assert [watched.see(50.0, 50.0 + 0.4 * step) for step in range(4)] == [
+        set(),
+        set(),
+        set(),
+        {Rule.WRONG_WAY},
+    ]
+
+
+def test_a_mount_that_lags_may_go_on_while_its_orders_turn_back() -> None:
+    """Cruising 1.9 deg behind; the orders turn at once, and meet it."""
+    watched = Watched(0)
+    seen = watched.see(52.0, 50.1)
+    for step in range(20):
+        seen |= watched.see(52.0 - 0.1 * step, min(50.1 + 0.1 * step, 52.0 - 0.1 * step))
+    assert seen == set()
+
+
+def test_catching_up_again_and_again_does_not_add_up() -> None:
+    watched = Watched(0)
+    for step in range(200):
+        assert watched.see(50.0 + 0.2 * step, 50.0 + 0.2 * step - 0.9 * (step % 2)) == set()
+
+
+@joints
+def test_a_frozen_reading_shows_once_the_orders_have_moved_on(joint: int) -> None:
+    watched = Watched(joint)
+    for ordered_deg in (50.0, 50.4, 50.8, 51.0999):
+        assert watched.see(ordered_deg, 50.0) == set()
+    assert watched.see(51.11, 50.0) == {Rule.FROZEN}
+    assert watched.see(48.89, 50.0) == {Rule.FROZEN}
+    assert watched.see(51.3, 50.001) == set()
+
+
+def test_a_slow_mount_has_not_frozen_before_it_has_spoken_again() -> None:
+    watched = Watched(0)
+    assert watched.see(50.0, 50.0) == set()
+    for ordered_deg in (50.9, 51.2, 51.9, 52.1):
+        assert watched.see(ordered_deg, 50.0, is_new=False) == set()
+    assert watched.see(52.2, 50.0) == set()
+    assert watched.see(52.3, 50.0) == {Rule.FROZEN}
+
+
+def test_a_joint_that_was_halted_begins_anew() -> None:
+    watched = Watched(0)
+    for step in range(3):
+        watched.see(50.0, 50.0 + 0.4 * step)
+    watched.obedience.forget()
+    assert watched.see(50.0, 51.2) == set()
+    assert watched.see(50.0, 52.2) == set()
+    assert watched.see(50.0, 52.4) == {Rule.WRONG_WAY}
+
+
+def test_findings_name_the_joint() -> None:
+    obedience = Obedience(LIMITS)
+    found = list(obedience.find(Motion(50.0, 41.3), Reading(71.3, 45.2, 46.9)))
+    assert [hazard.finding for hazard in found] == [
+        "the first joint is 4.8° from where it was ordered to be",
+        "the second joint is 5.6° from where it was ordered to be",
+    ]
