@@ -20,6 +20,7 @@ from trunnion.cli.run import run
 from trunnion.cli.schema import schema
 from trunnion.cli.show import show
 from trunnion.cli.tools import AS_TYPED, bench, commission, dialect
+from trunnion.cli.torture import torture
 
 _COMMANDS = (
     demo,
@@ -30,6 +31,7 @@ _COMMANDS = (
     angles,
     passes,
     rehearse,
+    torture,
     run,
     status,
     stop,

@@ -1,0 +1,78 @@
+"""`trunnion torture`: whole stations in virtual time under every fault we could think of."""
+
+import os
+from typing import TYPE_CHECKING, Annotated
+
+import typer
+
+from trunnion.cli.arguments import AsJson
+from trunnion.cli.errors import FAILED
+from trunnion.cli.output import print_json, print_text, progress
+
+if TYPE_CHECKING:
+    from trunnion.service.torture.campaign import SeedResult
+
+
+def torture(
+    *,
+    seed: Annotated[int, typer.Option(metavar="N", help="The first seed.")] = 1,
+    count: Annotated[
+        int, typer.Option(metavar="N", min=1, help="How many seeds, one station each.")
+    ] = 100,
+    workers: Annotated[
+        int | None, typer.Option(metavar="N", min=1, help="Processes; by default one a core.")
+    ] = None,
+    as_json: AsJson = False,
+) -> None:
+    """Fly invented stations through contacts full of faults, and judge what truly happened.
+
+    The same seed is the same flight. Moves no real mount. Exit code 1 when a promise was broken.
+    """
+    from trunnion.service.torture.campaign import try_seeds
+
+    results = []
+    with progress("torturing", count) as advance:
+        for result in try_seeds(range(seed, seed + count), workers or os.cpu_count() or 1):
+            results.append(result)
+            advance(1)
+    failed = [each for each in results if each.violations]
+    if as_json:
+        print_json(_plain(results, failed))
+    else:
+        _print(results, failed)
+    if failed:
+        raise typer.Exit(FAILED)
+
+
+def _plain(results: "list[SeedResult]", failed: "list[SeedResult]") -> dict[str, object]:
+    return {
+        "seeds": len(results),
+        "contacts": sum(each.contacts for each in results),
+        "mishaps": sum(each.mishaps for each in results),
+        "failed": [
+            {
+                "seed": each.seed,
+                "violations": [violation._asdict() for violation in each.violations],
+                "fewest_mishaps": list(each.fewest),
+            }
+            for each in failed
+        ],
+    }
+
+
+def _print(results: "list[SeedResult]", failed: "list[SeedResult]") -> None:
+    for each in failed:
+        print_text(f"seed {each.seed}: trunnion torture --seed {each.seed} --count 1")
+        for mishap in each.fewest:
+            print_text(f"  given  {mishap}")
+        for violation in each.violations:
+            print_text(
+                f"  broken {violation.guarantee}, after {violation.since_s:.1f} s: "
+                f"{violation.sentence}"
+            )
+    contacts = sum(each.contacts for each in results)
+    mishaps = sum(each.mishaps for each in results)
+    print_text(
+        f"{len(results)} stations, {contacts} contacts, {mishaps} mishaps; "
+        f"promises broken at {len(failed)} stations"
+    )

@@ -1,0 +1,1 @@
+"""Torture: whole stations in virtual time under seeded faults, judged by somebody else."""
