@@ -37,16 +37,19 @@ driver:
 """
 
 
-@pytest.fixture(params=[(ON_PTY, DialectDriver), (ON_MODBUS, ModbusDriver)])
-def case(request: pytest.FixtureRequest, tmp_path: Path) -> tuple[Path, Any]:
-    driver, kind = request.param
+CASES = [(ON_PTY, DialectDriver, signal.SIGINT), (ON_MODBUS, ModbusDriver, signal.SIGTERM)]
+
+
+@pytest.fixture(params=CASES, ids=["lines", "modbus"])
+def case(request: pytest.FixtureRequest, tmp_path: Path) -> tuple[Path, Any, signal.Signals]:
+    driver, kind, end = request.param
     path = tmp_path / "station.yaml"
     path.write_text(STATION + driver.replace("FOLDER", str(tmp_path)))
-    return path, kind
+    return path, kind, end
 
 
 @pytest.fixture
-def bench(case: tuple[Path, Any]) -> Iterator[subprocess.Popen[str]]:
+def bench(case: tuple[Path, Any, signal.Signals]) -> Iterator[subprocess.Popen[str]]:
     command = [sys.executable, "-m", "trunnion_drivers.bench", str(case[0])]
     with subprocess.Popen(command, stdout=subprocess.PIPE, text=True) as process:
         assert process.stdout is not None
@@ -56,9 +59,9 @@ def bench(case: tuple[Path, Any]) -> Iterator[subprocess.Popen[str]]:
 
 
 def test_the_station_finds_its_mount_on_the_bench(
-    case: tuple[Path, Any], bench: subprocess.Popen[str]
+    case: tuple[Path, Any, signal.Signals], bench: subprocess.Popen[str]
 ) -> None:
-    path, kind = case
+    path, kind, end = case
     station = read_station(path)
     clock = SystemClock()
     driver = kind.from_settings(station.settings, station.facts, clock)
@@ -69,7 +72,7 @@ def test_the_station_finds_its_mount_on_the_bench(
         clock.sleep(0.1)
     assert driver.read().first_deg == pytest.approx(19.5, abs=0.01)
     driver.close()
-    bench.send_signal(signal.SIGINT)
+    bench.send_signal(end)
     wire, _ = bench.communicate(timeout=10)
     assert bench.returncode == 0
     assert " > " in wire

@@ -7,6 +7,7 @@ speaks, and prints the wire. Then run the station in another terminal.
 
 import argparse
 import json
+import signal
 import sys
 import time
 from collections.abc import Sequence
@@ -50,6 +51,7 @@ def main(arguments: Sequence[str] | None = None) -> int:
         return 1
     sys.stdout.write(f"the bench is at {bench.url}; end it with Ctrl-C\n")
     sys.stdout.flush()
+    signal.signal(signal.SIGTERM, signal.default_int_handler)
     try:
         bench.serve()
     except KeyboardInterrupt:
