@@ -20,6 +20,9 @@ from trunnion.track.steering import Aim, steer
 from trunnion.track.transit import NoWay
 from trunnion.track.wanted import Wanted
 
+PROMPT_S = 0.5
+"""A mount that is no later than this is not called late."""
+
 NEAR_DEG = 5.0
 """A path that begins no further from the mount is taken up at once, and caught on the way."""
 
@@ -88,9 +91,9 @@ def _fly(draft: Draft, path: PlannedPath, span: tuple[float, float], serving: Se
     except NoWay as none:
         draft.find(FindingKind.NO_WAY, str(none), span)
         return
-    if there_s > begin_s:
+    if there_s > begin_s + PROMPT_S:
         draft.find(FindingKind.LATE, f"the mount arrives {there_s - begin_s:.0f} s late", span)
-        draft.outside_beam_s += there_s - begin_s
+    draft.outside_beam_s += there_s - begin_s
     if there_s >= end_s:
         return
     is_in_time = serving.free_s < begin_s or there_s > begin_s
