@@ -3,14 +3,21 @@
 import time
 from pathlib import Path
 from threading import Thread
+from typing import Any
 
 import pytest
 
 from tests.drivers.benches import DIALECTS, SystemClock, dialect_bench, machine, on_pty
 from tests.drivers.mounts import FACTS, HOME, HandClock
-from trunnion_drivers.bench.bench import Passed, Way
+from trunnion_drivers.bench.bench import Bench, Passed, Way
+from trunnion_drivers.bench.modbus_frames import Rtu
+from trunnion_drivers.bench.modbus_peer import ModbusPeer
 from trunnion_drivers.dialect.driver import DialectDriver
+from trunnion_drivers.interface.driver import Driver
 from trunnion_drivers.interface.errors import DriverError
+from trunnion_drivers.modbus.driver import ModbusDriver
+from trunnion_drivers.modbus.settings import ModbusSettings
+from trunnion_drivers.settings import checked
 from trunnion_drivers.simulator.driver import SimulatorDriver
 
 SLOW_BAUD = 300
@@ -41,7 +48,37 @@ def test_the_stop_does_not_wait_for_an_answer(name: str, stop: bytes, tmp_path: 
         driver.close()
 
 
-def read_and_forget(driver: DialectDriver) -> None:
+def test_over_modbus_it_waits_for_one_exchange_alone(tmp_path: Path) -> None:
+    """Twelve inputs with gaps are twelve questions: at 1200 baud more than a second and a half."""
+    wire: list[Passed] = []
+    settings: dict[str, Any] = {
+        "url": str(tmp_path / "adapter"),
+        "baud_rate": 1200,
+        "reply_within_s": 1.0,
+        "first": {"read": 0, "write": 10},
+        "second": {"read": 2, "write": 12},
+        "halt": {"coil": 3},
+        "limits": tuple(range(20, 44, 2)),
+    }
+    peer = ModbusPeer(checked(ModbusSettings, settings), machine(), Rtu())
+    with Bench(peer, on_pty(tmp_path), SystemClock(), wire.append, 1200):
+        driver = ModbusDriver.from_settings(settings, FACTS, SystemClock())
+        driver.open()
+        asking = Thread(target=read_and_forget, args=(driver,))
+        asking.start()
+        time.sleep(0.1)
+        asked_s = time.monotonic()
+        assert driver.halt_at_once()
+        assert time.monotonic() - asked_s < 0.02
+        asking.join()
+        assert time.monotonic() - asked_s > 1.5
+        stop = b"\x01\x05\x00\x03\xff\x00"
+        stops = [passed for passed in wire if passed.way is Way.IN and stop in passed.data]
+        assert stops[0].mono_s - asked_s < 0.6
+        driver.close()
+
+
+def read_and_forget(driver: Driver) -> None:
     try:
         driver.read()
     except DriverError:

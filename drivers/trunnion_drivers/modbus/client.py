@@ -45,13 +45,15 @@ class ModbusLink:
             raise Garbled(f"expected {count} registers, got {len(words)}")
         return list(words)
 
-    def input(self, address: int) -> bool:
-        """Read one discrete input. Raises LinkLost, NoReply, Garbled."""
+    def inputs(self, address: int, count: int) -> list[bool]:
+        """Read discrete inputs. Raises LinkLost, NoReply, Garbled."""
         client = self._client
-        answer = self._ask(
-            lambda: client.read_discrete_inputs(address, count=1, device_id=self._unit)
-        )
-        return bool(answer.bits[0])
+        bits = self._ask(
+            lambda: client.read_discrete_inputs(address, count=count, device_id=self._unit)
+        ).bits
+        if len(bits) < count:
+            raise Garbled(f"expected {count} inputs, got {len(bits)}")
+        return [bool(bit) for bit in bits[:count]]
 
     def write_registers(self, address: int, words: Sequence[int]) -> None:
         """Write holding registers. Raises LinkLost, NoReply, Garbled, Refused."""

@@ -1,7 +1,9 @@
 """A mount behind Modbus RTU or TCP, by the map in the station file."""
 
 from collections.abc import Mapping
+from contextlib import suppress
 from itertools import count
+from threading import Thread
 from typing import TYPE_CHECKING, Self
 
 from trunnion_drivers.control.command import Command, CommandMode
@@ -27,7 +29,7 @@ from trunnion_drivers.modbus.orders import (
     writes_for,
     writes_for_halt,
 )
-from trunnion_drivers.modbus.registers import blocks
+from trunnion_drivers.modbus.registers import blocks, runs
 from trunnion_drivers.modbus.settings import ModbusSettings
 from trunnion_drivers.settings import checked
 
@@ -81,13 +83,23 @@ class ModbusDriver(SteeredDriver):
         asked_s = self._clock.monotonic_s()
         words = self._link.registers(settings.table, begin, length)
         taken_s = 0.5 * (asked_s + self._clock.monotonic_s())
-        stop = settings.stop_input
+        stop, inputs = settings.stop_input, self._inputs()
         return DriverReading(
             taken_s,
             *angles_deg(settings, begin, words),
-            stop_pressed=stop is not None and self._link.input(stop.input) is stop.pressed_when,
-            at_limit=any(self._link.input(address) for address in settings.limits),
+            stop_pressed=stop is not None and inputs[stop.input] is stop.pressed_when,
+            at_limit=any(inputs[address] for address in settings.limits),
         )
+
+    def _inputs(self) -> dict[int, bool]:
+        """Every discrete input that the map names, by address."""
+        stop = self._settings.stop_input
+        wanted = [*self._settings.limits, *([stop.input] if stop else [])]
+        return {
+            address: state
+            for run in runs(wanted)
+            for address, state in zip(run, self._link.inputs(run.start, len(run)), strict=True)
+        }
 
     def _tell(self, command: Command) -> None:
         writes = writes_for(self._settings, command)
@@ -98,6 +110,15 @@ class ModbusDriver(SteeredDriver):
 
     def _rest(self) -> None:
         self._write(writes_for_halt(self._settings))
+
+    def _halt_at_once(self) -> bool:
+        """In a thread of its own, behind the one exchange that may be under way."""
+        Thread(target=self._halt_quietly, name="modbus stop", daemon=True).start()
+        return True
+
+    def _halt_quietly(self) -> None:
+        with suppress(DriverError):
+            self._rest()
 
     def _cut_power(self) -> None:
         if self._settings.power is not None:

@@ -5,7 +5,7 @@ the standard does not say which comes first, so the word order must be given.
 """
 
 import struct
-from collections.abc import Mapping, Sequence
+from collections.abc import Iterable, Mapping, Sequence
 from enum import Enum
 from types import MappingProxyType
 
@@ -65,10 +65,15 @@ def decode(words: Sequence[int], kind: RegisterType, order: WordOrder) -> float:
 
 def blocks(words: Mapping[int, int]) -> list[tuple[int, list[int]]]:
     """Registers by address as runs without a gap: the first address of each, and its values."""
-    runs: list[tuple[int, list[int]]] = []
-    for address in sorted(words):
-        if runs and address == runs[-1][0] + len(runs[-1][1]):
-            runs[-1][1].append(words[address])
+    return [(run.start, [words[address] for address in run]) for run in runs(words)]
+
+
+def runs(addresses: Iterable[int]) -> list[range]:
+    """Addresses as ranges without a gap, so that each can be asked for at once."""
+    found: list[range] = []
+    for address in sorted(set(addresses)):
+        if found and address == found[-1].stop:
+            found[-1] = range(found[-1].start, address + 1)
         else:
-            runs.append((address, [words[address]]))
-    return runs
+            found.append(range(address, address + 1))
+    return found
