@@ -144,3 +144,19 @@ def test_a_broken_station_file_is_told_without_a_traceback(station: Station) -> 
     assert done.returncode == 1
     assert "did you mean 'tick_hz'" in done.stderr
     assert "Traceback" not in done.stderr
+
+
+def test_transmitting_is_permitted_on_target_and_not_after_a_stop(
+    station: Station, daemons: list[subprocess.Popen[str]]
+) -> None:
+    text = station.file.read_text()
+    assert "transmit_permit: null" in text
+    station.file.write_text(text.replace("transmit_permit: null", "transmit_permit: permit"))
+    permit = station.folder / "permit"
+    daemons.append(station.run())
+    station.wait_for(lambda status: status["transmit"]["is_permitted"])
+    assert permit.read_text().startswith("permitted until_mono_s=")
+    assert station.command("stop", str(station.file), "--cause", "a cow").returncode == 0
+    stopped = station.wait_for(lambda status: not status["transmit"]["is_permitted"])
+    assert "a cow" in stopped["transmit"]["reason"]
+    assert permit.read_text() == "forbidden\n"

@@ -65,6 +65,8 @@ class SafetySection(Section):
     """Elevation in degrees below which transmitting is never permitted; by default 3 (No. 21.14 of
     the ITU Radio Regulations) or the elevation floor, whichever is higher. Raise it to what your
     licence says."""
+    transmit_settle_s: Annotated[float, Field(ge=0, le=60)] = 1.0
+    """Seconds for which the beam must have been on target before transmitting is permitted."""
     keep_outs: tuple[KeepOutSection, ...] = ()
     """Boxes of the sky that the beam's centre never enters, nor crosses on its way."""
     reading_max_age_s: Annotated[float, Field(gt=0, le=10)] = 1.0

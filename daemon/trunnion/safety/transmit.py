@@ -7,7 +7,7 @@ from trunnion.safety.limits import SafetyLimits
 from trunnion.safety.verdict import Action, Verdict
 
 SETTLED_S = 1.0
-"""The beam must have been on target for so long without a break."""
+"""The beam must have been on target for so long without a break, by default."""
 
 VALIDITY_S = 1.0
 """A permission is good for so long, and has to be given anew before that."""
@@ -27,9 +27,12 @@ class TransmitPermit(NamedTuple):
 class TransmitJudge:
     """Gives the permission turn by turn; whatever is not known forbids."""
 
-    def __init__(self, limits: SafetyLimits, tolerance_deg: float) -> None:
+    def __init__(
+        self, limits: SafetyLimits, tolerance_deg: float, settled_s: float = SETTLED_S
+    ) -> None:
         self._limits = limits
         self._tolerance_deg = tolerance_deg
+        self._settled_s = settled_s
         self._since_s: float | None = None
 
     def judge(
@@ -46,7 +49,7 @@ class TransmitJudge:
             return TransmitPermit(None, reason)
         if self._since_s is None:
             self._since_s = mono_s
-        if mono_s - self._since_s < SETTLED_S:
+        if mono_s - self._since_s < self._settled_s:
             return TransmitPermit(None, "the beam has been on target for too short a time")
         return TransmitPermit(mono_s + VALIDITY_S, None)
 

@@ -39,6 +39,7 @@ from trunnion.service.records.writer import RecordWriter
 from trunnion.service.standing_wish import StandingWish
 from trunnion.service.status import Health, describe
 from trunnion.service.surroundings import HARDWARE_STOP, world_of
+from trunnion.service.transmission import transmission_of
 from trunnion.service.turn import ControlTurn, Orders, Turn
 
 _log = logging.getLogger(__name__)
@@ -109,7 +110,10 @@ class Daemon:
             held.callback(self._watch.close)
             recorder = Recorder(records)
             self._contacts = ContactLog(beam_of(station), recorder)
-            observers = (self._contacts, recorder, _Heartbeat(station, notifier))
+            self._transmission = transmission_of(station, limits, beam_of(station).tolerance_deg)
+            held.callback(self._transmission.end)
+            heartbeat = _Heartbeat(station, notifier)
+            observers = (self._transmission, self._contacts, recorder, heartbeat)
             self._control = ControlTurn(clock, self._link, pilot, gate, observers)
             self._held = held.pop_all()
 
@@ -192,6 +196,8 @@ class Daemon:
             self._records.trouble if self._records is not None else None,
             self._plans.trouble,
             self._plans.is_planning,
+            self._transmission.permit_at(self._clock.monotonic_s()),
+            self._transmission.trouble,
         )
 
     # -- what is told ---------------------------------------------------------------------------

@@ -6,6 +6,7 @@ from trunnion.files.station import StationFile
 from trunnion.mount.joints import Motion
 from trunnion.pilot.phase import Wish
 from trunnion.safety.emergency import EmergencyStop
+from trunnion.safety.transmit import TransmitPermit
 from trunnion.safety.verdict import Move
 from trunnion.service.cadence import Beat
 from trunnion.service.link.status import LinkStatus
@@ -27,6 +28,8 @@ class Health(NamedTuple):
     records_trouble: str | None
     plan_trouble: str | None
     is_planning: bool
+    transmit: TransmitPermit
+    transmit_trouble: str | None
 
 
 def describe(
@@ -42,6 +45,7 @@ def describe(
         "contact": _contact(turn, score) if turn else None,
         "mount": _mount(turn) if turn else None,
         "interventions": [each.sentence for each in turn.verdict.interventions] if turn else [],
+        "transmit": _transmit(health.transmit),
         "link": _link(health.link),
         "turns": {"lateness_s": health.beat.lateness_s, "missed": health.missed_turns},
         "trouble": _troubles(turn, health),
@@ -86,6 +90,10 @@ def _joints(motion: Motion | None) -> list[float] | None:
     return None if motion is None else list(motion.joints)
 
 
+def _transmit(permit: TransmitPermit) -> dict[str, object]:
+    return {"is_permitted": permit.until_s is not None, "reason": permit.reason}
+
+
 def _link(link: LinkStatus) -> dict[str, object]:
     return {
         "state": link.state.value,
@@ -104,5 +112,6 @@ def _troubles(turn: Turn | None, health: Health) -> list[str]:
         turn.decision.trouble if turn else None,
         health.plan_trouble,
         health.records_trouble,
+        health.transmit_trouble,
     )
     return [each for each in possible if each]
