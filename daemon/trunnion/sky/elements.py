@@ -82,6 +82,11 @@ class Propagator:
         return positions_km.T, velocities_km_s.T
 
     @property
+    def satrec(self) -> Any:
+        """SGP4's own record, to read from."""
+        return self._satrec
+
+    @property
     def period_min(self) -> float:
         """Minutes of a revolution, by the mean motion."""
         return tau / float(self._satrec.no_kozai)
@@ -132,6 +137,11 @@ class Satellite:
     def name(self) -> str:
         """The satellite's name, or its catalogue number where it has none."""
         return self.element_set.name
+
+    @property
+    def propagator(self) -> Propagator:
+        """SGP4 for its elements."""
+        return self._propagator
 
     @property
     def period_min(self) -> float:

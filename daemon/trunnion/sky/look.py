@@ -35,6 +35,17 @@ class Looks(NamedTuple):
     elevation_rate_deg_s: FloatArray
     range_rate_km_s: FloatArray | None
 
+    def where(self, is_chosen: NDArray[np.bool_]) -> "Looks":
+        """Some of them."""
+        return Looks(
+            self.azimuth_deg[is_chosen],
+            self.elevation_deg[is_chosen],
+            None if self.range_km is None else self.range_km[is_chosen],
+            self.azimuth_rate_deg_s[is_chosen],
+            self.elevation_rate_deg_s[is_chosen],
+            None if self.range_rate_km_s is None else self.range_rate_km_s[is_chosen],
+        )
+
 
 class Target(Protocol):
     """Anything a station can point at, seen from one viewpoint.
