@@ -13,7 +13,7 @@ from tests.drivers.mounts import HandClock
 from tests.drivers.rfc2217_server import HandHeldAdapter, Rfc2217Server
 from tests.drivers.scripted_port import Scripted
 from trunnion_drivers.bench.endpoint import PtyEndpoint, TcpEndpoint
-from trunnion_drivers.interface.errors import Garbled, LinkLost, NoReply
+from trunnion_drivers.interface.errors import BadSettings, Garbled, LinkLost, NoReply
 from trunnion_drivers.serial_port.any_port import AnyPort, port_for
 from trunnion_drivers.serial_port.exchange import Exchanges
 from trunnion_drivers.serial_port.settings import PortSettings
@@ -95,6 +95,18 @@ def test_what_is_no_port_is_told(tmp_path: Path) -> None:
     path.write_text("hello")
     with pytest.raises(LinkLost, match="cannot be used"):
         port(str(path)).open()
+
+
+def test_a_port_that_cannot_switch_its_direction_is_told() -> None:
+    endpoint = PtyEndpoint()
+    with pytest.raises(LinkLost, match="RS485"):
+        port(endpoint.url, rs485=True).open()
+    endpoint.close()
+
+
+def test_a_line_cannot_do_two_things() -> None:
+    with pytest.raises(BadSettings, match="rts"):
+        port("/dev/null", rs485=True, power_output="rts")
 
 
 def test_a_missing_permission_names_the_group(tmp_path: Path) -> None:

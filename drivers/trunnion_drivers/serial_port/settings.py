@@ -76,3 +76,9 @@ class PortSettings(LineSettings):
                 "a socket:// has no modem-control lines for stop_input or power_output"
             )
         return self
+
+    @model_validator(mode="after")
+    def _must_not_use_rts_twice(self) -> Self:
+        if self.rs485 and self.power_output is PowerLine.RTS:
+            raise ValueError("rs485 needs rts for its direction, so rts cannot hold the power")
+        return self
