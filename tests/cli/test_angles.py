@@ -6,6 +6,7 @@ from pathlib import Path
 import pytest
 
 from tests.cli.command import EXAMPLE, trunnion
+from tests.files.oem_text import kvn
 from trunnion.files.station import load_station
 from trunnion.service.targets import resolve_target
 from trunnion.service.viewpoint import viewpoint_of
@@ -128,3 +129,48 @@ def test_a_reader_that_has_gone_is_no_error_message() -> None:
     )
     told = subprocess.run(["sh", "-c", command], capture_output=True, text=True, check=False)
     assert (told.stdout, told.stderr) == ("{\n", "")
+
+
+@pytest.mark.parametrize(
+    "target", ["sun", "moon", "saturn", "icrs:83.633,22.014", "fixed:12.5,7.25", "QUILLON-1"]
+)
+def test_every_kind_of_target_is_answered_with_its_trust(target: str) -> None:
+    told = trunnion(
+        *("angles", STATION, "--target", target, "--at", INSTANT, "--json", "--verbose")
+    )
+    assert told.exit_code == 0
+    answer = json.loads(told.stdout)
+    assert answer["refraction"] == "radio"
+    assert answer["earth_orientation"] == "finals2000A.all"
+    assert 0.0 <= answer["expected_error_deg"] < 1.0
+    assert -90.0 <= answer["angles"][0]["elevation_deg"] <= 90.0
+
+
+def test_what_may_be_wrong_is_told_with_its_source() -> None:
+    arguments = ("angles", STATION, "--target", "QUILLON-1", "--at", INSTANT, "--geometric")
+    told = trunnion(*arguments, "--verbose")
+    assert told.exit_code == 0
+    for words in ("refraction: none", "light time and aberration: off", "expected error: "):
+        assert words in told.stdout
+    assert "age of the orbit elements" in told.stdout
+    assert "common practice, no source" in told.stdout
+    assert "expected error" not in trunnion(*arguments).stdout
+
+
+def test_files_of_every_kind_are_targets_on_the_command_line(tmp_path: Path) -> None:
+    table = tmp_path / "beacon.csv"
+    table.write_text(
+        "time,azimuth_deg,elevation_deg\n"
+        "2026-12-01T01:05:10Z,359.6,12.1\n2026-12-01T01:05:20Z,0.4,12.3\n"
+    )
+    told = trunnion("angles", STATION, "--target", table, "--at", INSTANT, "--json")
+    (angle,) = json.loads(told.stdout)["angles"]
+    assert angle["elevation_deg"] == pytest.approx(12.245, abs=0.01)
+    ephemeris = tmp_path / "craft.oem"
+    ephemeris.write_text(kvn())
+    at = "2026-03-01T12:04:30Z"
+    told = trunnion("angles", STATION, "--target", ephemeris, "--at", at, "--json")
+    assert json.loads(told.stdout)["target"] == "TESTSAT"
+    outside = trunnion("angles", STATION, "--target", ephemeris, "--at", INSTANT)
+    assert outside.exit_code != 0
+    assert "expected an instant within its ephemeris" in outside.stderr

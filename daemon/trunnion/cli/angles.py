@@ -1,6 +1,6 @@
 """`trunnion angles`: where a target stands, at single instants or at regular ones."""
 
-from typing import TYPE_CHECKING, Annotated
+from typing import TYPE_CHECKING, Annotated, Any
 
 import typer
 
@@ -12,11 +12,14 @@ from trunnion.cli.arguments import (
     OptionalUntil,
     Station,
     TargetText,
+    Verbose,
 )
-from trunnion.cli.output import moment, number, print_json, print_table
+from trunnion.cli.output import moment, number, print_json, print_table, print_text
 from trunnion.sky.instants import format_utc
 
 if TYPE_CHECKING:
+    from collections.abc import Mapping
+
     from trunnion.sky.look import Look
 
 _MOST_INSTANTS = 1_000_000
@@ -33,23 +36,39 @@ def angles(
         float | None, typer.Option("--every", metavar="S", help="Step of a series in seconds.")
     ] = None,
     geometric: Geometric = False,
+    verbose: Verbose = False,
     as_json: AsJson = False,
 ) -> None:
     """Print the look angles of a target: azimuth, elevation, range, and how they change."""
     from trunnion.files.station import load_station
     from trunnion.service.targets import TargetBook
+    from trunnion.service.trust_words import doubts_of, models_in_use
     from trunnion.service.viewpoint import viewpoint_of
 
     instants = _instants(at, from_s, until_s, every_s)
     loaded = load_station(station)
     viewpoint = viewpoint_of(loaded)
-    book = TargetBook(loaded, viewpoint.geometric() if geometric else viewpoint)
-    found = book.resolve_or_read(target)
+    seen_from = viewpoint.geometric() if geometric else viewpoint
+    found = TargetBook(loaded, seen_from).resolve_or_read(target)
     looks = [(utc_s, found.look(utc_s)) for utc_s in instants]
+    trust = {**models_in_use(seen_from), **doubts_of(found, instants)} if verbose else {}
     if as_json:
-        print_json({"target": found.name, "angles": [_plain(*each) for each in looks]})
-    else:
-        _print_looks(found.name, looks)
+        print_json({"target": found.name, **trust, "angles": [_plain(*each) for each in looks]})
+        return
+    _print_looks(found.name, looks)
+    if verbose:
+        _print_trust(trust)
+
+
+def _print_trust(trust: "Mapping[str, Any]") -> None:
+    on_or_off = "on" if trust["light_time_and_aberration"] else "off"
+    print_text(
+        f"refraction: {trust['refraction']}; Earth orientation: {trust['earth_orientation']}; "
+        f"light time and aberration: {on_or_off}"
+    )
+    print_text(f"expected error: {number(trust['expected_error_deg'], 4)}°")
+    for each in trust["doubts"]:
+        print_text(f"  {each['what']}: {number(each['angle_deg'], 4)}° ({each['source']})")
 
 
 def _instants(

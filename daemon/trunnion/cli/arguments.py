@@ -29,7 +29,8 @@ TargetText = Annotated[
         "--target",
         metavar="TARGET",
         help="A name in the station's targets or elements, a catalogue number, a file with one "
-        "set of elements, sun, or fixed:AZIMUTH,ELEVATION.",
+        "target (orbit elements, an ephemeris, an angle table), sun, moon or a planet, "
+        "icrs:RIGHT_ASCENSION,DECLINATION, or fixed:AZIMUTH,ELEVATION.",
     ),
 ]
 
@@ -39,6 +40,13 @@ Geometric = Annotated[
         "--geometric",
         metavar="",
         help="The straight line: no refraction, light time or aberration.",
+    ),
+]
+
+Verbose = Annotated[
+    bool,
+    typer.Option(
+        "--verbose", metavar="", help="Tell the models in use, too, and what may be wrong."
     ),
 ]
 
