@@ -18,6 +18,7 @@ from trunnion.sky.ephemeris import Ephemeris, EphemerisCraft, Segment
 from trunnion.sky.frames import Frame, fixed_to_earth
 from trunnion.sky.instants import julian_date, parse_utc
 from trunnion.sky.interpolation import Curve, Interpolation, Method
+from trunnion.sky.passes import find_passes
 from trunnion.sky.refraction import NoRefraction
 from trunnion.sky.viewpoint import Viewpoint
 
@@ -93,3 +94,15 @@ def test_an_ephemeris_of_a_satellite_looks_like_the_satellite(frame: Frame) -> N
         assert ours[3:] == pytest.approx(theirs[3:], abs=1e-4)
     looks = craft.looks(EPOCH_S + np.array([47.3, 911.1]))
     assert looks.azimuth_deg[1] == craft.look(EPOCH_S + 911.1).azimuth_deg
+
+
+def test_passes_of_an_ephemeris_are_those_of_the_satellite_within_its_span() -> None:
+    craft, original = craft_of(Frame.TEME), satellite("QUILLON-1", is_apparent=True)
+    window = EPOCH_S - 86_400.0, EPOCH_S + 86_400.0
+    expected = find_passes(original, EPOCH_S + 0.001, EPOCH_S + 1769.999, -20.0)
+    found = find_passes(craft, *window, -20.0)
+    assert len(found) == len(expected) > 0
+    for ours, theirs in zip(found, expected, strict=True):
+        assert ours.highest_elevation_deg == pytest.approx(theirs.highest_elevation_deg, abs=1e-5)
+        assert ours.rise_s is not None
+        assert ours.set_s is not None

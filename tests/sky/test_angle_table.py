@@ -84,3 +84,21 @@ def test_arrays_and_a_pickled_copy_give_the_same_numbers() -> None:
     for index, instant in enumerate(instants.tolist()):
         assert [column[index] for column in looks] == list(table.look(instant))
     assert table.looks(np.empty(0)).azimuth_deg.size == 0
+
+
+def test_passes_are_looked_for_where_there_are_rows() -> None:
+    target = satellite("QUILLON-1")
+    whole = find_passes(target, EPOCH_S, EPOCH_S + 43_200.0, 5.0)
+    rows: list[Row] = []
+    for each in whole[:2]:
+        assert each.rise_s is not None
+        assert each.set_s is not None
+        instants = np.arange(each.rise_s - 45.0, each.set_s - 45.0, STEP_S).tolist()
+        rows += [Row(s, *target.look(s)[:3]) for s in instants]
+    found = find_passes(AngleTable("two", tuple(rows)), EPOCH_S, EPOCH_S + 43_200.0, 5.0)
+    assert len(found) == 2
+    for ours, theirs in zip(found, whole, strict=False):
+        assert ours.rise_s == pytest.approx(theirs.rise_s, abs=0.5)
+        assert ours.set_s is not None
+        assert theirs.set_s is not None
+        assert theirs.set_s - 60.0 < ours.set_s < theirs.set_s - 40.0

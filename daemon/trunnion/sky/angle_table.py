@@ -68,6 +68,16 @@ class AngleTable:
         values, slopes = _between(before, after, utc_s)
         return _look(values, slopes)
 
+    def spans(self, from_s: float, until_s: float) -> tuple[tuple[float, float], ...]:
+        """Begin and end of every stretch of rows without a gap, cut to a window."""
+        edges = [-1, *sorted(self._gaps), len(self.rows) - 1]
+        stretches = (
+            (self.rows[before + 1].utc_s, self.rows[after].utc_s)
+            for before, after in pairwise(edges)
+        )
+        cut = ((max(begin_s, from_s), min(end_s, until_s)) for begin_s, end_s in stretches)
+        return tuple((begin_s, end_s) for begin_s, end_s in cut if begin_s < end_s)
+
     def _interval(self, utc_s: float) -> int:
         """Index of the row from which the curve runs over this instant."""
         if self.rows[0].utc_s <= utc_s <= self.rows[-1].utc_s:

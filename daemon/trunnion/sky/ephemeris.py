@@ -16,6 +16,9 @@ from trunnion.sky.look import FloatArray, Look, Looks
 from trunnion.sky.topocentric import topocentric
 from trunnion.sky.viewpoint import Viewpoint
 
+ROUNDING_S = 1e-3
+"""Spans are told so much shorter at their ends, for instants are rounded on their way."""
+
 
 @dataclass(frozen=True, slots=True, eq=False)
 class Segment:
@@ -71,6 +74,22 @@ class EphemerisCraft:
         state = segment.curve.at(tai_s - segment.origin_tai_s)
         fixed = fixed_to_earth(segment.frame, state, utc_s, view.earth)
         return topocentric(*fixed, view, with_light_time=view.is_apparent)
+
+    def spans(self, from_s: float, until_s: float) -> tuple[tuple[float, float], ...]:
+        """Begin and end (UTC) of the useable intervals within a window; touching ones as one."""
+        found: list[tuple[float, float]] = []
+        for segment in self.ephemeris.segments:
+            begin_s = self._utc_s(segment.begin_tai_s) + ROUNDING_S
+            end_s = self._utc_s(segment.end_tai_s) - ROUNDING_S
+            if found and begin_s - found[-1][1] < 4.0 * ROUNDING_S:
+                begin_s = found.pop()[0]
+            found.append((begin_s, end_s))
+        cut = ((max(begin_s, from_s), min(end_s, until_s)) for begin_s, end_s in found)
+        return tuple((begin_s, end_s) for begin_s, end_s in cut if begin_s < end_s)
+
+    def _utc_s(self, tai_s: float) -> float:
+        leap_seconds = self.viewpoint.earth.leap_seconds
+        return tai_s - leap_seconds.at(tai_s - leap_seconds.at(tai_s))
 
     def looks(self, utc_s: FloatArray) -> Looks:
         """Where it stands at many instants; raises NoPosition when it has none at any of them."""

@@ -8,7 +8,7 @@ for a second only is therefore found like any other.
 
 from collections.abc import Callable
 from dataclasses import dataclass
-from typing import NamedTuple
+from typing import NamedTuple, Protocol, runtime_checkable
 
 import numpy as np
 from numpy.typing import NDArray
@@ -23,6 +23,15 @@ MASK_STEP_DEG = 0.25
 """A gap in a horizon mask that a target crosses in a smaller angle than this can be overlooked."""
 
 Threshold = float | Callable[[float], float]
+
+
+@runtime_checkable
+class Bounded(Protocol):
+    """A target that has positions at some times only."""
+
+    def spans(self, from_s: float, until_s: float) -> tuple[tuple[float, float], ...]:
+        """Begin and end (UTC) of every span that reaches into a window, cut to it."""
+        ...
 
 
 @dataclass(frozen=True, slots=True)
@@ -47,13 +56,34 @@ def find_passes(
 
     `above` is an elevation in degrees, or a function from azimuth to elevation: a horizon mask. The
     pieces into which a mask cuts a pass are passes of their own. Raises SkyError for a window that
-    is empty or longer than a year, NoPosition where the target has none in it.
+    is empty or longer than a year, NoPosition where the target has none in it. A target that tells
+    the spans of its ephemeris is looked for in those alone, and rises and sets at their ends.
     """
     if not 0.0 < until_s - from_s <= LONGEST_WINDOW_S:
         raise SkyError(
             f"expected a window of more than 0 and at most {LONGEST_WINDOW_S / 86400.0:g} days, "
             f"got {(until_s - from_s) / 86400.0:g} days"
         )
+
+    return tuple(
+        each
+        for begin_s, end_s in _known(target, from_s, until_s)
+        for each in _passes_within(target, (begin_s, end_s), (from_s, until_s), above)
+    )
+
+
+def _known(target: Target, from_s: float, until_s: float) -> tuple[tuple[float, float], ...]:
+    """The parts of the window in which the target has positions."""
+    if isinstance(target, Bounded):
+        return target.spans(from_s, until_s)
+    return ((from_s, until_s),)
+
+
+def _passes_within(
+    target: Target, part: tuple[float, float], window: tuple[float, float], above: Threshold
+) -> tuple[Pass, ...]:
+    """The passes in a part of the window, at whose own ends a target may rise and set too."""
+    from_s, until_s = part
 
     def is_up(utc_s: FloatArray) -> NDArray[np.bool_]:
         return _is_above(target.looks(utc_s), above)
@@ -68,7 +98,7 @@ def find_passes(
     heights = _Heights(nodes_s, looks.elevation_deg)
     edges_deg = [target.looks(each).elevation_deg.tolist() for each in (begins_s, ends_s)]
     return tuple(
-        _pass((from_s, until_s), begin, end, heights)
+        _pass(window, begin, end, heights)
         for begin, end in zip(
             zip(begins_s.tolist(), edges_deg[0], strict=True),
             zip(ends_s.tolist(), edges_deg[1], strict=True),
