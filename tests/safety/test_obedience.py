@@ -22,7 +22,9 @@ class Watched:
         self.mono_s += 0.1 * is_new
         ordered, read = [20.3, 41.3], [20.3, 41.3]
         ordered[self.joint], read[self.joint] = ordered_deg, read_deg
-        found = self.obedience.find(Motion(*ordered), Reading(self.mono_s, *read))
+        found = self.obedience.find(
+            Motion(*ordered), self.mono_s - 0.07, Reading(self.mono_s, *read)
+        )
         return {hazard.rule for hazard in found}
 
 
@@ -115,8 +117,25 @@ def test_a_joint_that_was_halted_begins_anew() -> None:
 
 def test_findings_name_the_joint() -> None:
     obedience = Obedience(LIMITS)
-    found = list(obedience.find(Motion(50.0, 41.3), Reading(71.3, 45.2, 46.9)))
+    found = list(obedience.find(Motion(50.0, 41.3), 71.2, Reading(71.3, 45.2, 46.9)))
     assert [hazard.finding for hazard in found] == [
         "the first joint is 4.8° from where it was ordered to be",
         "the second joint is 5.6° from where it was ordered to be",
     ]
+
+
+def test_a_mount_may_have_gone_on_since_it_was_ordered_or_not() -> None:
+    ordered = Motion(50.0, 41.3, 2.0, -1.0)
+    for first_deg, second_deg in ((50.0, 41.3), (58.0, 37.3), (61.0, 34.3), (47.0, 44.3)):
+        reading = Reading(75.25, first_deg, second_deg)
+        assert list(Obedience(LIMITS).find(ordered, 71.25, reading)) == []
+    for first_deg, second_deg in ((61.01, 37.3), (58.0, 34.29)):
+        reading = Reading(75.25, first_deg, second_deg)
+        (found,) = Obedience(LIMITS).find(ordered, 71.25, reading)
+        assert found.rule is Rule.STALLED
+
+
+def test_a_reading_older_than_the_order_is_held_against_the_order_itself() -> None:
+    reading = Reading(71.0, 46.99, 41.3)
+    (found,) = Obedience(LIMITS).find(Motion(50.0, 41.3, 2.0, 0.0), 71.25, reading)
+    assert found.rule is Rule.STALLED

@@ -46,6 +46,7 @@ class Gate:
         self._clock = ClockWatch(limits)
         self._lasting = Lasting(policy)
         self._ordered: Motion | None = None
+        self._ordered_s = 0.0
         self._judged_s: float | None = None
         self._latch: str | None = None
         self._was_stopped = False
@@ -60,6 +61,7 @@ class Gate:
         hazards = list(self._find(mono_s, reading, world, is_motion_asked=demand is not None))
         examined = self._examine(demand, dt_s, hazards, may_recover=world.may_recover)
         hazards += examined.hazards
+        self._ordered_s = mono_s
         return self._verdict(examined.motion, self._lasting.acting_at(mono_s, hazards))
 
     def _elapsed_s(self, mono_s: float) -> float:
@@ -107,7 +109,7 @@ class Gate:
         if not can_be_told:
             return
         if self._ordered is not None:
-            yield from self._obedience.find(self._ordered, reading)
+            yield from self._obedience.find(self._ordered, self._ordered_s, reading)
         else:
             yield from self._rest.find(mono_s, reading, measured)
 

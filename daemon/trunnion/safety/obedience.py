@@ -67,11 +67,16 @@ class Obedience:
         self._joints = (_Joint(self._limits), _Joint(self._limits))
         self._taken_s: float | None = None
 
-    def find(self, ordered: Motion, reading: Reading) -> Iterator[Hazard]:
-        """Everything wrong with this reading, given what was ordered in the turn before."""
+    def find(self, ordered: Motion, ordered_s: float, reading: Reading) -> Iterator[Hazard]:
+        """Everything wrong with this reading, given what was ordered in the turn before, and when.
+
+        Since then the mount may have gone on at the rate that was ordered, or not.
+        """
+        since_s = max(0.0, reading.taken_s - ordered_s)
         is_new, self._taken_s = reading.taken_s != self._taken_s, reading.taken_s
         for number in (0, 1):
-            ordered_deg, read_deg = ordered[number], reading[number + 1]
+            read_deg = reading[number + 1]
+            ordered_deg = _nearest(read_deg, ordered[number], ordered[number + 2] * since_s)
             joint, name = self._joints[number], JOINT_NAMES[number]
             if joint.moves_away(ordered_deg, read_deg):
                 yield Hazard(Rule.WRONG_WAY, f"the {name} joint moves away from its orders")
@@ -82,3 +87,9 @@ class Obedience:
             if behind_deg > self._limits.stall_error_deg:
                 finding = f"the {name} joint is {behind_deg:.1f}° from where it was ordered to be"
                 yield Hazard(Rule.STALLED, finding)
+
+
+def _nearest(read_deg: float, ordered_deg: float, run_deg: float) -> float:
+    """Where on its run, from the order on, a joint is held to be."""
+    begin_deg, end_deg = sorted((ordered_deg, ordered_deg + run_deg))
+    return min(max(read_deg, begin_deg), end_deg)

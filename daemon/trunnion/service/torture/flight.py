@@ -10,8 +10,6 @@ from trunnion.mount.joints import Joints, Motion
 from trunnion.pilot.phase import Wish
 from trunnion.safety.gate import Gate
 from trunnion.safety.limits import SafetyLimits
-from trunnion.safety.policy import POLICY, Policy
-from trunnion.safety.verdict import Rule
 from trunnion.service.clock import VirtualClock
 from trunnion.service.torture.contact import Arc
 from trunnion.service.torture.disk import TroubledLatch
@@ -23,6 +21,8 @@ from trunnion.track.path import Assignment
 
 TRANSMIT_FLOOR_DEG = 10.0
 WIND_LIMIT_M_S = 17.0
+
+GateOf = Callable[[SafetyLimits], Gate]
 
 
 class Instant(NamedTuple):
@@ -39,11 +39,11 @@ class Instant(NamedTuple):
 
 
 class Flight:
-    """Flies one scenario; the same scenario and policy give the same instants, bit for bit."""
+    """Flies one scenario; the same scenario and gate give the same instants, bit for bit."""
 
-    def __init__(self, scenario: Scenario, policy: Mapping[Rule, Policy] = POLICY) -> None:
+    def __init__(self, scenario: Scenario, gate_of: GateOf = Gate) -> None:
         self._scenario = scenario
-        self._policy = policy
+        self._gate_of = gate_of
         self._clock = VirtualClock(START_UTC_S, monotonic_s=1000.0)
         self._start_s = self._clock.monotonic_s()
         self._steel = Steel(scenario, self._clock)
@@ -81,7 +81,7 @@ class Flight:
                 )
 
     def _start(self) -> Process:
-        gate = Gate(self._limits, self._policy)
+        gate = self._gate_of(self._limits)
         return Process(gate, self._limits, self._steel, self._clock, self._latch, self._wish_file)
 
     def _since_s(self) -> float:

@@ -25,7 +25,7 @@ LONGEST_MISHAP_S = 25.0
 
 @dataclass(frozen=True, slots=True)
 class Scenario:
-    """Everything a flight depends on, but for the policy: the same scenario, the same flight."""
+    """Everything a flight depends on, but for the gate: the same scenario, the same flight."""
 
     seed: int
     mount: Mount

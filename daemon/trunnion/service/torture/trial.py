@@ -1,12 +1,10 @@
 """One seed put to the test: fly it, judge it, and find the fewest faults that still fail."""
 
-from collections.abc import Mapping
 from typing import NamedTuple
 
-from trunnion.safety.policy import POLICY, Policy
-from trunnion.safety.verdict import Rule
+from trunnion.safety.gate import Gate
 from trunnion.service.torture.checker import Checker, Violation
-from trunnion.service.torture.flight import Flight
+from trunnion.service.torture.flight import Flight, GateOf
 from trunnion.service.torture.scenario import Scenario
 
 
@@ -17,24 +15,24 @@ class Outcome(NamedTuple):
     violations: tuple[Violation, ...]
 
 
-def try_out(scenario: Scenario, policy: Mapping[Rule, Policy] = POLICY) -> Outcome:
+def try_out(scenario: Scenario, gate_of: GateOf = Gate) -> Outcome:
     """Fly a scenario to its end, and judge every instant of it."""
     checker = Checker(scenario)
     first: dict[str, Violation] = {}
-    for instant in Flight(scenario, policy).instants():
+    for instant in Flight(scenario, gate_of).instants():
         for violation in checker.note(instant):
             first.setdefault(violation.guarantee, violation)
     return Outcome(scenario, tuple(first.values()))
 
 
-def shrink(outcome: Outcome, policy: Mapping[Rule, Policy] = POLICY) -> Outcome:
+def shrink(outcome: Outcome, gate_of: GateOf = Gate) -> Outcome:
     """Leave out mishap after mishap, as long as the same guarantee is still violated."""
     wanted = {violation.guarantee for violation in outcome.violations}
     is_smaller = True
     while is_smaller:
         is_smaller = False
         for mishap in outcome.scenario.mishaps:
-            tried = try_out(outcome.scenario.without(mishap), policy)
+            tried = try_out(outcome.scenario.without(mishap), gate_of)
             if wanted & {violation.guarantee for violation in tried.violations}:
                 outcome, is_smaller = tried, True
                 break
