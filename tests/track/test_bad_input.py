@@ -1,5 +1,6 @@
 """What no plan should hold, and yet does: a clear finding each, and nothing else is lost."""
 
+import tracemalloc
 from dataclasses import dataclass, replace
 
 import numpy as np
@@ -11,6 +12,7 @@ from trunnion.mount.clearance import Clearance, Sector
 from trunnion.mount.horizon import HorizonMask
 from trunnion.mount.joints import Joints
 from trunnion.mount.mount import Mount
+from trunnion.sky.fixed import FixedDirection
 from trunnion.sky.look import FloatArray, Look, Looks, Target
 from trunnion.track.day import plan_day
 from trunnion.track.programme import FindingKind, Programme
@@ -126,3 +128,15 @@ def test_a_hundred_contacts_at_once() -> None:
     assert [each.contact for each in programme.assignments] == ["c6"]
     served = [each.contact for each in programme.forecasts if each.is_served]
     assert served == ["c6"]
+
+
+def test_a_contact_of_days_takes_no_more_memory_than_a_day_of_contacts() -> None:
+    tracemalloc.start()
+    try:
+        fixed = FixedDirection(123.4, 45.6)
+        programme = plan(replace(wanted(), target=fixed, until_s=START_S + 3 * 86_400.0))
+        peak_mib = tracemalloc.get_traced_memory()[1] / 2**20
+    finally:
+        tracemalloc.stop()
+    assert programme.forecasts[0].worst_error_deg < 1e-9
+    assert peak_mib < 100.0

@@ -1,5 +1,7 @@
 """When a target can be pointed at."""
 
+from dataclasses import replace
+
 import pytest
 
 from tests.track.skies import START_S, Lost, Overflight
@@ -46,3 +48,13 @@ def test_behind_the_mask_there_is_nothing() -> None:
 def test_no_position_is_said() -> None:
     with pytest.raises(NoPosition):
         clear_stretches(wanted(Lost(TARGET, START_S + 300.0)), CLEARANCE)
+
+
+def test_a_margin_keeps_away_from_the_floor() -> None:
+    target = Overflight(48.1, 17.3)
+    plain = Wanted("c", target, START_S, START_S + 800.0, 1)
+    spared = replace(plain, margin_deg=0.7)
+    (near,), (far,) = clear_stretches(plain, CLEARANCE), clear_stretches(spared, CLEARANCE)
+    assert near.begin_s < far.begin_s < far.end_s < near.end_s
+    lowest_deg = target.look(far.begin_s).elevation_deg
+    assert lowest_deg == pytest.approx(CLEARANCE.lowest_deg(0.0) + 0.7, abs=0.01)

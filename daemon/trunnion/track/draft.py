@@ -47,8 +47,9 @@ class Draft:
                 self.find(FindingKind.NO_POSITION, str(error))
                 return
             if not self.stretches:
+                by = f" by {wanted.margin_deg:g}°" if wanted.margin_deg else ""
                 sentence = "the target never stands clear of floor, horizon mask and keep-outs"
-                self.find(FindingKind.NEVER_VISIBLE, sentence)
+                self.find(FindingKind.NEVER_VISIBLE, sentence + by)
 
     def courses(self, hinges: Hinges) -> list[tuple[Stretch, Course]]:
         """Each stretch, and where the target takes the joints in it."""

@@ -18,6 +18,9 @@ CATCH_STEP_S = 0.1
 FINE_S = 0.1
 """Steps in which a path is caught, and in which its errors are read off."""
 
+MOST_INSTANTS = 20_000
+"""Longer contacts are of slower targets: their errors are read off at wider steps."""
+
 MOMENT_S = 10.0
 """A target met for less than this, between two losses, is not found again."""
 
@@ -32,7 +35,7 @@ class Lost(NamedTuple):
 
 
 class Outcome(NamedTuple):
-    """Errors (deg) at instants `FINE_S` apart from `caught_s` (UTC) on, shape (n,).
+    """Errors (deg) at instants `step_s` apart from `caught_s` (UTC) on, shape (n,).
 
     `waiting_s` is the time outside the beam before that, `last_error_deg` the error just before.
     """
@@ -40,6 +43,7 @@ class Outcome(NamedTuple):
     caught_s: float
     waiting_s: float
     last_error_deg: float
+    step_s: float
     utc_s: FloatArray
     error_deg: FloatArray
 
@@ -52,17 +56,17 @@ class Outcome(NamedTuple):
 
     def outside_s(self, beam: Beam) -> float:
         """Seconds outside the beam."""
-        return self.waiting_s + float((self.error_deg > beam.half_width_deg).sum()) * FINE_S
+        return self.waiting_s + float((self.error_deg > beam.half_width_deg).sum()) * self.step_s
 
     def lost(self, beam: Beam) -> Iterator[Lost]:
         """The stretches in which the error is above the tolerance, short moments apart joined."""
         is_lost = self.error_deg > beam.tolerance_deg
         edges = np.flatnonzero(np.diff(is_lost, prepend=False, append=False))
-        is_apart = np.diff(edges[1:-1])[::2] > MOMENT_S / FINE_S
+        is_apart = np.diff(edges[1:-1])[::2] > MOMENT_S / self.step_s
         edges = edges[np.concatenate(([True], np.repeat(is_apart, 2), [True]))[: edges.size]]
         for begin, end in edges.reshape(-1, 2).tolist():
             error_deg = self.error_deg[begin:end]
-            outside_s = float((error_deg > beam.half_width_deg).sum()) * FINE_S
+            outside_s = float((error_deg > beam.half_width_deg).sum()) * self.step_s
             yield Lost(
                 float(self.utc_s[begin]),
                 float(self.utc_s[end - 1]),
@@ -84,8 +88,9 @@ def outcome(
         error_deg = _error_deg(path, caught_s, now, mount)
         if error_deg > beam.half_width_deg:
             waiting_s += CATCH_STEP_S
-    utc_s = np.arange(caught_s, end_s, FINE_S)
-    return Outcome(caught_s, waiting_s, error_deg, utc_s, errors_along(path, utc_s, mount))
+    step_s = max(FINE_S, (end_s - caught_s) / MOST_INSTANTS)
+    utc_s = np.arange(caught_s, end_s, step_s)
+    return Outcome(caught_s, waiting_s, error_deg, step_s, utc_s, errors_along(path, utc_s, mount))
 
 
 def errors_along(path: PlannedPath, utc_s: FloatArray, mount: Mount) -> FloatArray:

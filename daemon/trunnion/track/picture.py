@@ -24,6 +24,9 @@ CELL_DEG = 1.0
 STEP_S = 1.0
 """Shortest step from row to row."""
 
+MOST_ROWS = 1500
+"""Bounds the memory that a long contact takes."""
+
 BLOCKED_DEG = 1000.0
 """Stands for the error of a cell where mount or boresight may not be."""
 
@@ -46,7 +49,8 @@ class Picture(NamedTuple):
 def draw(course: Course, mount: Mount, clearance: Clearance) -> Picture:
     """The picture of a course over the whole first-joint travel, all turns and both solutions."""
     limits = mount.first
-    stride = max(1, ceil(max(STEP_S, 0.5 * CELL_DEG / limits.rate_deg_s) / course.step_s))
+    wide_s = max(STEP_S, 0.5 * CELL_DEG / limits.rate_deg_s)
+    stride = max(1, ceil(wide_s / course.step_s), ceil(course.size / MOST_ROWS))
     step_deg = limits.rate_deg_s * stride * course.step_s
     span_deg = limits.soft_upper_deg - limits.soft_lower_deg
     reach = max(1, ceil(min(step_deg, span_deg) / CELL_DEG))

@@ -13,6 +13,9 @@ from trunnion.track.wanted import Wanted
 GRID_S = 1.0
 """A target that comes into sight for less than this is not worth a contact."""
 
+MOST_STEPS = 50_000
+"""Beyond half a day the grid widens."""
+
 EDGE_S = 0.01
 """How well the ends of a stretch are found."""
 
@@ -26,6 +29,7 @@ class Stretch(NamedTuple):
 
 def clear_stretches(wanted: Wanted, clearance: Clearance) -> tuple[Stretch, ...]:
     """The stretches of the wanted time in which the target is clear; raises NoPosition."""
+    clearance = clearance.with_margin(wanted.margin_deg)
 
     def is_clear(utc_s: float) -> bool:
         look = wanted.target.look(utc_s)
@@ -46,8 +50,9 @@ def clear_stretches(wanted: Wanted, clearance: Clearance) -> tuple[Stretch, ...]
 
 
 def grid(from_s: float, until_s: float, step_s: float = GRID_S) -> FloatArray:
-    """Instants from one to the other, both included, at most `step_s` apart."""
-    return np.linspace(from_s, until_s, max(2, int(np.ceil((until_s - from_s) / step_s)) + 1))
+    """Instants from one to the other, both included, at most `step_s` apart but for very long."""
+    steps = min(int(np.ceil((until_s - from_s) / step_s)), MOST_STEPS)
+    return np.linspace(from_s, until_s, max(2, steps + 1))
 
 
 def _are_clear(looks: Looks, wanted: Wanted, clearance: Clearance) -> np.ndarray:

@@ -9,7 +9,9 @@ from trunnion.sky.look import Target
 class Wanted:
     """One contact as it is wished: who, from when until when (UTC, POSIX seconds), how badly.
 
-    `minimum_elevation_deg` asks for the target only while it is at least this high.
+    `minimum_elevation_deg` asks for the target only while it is at least this high, and
+    `margin_deg` only while it is that far from floor, horizon mask and keep-outs: a mount that
+    waits at the very limit has no room for its own last wobble.
     """
 
     contact: str
@@ -18,3 +20,4 @@ class Wanted:
     until_s: float
     priority: int
     minimum_elevation_deg: float = -90.0
+    margin_deg: float = 0.0
