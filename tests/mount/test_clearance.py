@@ -1,5 +1,7 @@
 """Floor, horizon mask and keep-outs."""
 
+from math import cos, radians
+
 import pytest
 from hypothesis import given
 from hypothesis import strategies as st
@@ -73,3 +75,29 @@ def test_clear_means_above_floor_and_mask_and_outside_every_keep_out() -> None:
     assert not clearance.is_clear(93.1, 11.0)
     assert not clearance.is_clear(4.9, 15.3)
     assert clearance.keep_out(4.9, 15.3) is MAST
+
+
+@given(st.floats(0.0, 359.9), st.floats(-10.0, 89.0), st.floats(0.0, 5.0))
+def test_what_is_clear_with_a_margin_is_clear_without_it(
+    azimuth_deg: float, elevation_deg: float, margin_deg: float
+) -> None:
+    clearance = Clearance(5.3, MASK, (MAST,))
+    if clearance.with_margin(margin_deg).is_clear(azimuth_deg, elevation_deg):
+        assert clearance.is_clear(azimuth_deg, elevation_deg - margin_deg)
+        assert clearance.is_clear(azimuth_deg, elevation_deg)
+
+
+def test_a_margin_makes_everything_larger_by_as_much_on_the_sky() -> None:
+    wide = Clearance(5.3, MASK, (MAST,)).with_margin(0.5)
+    assert wide.floor_deg == pytest.approx(5.8)
+    assert wide.lowest_deg(93.1) == pytest.approx(12.2)
+    sector = wide.keep_outs[0]
+    assert (sector.lower_elevation_deg, sector.upper_elevation_deg) == pytest.approx((0.6, 28.4))
+    sideways_deg = 351.5 - sector.from_azimuth_deg
+    assert sideways_deg * cos(radians(27.9)) == pytest.approx(0.5)
+    assert not sector.contains(181.0, 15.3)
+
+
+def test_a_margin_round_the_whole_horizon_stays_a_whole_turn() -> None:
+    ring = Sector("ring", 10.0, 9.0, -5.0, 2.0).with_margin(3.0)
+    assert all(ring.contains(azimuth_deg, 1.0) for azimuth_deg in (0.0, 9.5, 181.0, 350.0))

@@ -1,8 +1,13 @@
 """Where in the sky the boresight may be: above the floor and the horizon, outside the keep-outs."""
 
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, replace
+from math import cos, radians
 
 from trunnion.mount.horizon import HorizonMask
+
+
+NARROWEST = 0.02
+"""Cosine of an elevation so near the zenith that a box there reaches all round anyhow."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -17,6 +22,20 @@ class Sector:
     to_azimuth_deg: float
     lower_elevation_deg: float
     upper_elevation_deg: float
+
+    def with_margin(self, margin_deg: float) -> "Sector":
+        """The same box, that much larger on every side, in azimuth by as much on the sky."""
+        highest_deg = max(abs(self.lower_elevation_deg), abs(self.upper_elevation_deg))
+        sideways_deg = margin_deg / max(cos(radians(highest_deg)), NARROWEST)
+        width_deg = (self.to_azimuth_deg - self.from_azimuth_deg) % 360.0 or 360.0
+        sideways_deg = min(sideways_deg, 0.5 * (360.0 - width_deg))
+        return replace(
+            self,
+            from_azimuth_deg=(self.from_azimuth_deg - sideways_deg) % 360.0,
+            to_azimuth_deg=(self.to_azimuth_deg + sideways_deg) % 360.0,
+            lower_elevation_deg=self.lower_elevation_deg - margin_deg,
+            upper_elevation_deg=self.upper_elevation_deg + margin_deg,
+        )
 
     def contains(self, azimuth_deg: float, elevation_deg: float) -> bool:
         """Whether this direction lies in the box."""
@@ -43,6 +62,16 @@ class Clearance:
         kept_out_deg = [sector.upper_elevation_deg for sector in self.keep_outs]
         highest_deg = max(self.floor_deg, *masked_deg, *kept_out_deg, -90.0)
         object.__setattr__(self, "free_above_deg", highest_deg)
+
+    def with_margin(self, margin_deg: float) -> "Clearance":
+        """The same, with floor, mask and keep-outs that much larger on every side."""
+        mask = self.mask and HorizonMask(
+            tuple(
+                (azimuth_deg, high_deg + margin_deg) for azimuth_deg, high_deg in self.mask.points
+            )
+        )
+        keep_outs = tuple(sector.with_margin(margin_deg) for sector in self.keep_outs)
+        return Clearance(self.floor_deg + margin_deg, mask, keep_outs)
 
     def lowest_deg(self, azimuth_deg: float) -> float:
         """Lowest elevation that floor and mask allow in this direction."""

@@ -24,6 +24,10 @@ from trunnion.track.programme import Forecast
 from trunnion.track.wanted import Wanted
 
 
+MARGIN_DEG = 0.2
+"""Contacts begin and end this far from floor, mask and keep-outs (common practice, no source)."""
+
+
 @dataclass(frozen=True, slots=True)
 class ContactBriefing:
     """One contact of the plan: what it will be like, or why there is none.
@@ -98,6 +102,7 @@ def _draft(
         contact.until_s,
         contact.priority,
         -90.0 if lowest_deg is None else lowest_deg,
+        MARGIN_DEG,
     )
 
 
