@@ -13,7 +13,7 @@ from trunnion.mount.sphere import separation_deg
 from trunnion.track.corrected import Corrected
 from trunnion.track.correction import Correction
 from trunnion.track.day import plan_day
-from trunnion.track.replan import replan
+from trunnion.track.replan import corrected, replan
 from trunnion.track.wanted import Wanted
 
 TARGET = Overflight(61.3, heading_deg=211.1)
@@ -82,7 +82,7 @@ def test_the_rest_is_planned_from_the_present_joints_and_taken_over_without_a_ju
     (first,) = plan_day([wanted], mount(), CLEARANCE, BEAM, STOW, START_S).assignments
     now = first.path.at(INSTANT_S)
     correction = Correction(time_bias_s=3.0)
-    programme = replan(first, correction, mount(), CLEARANCE, BEAM, now.joints, INSTANT_S)
+    programme = replan(wanted, correction, mount(), CLEARANCE, BEAM, now.joints, INSTANT_S)
     (second,) = programme.assignments
     assert second.begin_s == pytest.approx(INSTANT_S, abs=0.1)
     assert abs(second.path.at(second.begin_s).first_deg - now.first_deg) < 10.0
@@ -93,14 +93,20 @@ def test_the_rest_is_planned_from_the_present_joints_and_taken_over_without_a_ju
         assert abs(after.first_rate_deg_s - flown.first_rate_deg_s) <= 0.3 + 1e-9
         flown = after
     assert utc_s < INSTANT_S + 5.0
-    again = replan(second, Correction(), mount(), CLEARANCE, BEAM, flown.joints, utc_s)
-    assert again.assignments[0].target is TARGET
+
+
+def test_a_correction_replaces_the_one_before_and_none_takes_it_away() -> None:
+    wanted = Wanted("c", TARGET, START_S, START_S + 800.0, 3)
+    once = corrected(wanted, Correction(time_bias_s=3.0))
+    twice = corrected(once, Correction(along_deg=0.3))
+    assert isinstance(twice.target, Corrected)
+    assert twice.target.target is TARGET
+    assert corrected(twice, Correction()).target is TARGET
 
 
 def test_a_late_start_takes_the_contact_up_where_the_mount_stands() -> None:
     wanted = Wanted("c", TARGET, START_S, START_S + 800.0, 3)
-    (first,) = plan_day([wanted], mount(), CLEARANCE, BEAM, STOW, START_S).assignments
-    programme = replan(first, Correction(), mount(), CLEARANCE, BEAM, STOW, INSTANT_S)
+    programme = replan(wanted, Correction(), mount(), CLEARANCE, BEAM, STOW, INSTANT_S)
     assert programme.forecasts[0].findings[0].kind.name == "LATE"
     assert programme.forecasts[0].worst_error_deg < 1e-3
     assert isinstance(programme.assignments[0].path.at(INSTANT_S), Motion)
