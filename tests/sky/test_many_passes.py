@@ -123,3 +123,14 @@ def test_roots_are_found_each_in_its_bracket() -> None:
     found = roots(lambda which, x: x ** powers[which] - 0.3, np.zeros(3), np.full(3, 2.0), 1e-12)
     assert found == pytest.approx(0.3 ** (1.0 / powers), rel=1e-9)
     assert roots(lambda _, x: x, np.empty(0), np.empty(0), 1.0).size == 0
+
+
+def test_elements_of_three_weeks_ago_lose_no_pass_either() -> None:
+    """Drag has then moved satellites minutes ahead of what the mean orbit says."""
+    window = EPOCH_S + 20.3 * DAY_S, EPOCH_S + 22.1 * DAY_S
+    satellites = [Satellite(each, VIEWS["north"]) for each in low_sets(10, seed=23)]
+    found = find_passes_of_many(satellites, *window, 4.7)
+    for satellite, each in zip(satellites, found, strict=True):
+        if not isinstance(each, NoPosition):
+            assert_same(each, find_passes(satellite, *window, 4.7))
+    assert sum(not isinstance(each, NoPosition) for each in found) > 5

@@ -2,6 +2,7 @@
 
 from collections.abc import Sequence
 from dataclasses import dataclass
+from itertools import pairwise
 from typing import NamedTuple
 
 import numpy as np
@@ -40,11 +41,10 @@ class Fleet:
         days = np.floor(utc_s / SECONDS_A_DAY)
         jd_midnight, fraction = UNIX_EPOCH_JD + days, utc_s / SECONDS_A_DAY - days
         position_km, velocity_km_s = np.empty((3, len(utc_s))), np.empty((3, len(utc_s)))
-        numbers, begins = np.unique(which, return_index=True)
-        ends = np.append(begins[1:], len(which))
-        for number, begin, end in zip(numbers.tolist(), begins, ends, strict=True):
+        edges = [0, *(np.flatnonzero(np.diff(which)) + 1).tolist(), len(which)]
+        for begin, end in pairwise(edges if len(which) else []):
             part = slice(begin, end)
-            propagator = self.satellites[number].propagator
+            propagator = self.satellites[which[begin]].propagator
             position_km[:, part], velocity_km_s[:, part] = propagator.at_many(
                 jd_midnight[part], fraction[part]
             )

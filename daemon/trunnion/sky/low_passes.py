@@ -18,15 +18,15 @@ from trunnion.sky.kepler import MU_KM3_S2, States, moved
 from trunnion.sky.look import FloatArray, Looks
 from trunnion.sky.viewpoint import Viewpoint
 
-_SURELY_LOWER_DEG = 0.3
-"""So much lower at a culmination by the model, and SGP4 need not be asked."""
+_SURELY_LOWER_DEG = 3.0
+"""So much lower at a culmination by a rough look ahead, and SGP4 need not be asked again."""
 
 _SETTLED_S = 0.02
 """A correction smaller than this leaves less than a millisecond to correct."""
 
 EARTH_RADIUS_KM = 6371.0
 _LONGEST_STEP_S = 200.0
-_CLIMB_STEPS = 3
+_CLIMB_STEPS = 2
 _EDGE_STEPS = 2
 _MOST_ROUNDS = 8
 
@@ -80,11 +80,22 @@ def low_arcs(
 def _culminations(fleet: Fleet, which: IntArray, near_s: FloatArray, above_deg: float) -> _Tops:
     """Those above an elevation."""
     first = fleet.seen(which, near_s)
-    tops = _by_model(fleet.viewpoint, which, near_s, first)
-    tops = tops.where(tops.looks.elevation_deg >= above_deg - _SURELY_LOWER_DEG)
-    second = fleet.seen(tops.which, tops.utc_s)
-    tops = _by_model(fleet.viewpoint, tops.which, tops.utc_s, second)
+    step_s = _to_top_s(first.states, first.looks)
+    reaches = _soon_deg(first, step_s) >= above_deg - _SURELY_LOWER_DEG
+    which, near_s = which[reaches], (near_s + step_s)[reaches]
+    tops = _by_model(fleet.viewpoint, which, near_s, fleet.seen(which, near_s))
     return tops.where(tops.looks.elevation_deg >= above_deg)
+
+
+def _soon_deg(seen: Sightings, after_s: FloatArray) -> FloatArray:
+    """Elevation a minute or so later, were the motion a parabola under gravity alone."""
+    motion, half = _motion(seen.looks), 0.5 * after_s * after_s
+    pull = MU_KM3_S2 / np.linalg.norm(seen.states.position_km, axis=0) ** 3
+    up = motion.up + motion.up_rate * after_s - half * pull * (motion.up + EARTH_RADIUS_KM)
+    bend = motion.speed2 - pull * (motion.range2 + EARTH_RADIUS_KM * motion.up)
+    range2 = motion.range2 + 2.0 * motion.along * after_s + 2.0 * half * bend
+    sine = up / np.sqrt(np.maximum(range2, up * up))
+    return np.asarray(np.degrees(np.arcsin(sine)))
 
 
 def _by_model(view: Viewpoint, which: IntArray, from_s: FloatArray, seen: Sightings) -> _Tops:

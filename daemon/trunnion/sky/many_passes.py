@@ -12,7 +12,7 @@ from trunnion.sky.high_passes import Profile, high_profile
 from trunnion.sky.low_passes import Arcs, low_arcs
 from trunnion.sky.passes import LONGEST_WINDOW_S, Pass
 
-CHUNK = 100
+CHUNK = 200
 """Satellites at once: enough to share what each step costs, few enough for memory."""
 
 MOST_SATELLITE_DAYS = 4000.0
@@ -88,7 +88,12 @@ def _by_arcs(
     instants = (arcs.rise_s.tolist(), arcs.culmination_s.tolist(), arcs.set_s.tolist())
     rows = list(zip(*instants, arcs.highest_deg.tolist(), strict=True))
     for satellite, (begin, end) in zip(satellites, pairwise(bounds.tolist()), strict=True):
-        yield tuple(_cut(each, satellite, window) for each in rows[begin:end])
+        yield tuple(
+            Pass(*each)
+            if window[0] < each[0] and each[2] < window[1]
+            else _cut(each, satellite, window)
+            for each in rows[begin:end]
+        )
 
 
 def _cut(
