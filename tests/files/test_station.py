@@ -224,7 +224,7 @@ def test_a_stow_over_the_top_counts_by_its_true_elevation(tmp_path: Path) -> Non
             "zebra: 3\n",
             (
                 "station.yaml:22: zebra: unknown key; known here: site, mount, antenna, sky, "
-                "safety, driver, cadence, files, targets"
+                "safety, driver, wind, cadence, files, targets"
             ),
         ),
     ],

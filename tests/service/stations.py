@@ -6,6 +6,9 @@ from pathlib import Path
 from trunnion.cli.init import example_folder
 from trunnion.files.station import StationFile, load_station
 
+NO_WIND = {"wind:   ": "# ", "  kind: fixed   ": "# ", "  speed_m_s: 4": "# "}
+"""Changes that leave the example station without an anemometer."""
+
 NO_CHANGES: Mapping[str, str] = {}
 
 

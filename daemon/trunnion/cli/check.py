@@ -31,10 +31,12 @@ def check(
     from trunnion.service.briefing_order import BriefingOrder
     from trunnion.service.clock import SystemClock
     from trunnion.service.drivers import build_driver
+    from trunnion.service.winds import build_wind
 
     now_s = SystemClock().utc_s() if now is None else _instant(now)
     briefing = brief(BriefingOrder(station, plan, now_s))
     build_driver(briefing.station, SystemClock())
+    build_wind(briefing.station, SystemClock())
     if as_json:
         print_json(_plain(briefing))
     else:

@@ -16,6 +16,7 @@ from trunnion.files.station_machine import (
     CadenceSection,
     DriverSection,
     MountSection,
+    WindSection,
 )
 from trunnion.files.station_safety import SafetySection
 from trunnion.files.station_sky import SiteSection, SkySection
@@ -45,6 +46,8 @@ class StationFile(Section):
     sky: SkySection = _ALL_DEFAULTS
     safety: SafetySection
     driver: DriverSection
+    wind: WindSection | None = None
+    """The anemometer, where there is one."""
     cadence: CadenceSection = _ALL_DEFAULTS
     files: FilesSection = _ALL_DEFAULTS
     targets: dict[TargetName, TargetText] = Field(default_factory=dict)

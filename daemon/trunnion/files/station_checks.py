@@ -2,7 +2,8 @@
 
 from collections.abc import Iterator
 
-from trunnion.files.station_machine import CadenceSection, MountSection
+from trunnion.files.station_files import FilesSection
+from trunnion.files.station_machine import CadenceSection, MountSection, WindSection
 from trunnion.files.station_safety import SafetySection
 from trunnion.files.validation import Check, Contradiction
 
@@ -44,10 +45,35 @@ def patience_longer_than_a_turn(
             )
 
 
+def wind_limits_with_an_anemometer(
+    wind: WindSection | None, safety: SafetySection
+) -> Iterator[Contradiction]:
+    """A limit of the wind needs somebody who knows the wind."""
+    for key in ("wind_stow_gust_m_s", "wind_stow_mean_m_s"):
+        if wind is None and getattr(safety, key) is not None:
+            yield Contradiction(
+                ("safety", key), "expected a section wind: with the anemometer, got none"
+            )
+
+
+def heartbeat_with_a_source(safety: SafetySection, files: FilesSection) -> Iterator[Contradiction]:
+    """A heartbeat has both a file and an age, or neither."""
+    if safety.heartbeat_max_age_s is not None and files.heartbeat is None:
+        yield Contradiction(
+            ("safety", "heartbeat_max_age_s"), "expected files.heartbeat to name a file, got none"
+        )
+    if files.heartbeat is not None and safety.heartbeat_max_age_s is None:
+        yield Contradiction(
+            ("files", "heartbeat"), "expected safety.heartbeat_max_age_s beside it, got none"
+        )
+
+
 STATION_CHECKS: tuple[Check, ...] = (
     floor_below_travel,
     stow_above_floor,
     patience_longer_than_a_turn,
+    wind_limits_with_an_anemometer,
+    heartbeat_with_a_source,
 )
 
 

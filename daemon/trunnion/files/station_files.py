@@ -39,6 +39,8 @@ class FilesSection(Section):
     """The file that remembers an emergency stop over a restart."""
     control_socket: FilePath = Path(DEFAULT_CONTROL_SOCKET)
     """The socket by which `trunnion status`, `stop` and the others reach the running daemon."""
+    heartbeat: FilePath | None = None
+    """A file that somebody outside touches as long as all is well there; on a local disk."""
     transmit_permit: FilePath | None = None
     """A file that says, turn by turn, whether transmitting is permitted, for a station to wire up;
     best on a file system in memory, such as /run. Not an interlock that protects people."""

@@ -100,6 +100,20 @@ class DriverSection(Section):
         return self.model_extra or {}
 
 
+class WindSection(Section):
+    """The anemometer: which wind input, and that input's own settings."""
+
+    model_config = ConfigDict(extra="allow")
+
+    kind: Name
+    """The wind input's name, as in `nmea`; further keys of this section are its own settings."""
+
+    @property
+    def settings(self) -> Mapping[str, object]:
+        """The input's own settings: all of the section but `kind`, as they stand in the file."""
+        return self.model_extra or {}
+
+
 class CadenceSection(Section):
     """How often the control turn runs."""
 

@@ -18,6 +18,9 @@ from trunnion.files.section import Section
 _LEGAL_TRANSMIT_FLOOR_DEG = 3.0  # No. 21.14 of the ITU Radio Regulations
 
 
+WindSpeed = Annotated[float, Field(gt=0, le=100)]
+
+
 class KeepOutSection(Section):
     """A box of the sky that the beam's centre never enters: a mast, a roof door."""
 
@@ -81,6 +84,20 @@ class SafetySection(Section):
     slip_deg: Annotated[float, Field(gt=0, le=30)] = 1.0
     """Degrees by which a joint that was ordered to rest may move; after more, somebody or something
     else moves it, and an emergency stop is latched."""
+    wind_stow_gust_m_s: WindSpeed | None = None
+    """Gusts in metres a second above which the mount goes to stow; the strongest three seconds of
+    the last ten minutes count. Needs a `wind` section; a wind that is not known counts as one
+    above the limit."""
+    wind_stow_mean_m_s: WindSpeed | None = None
+    """The same for the mean wind of the last ten minutes."""
+    wind_max_age_s: Annotated[float, Field(gt=0, le=600)] = 10.0
+    """Seconds after which the anemometer's last reading is too old, and the wind not known."""
+    heartbeat_max_age_s: Annotated[float, Field(gt=0, le=86_400)] | None = None
+    """Seconds after which a heartbeat from outside counts as lost, and the mount goes to stow;
+    needs `files.heartbeat`."""
+    clock_max_error_s: Annotated[float, Field(gt=0, lt=16)] | None = None
+    """Seconds by which the system's clock may be wrong, by the kernel's own account, before the
+    mount is halted; a clock that was never synchronised halts it as well."""
     element_max_age_days: PositiveFloat = 7.0
     """Days from the epoch of orbit elements after which nothing is tracked by them."""
     stow_on_exit: bool = False

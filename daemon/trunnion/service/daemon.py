@@ -36,6 +36,7 @@ from trunnion.service.power_cut import PowerCut
 from trunnion.service.recorder import Recorder
 from trunnion.service.records.values import EventKind
 from trunnion.service.records.writer import RecordWriter
+from trunnion.service.senses import senses_of
 from trunnion.service.standing_wish import StandingWish
 from trunnion.service.status import Health, describe
 from trunnion.service.surroundings import HARDWARE_STOP, world_of
@@ -98,6 +99,8 @@ class Daemon:
                 station.files.control_socket, handlers, self.emergency_stop, clock
             )
             held.callback(server.close)
+            self._senses = senses_of(station, clock)
+            held.callback(self._senses.close)
             records = self._records = RecordWriter(station.files.records, clock)
             held.callback(records.close)
             self._link = ThreadedLink(driver, clock, poll_s=0.5 / station.cadence.tick_hz)
@@ -160,7 +163,8 @@ class Daemon:
         status = self._link.status
         if status.stop_pressed:
             self.emergency_stop(HARDWARE_STOP)
-        return world_of(self._desk.latched, status, self._last_beat.lateness_s)
+        lateness_s = self._last_beat.lateness_s
+        return world_of(self._desk.latched, status, lateness_s, self._senses.now())
 
     def _stow_at_the_end(self, cadence: Cadence) -> None:
         until_s = self._clock.monotonic_s() + LONGEST_STOWING_S
@@ -198,6 +202,7 @@ class Daemon:
             self._plans.is_planning,
             self._transmission.permit_at(self._clock.monotonic_s()),
             self._transmission.trouble,
+            self._senses.trouble,
         )
 
     # -- what is told ---------------------------------------------------------------------------

@@ -18,4 +18,8 @@ def safety_limits_of(station: StationFile, mount: Mount, clearance: Clearance) -
         encoder_error_deg=safety.encoder_error_deg,
         stall_error_deg=safety.stall_error_deg,
         slip_deg=safety.slip_deg,
+        clock_max_error_s=safety.clock_max_error_s,
+        wind_stow_gust_m_s=safety.wind_stow_gust_m_s,
+        wind_stow_mean_m_s=safety.wind_stow_mean_m_s,
+        heartbeat_max_age_s=safety.heartbeat_max_age_s,
     )

@@ -26,6 +26,7 @@ from trunnion.service.drivers import build_simulator
 from trunnion.service.limits import safety_limits_of
 from trunnion.service.link.direct import DirectLink
 from trunnion.service.score import Score, combined
+from trunnion.service.senses import FAIR
 from trunnion.service.surroundings import HARDWARE_STOP, world_of
 from trunnion.service.turn import ControlTurn, Observer, Orders, Turn
 from trunnion.track.path import Assignment
@@ -104,7 +105,7 @@ class Rehearsal:
         status = self._link.status
         if status.stop_pressed:
             self._stop(HARDWARE_STOP)
-        return world_of(self._latched, status, lateness_s=0.0)
+        return world_of(self._latched, status, lateness_s=0.0, sensed=FAIR)
 
     def _stop(self, cause: str) -> None:
         """Latch, as the daemon does; nobody resets it in a rehearsal."""

@@ -1,5 +1,6 @@
 """What the daemon says of itself when asked: plain data, for people and for programs."""
 
+from math import isfinite
 from typing import NamedTuple
 
 from trunnion.files.station import StationFile
@@ -8,6 +9,7 @@ from trunnion.pilot.phase import Wish
 from trunnion.safety.emergency import EmergencyStop
 from trunnion.safety.transmit import TransmitPermit
 from trunnion.safety.verdict import Move
+from trunnion.safety.world import World
 from trunnion.service.cadence import Beat
 from trunnion.service.link.status import LinkStatus
 from trunnion.service.recorder import summary_of
@@ -30,6 +32,7 @@ class Health(NamedTuple):
     is_planning: bool
     transmit: TransmitPermit
     transmit_trouble: str | None
+    sensors_trouble: str | None
 
 
 def describe(
@@ -45,6 +48,7 @@ def describe(
         "contact": _contact(turn, score) if turn else None,
         "mount": _mount(turn) if turn else None,
         "interventions": [each.sentence for each in turn.verdict.interventions] if turn else [],
+        "surroundings": _surroundings(turn.world) if turn else None,
         "transmit": _transmit(health.transmit),
         "link": _link(health.link),
         "turns": {"lateness_s": health.beat.lateness_s, "missed": health.missed_turns},
@@ -90,6 +94,20 @@ def _joints(motion: Motion | None) -> list[float] | None:
     return None if motion is None else list(motion.joints)
 
 
+def _surroundings(world: World) -> dict[str, object]:
+    return {
+        "clock_error_s": _finite(world.clock_error_s),
+        "wind_gust_m_s": world.wind_gust_m_s,
+        "wind_mean_m_s": world.wind_mean_m_s,
+        "heartbeat_age_s": world.heartbeat_age_s,
+    }
+
+
+def _finite(value: float | None) -> float | None:
+    """JSON has no word for a clock that nobody ever set."""
+    return value if value is not None and isfinite(value) else None
+
+
 def _transmit(permit: TransmitPermit) -> dict[str, object]:
     return {"is_permitted": permit.until_s is not None, "reason": permit.reason}
 
@@ -113,5 +131,6 @@ def _troubles(turn: Turn | None, health: Health) -> list[str]:
         health.plan_trouble,
         health.records_trouble,
         health.transmit_trouble,
+        health.sensors_trouble,
     )
     return [each for each in possible if each]
