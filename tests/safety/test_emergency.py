@@ -1,5 +1,7 @@
 """The emergency stop as text: what was written is read, and damage is a stop."""
 
+from hashlib import sha256
+
 from hypothesis import given
 from hypothesis import strategies as st
 
@@ -37,3 +39,15 @@ def test_any_text_at_all_is_a_stop(text: str) -> None:
 
 def test_a_later_version_is_a_stop() -> None:
     assert "damaged or of another version" in decode(encode(STOP).replace(" 1\n", " 2\n", 1)).cause
+
+
+def test_a_text_whose_time_is_none_is_a_stop_that_says_so() -> None:
+    body = encode(STOP).rsplit("\n", 2)[0].replace(repr(STOP.utc_s), "yesterday") + "\n"
+    forged = f"{body}{sha256(body.encode()).hexdigest()}\n"
+    assert "damaged" in decode(forged).cause
+
+
+def test_a_text_with_a_line_too_many_is_a_stop_that_says_so() -> None:
+    body = encode(STOP).rsplit("\n", 2)[0] + "\nmore\n"
+    forged = f"{body}{sha256(body.encode()).hexdigest()}\n"
+    assert "damaged" in decode(forged).cause

@@ -131,9 +131,9 @@ class Gate:
         self, demand: Motion | None, dt_s: float, hazards: list[Hazard], *, may_recover: bool
     ) -> Examined:
         reading, measured = self._belief.reading, self._belief.measured
-        if demand is None or not self._is_still or self._is_halting(hazards):
+        if reading is None or measured is None or not self._is_still:
             return Examined(None)
-        if reading is None or measured is None:
+        if demand is None or self._is_halting(hazards):
             return Examined(None)
         now = Mounted(self._ordered or Motion(*reading.joints), reading, measured)
         outside = find_at(reading.joints, self._limits, self._limits.encoder_error_deg)

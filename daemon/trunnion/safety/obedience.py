@@ -91,5 +91,6 @@ class Obedience:
 
 def _nearest(read_deg: float, ordered_deg: float, run_deg: float) -> float:
     """Where on its run, from the order on, a joint is held to be."""
-    begin_deg, end_deg = sorted((ordered_deg, ordered_deg + run_deg))
-    return min(max(read_deg, begin_deg), end_deg)
+    if run_deg < 0.0:
+        return min(max(read_deg, ordered_deg + run_deg), ordered_deg)
+    return min(max(read_deg, ordered_deg), ordered_deg + run_deg)

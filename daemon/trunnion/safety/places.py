@@ -1,6 +1,5 @@
 """Where the mount may be: travel of both joints, and the sky its beam may look at."""
 
-from collections.abc import Iterator
 from math import ceil, inf
 
 from trunnion.mount.clearance import Sector
@@ -39,11 +38,15 @@ def find_at(
 
 def find_on_the_way(begin: Joints, end: Joints, limits: SafetyLimits) -> Hazard | None:
     """What forbids the straight way between two places, its end included and its begin left out."""
-    for place in _steps(begin, end):
+    first_deg, second_deg = end.first_deg - begin.first_deg, end.second_deg - begin.second_deg
+    steps = ceil(max(abs(first_deg), abs(second_deg)) / SPACING_DEG)
+    for step in range(1, steps):
+        share = step / steps
+        place = Joints(begin.first_deg + share * first_deg, begin.second_deg + share * second_deg)
         found = find_at(place, limits)
         if found is not None:
             return found
-    return None
+    return find_at(end, limits)
 
 
 def find_while_stopping(
@@ -53,34 +56,31 @@ def find_while_stopping(
 
     Each joint brakes by itself, so that the way is bent.
     """
-    for place in _braking_steps(motion, limits):
-        found = find_at(place, limits, allowance_deg)
+    first, second = limits.braking.first, limits.braking.second
+    first_deg_s, second_deg_s = abs(motion.first_rate_deg_s), abs(motion.second_rate_deg_s)
+    longest_s = max(
+        first_deg_s / first.acceleration_deg_s2, second_deg_s / second.acceleration_deg_s2
+    )
+    steps = ceil(max(first_deg_s, second_deg_s) * longest_s / SPACING_DEG)
+    for step in range(steps if steps > 1 else 0):
+        found = find_at(_braked(motion, limits, longest_s * step / steps), limits, allowance_deg)
         if found is not None:
             return found
-    return None
+    return find_at(stopping_place(motion, limits), limits, allowance_deg)
 
 
 def stopping_place(motion: Motion, limits: SafetyLimits) -> Joints:
     """Where both joints come to rest if they brake from this motion, with something in reserve."""
-    return Joints(
-        _braking_deg(motion.first_deg, motion.first_rate_deg_s, limits.braking.first, inf),
-        _braking_deg(motion.second_deg, motion.second_rate_deg_s, limits.braking.second, inf),
-    )
+    return _braked(motion, limits, inf)
 
 
-def _braking_steps(motion: Motion, limits: SafetyLimits) -> Iterator[Joints]:
+def _braked(motion: Motion, limits: SafetyLimits, after_s: float) -> Joints:
+    """Where both joints are that have braked for so long."""
     first, second = limits.braking.first, limits.braking.second
-    first_s = abs(motion.first_rate_deg_s) / first.acceleration_deg_s2
-    second_s = abs(motion.second_rate_deg_s) / second.acceleration_deg_s2
-    fastest_deg_s = max(abs(motion.first_rate_deg_s), abs(motion.second_rate_deg_s))
-    longest_s = max(first_s, second_s)
-    steps = max(1, ceil(fastest_deg_s * longest_s / SPACING_DEG))
-    for step in range(steps + 1):
-        after_s = longest_s * step / steps
-        yield Joints(
-            _braking_deg(motion.first_deg, motion.first_rate_deg_s, first, after_s),
-            _braking_deg(motion.second_deg, motion.second_rate_deg_s, second, after_s),
-        )
+    return Joints(
+        _braking_deg(motion.first_deg, motion.first_rate_deg_s, first, after_s),
+        _braking_deg(motion.second_deg, motion.second_rate_deg_s, second, after_s),
+    )
 
 
 def _braking_deg(angle_deg: float, rate_deg_s: float, joint: JointLimits, after_s: float) -> float:
@@ -149,12 +149,3 @@ def _find_in_sky(
         finding = f"azimuth {azimuth_deg:.1f}°, elevation {elevation_deg:.1f}° is in {sector.name}"
         return Hazard(Rule.KEEP_OUT, finding)
     return None
-
-
-def _steps(begin: Joints, end: Joints) -> Iterator[Joints]:
-    first_deg, second_deg = end.first_deg - begin.first_deg, end.second_deg - begin.second_deg
-    steps = max(1, ceil(max(abs(first_deg), abs(second_deg)) / SPACING_DEG))
-    for step in range(1, steps):
-        share = step / steps
-        yield Joints(begin.first_deg + share * first_deg, begin.second_deg + share * second_deg)
-    yield end

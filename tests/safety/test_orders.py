@@ -1,0 +1,98 @@
+"""Demands brought within the limits, refused, or braked."""
+
+import pytest
+
+from tests.safety.bench_mount import LIMITS
+from trunnion.mount.joints import Motion, Reading
+from trunnion.mount.motion import approach
+from trunnion.safety.orders import Mounted, examine
+from trunnion.safety.verdict import Rule
+
+# rates 6.3 and 4.7, accelerations 2.9 and 2.1, of which four fifths count for braking
+
+
+def mounted(
+    base: Motion, place: tuple[float, float] | None = None, measured: Motion | None = None
+) -> Mounted:
+    return Mounted(base, Reading(71.2, *(place or base.joints)), measured or base)
+
+
+def test_what_can_be_done_leaves_as_it_was_asked() -> None:
+    demand = Motion(201.71, 41.3, 0.2, 0.0)
+    assert examine(demand, mounted(Motion(201.7, 41.3)), 0.1, LIMITS) == (demand, ())
+
+
+def test_what_asks_for_too_much_is_told_of() -> None:
+    examined = examine(Motion(220.0, 41.3), mounted(Motion(201.7, 41.3)), 0.1, LIMITS)
+    assert examined.motion == approach(Motion(201.7, 41.3), Motion(220.0, 41.3), LIMITS.mount, 0.1)
+    (hazard,) = examined.hazards
+    assert hazard == (Rule.RATE, "asked for 220.0°/41.3°, more than a joint can do at once")
+
+
+def test_what_leads_outside_in_the_end_is_refused_before_it_does() -> None:
+    examined = examine(Motion(201.7, 2.0), mounted(Motion(201.7, 41.3)), 0.1, LIMITS)
+    assert examined.motion is None
+    assert [hazard.rule for hazard in examined.hazards] == [Rule.RATE, Rule.FLOOR]
+    assert examined.hazards[1].finding == (
+        "asked for 201.7°/2.0°: elevation 2.00°, the floor is 5.3°"
+    )
+
+
+def test_without_room_to_stop_it_brakes() -> None:
+    base = Motion(201.7, 7.7, 0.0, -2.0)
+    demand = Motion(201.7, 7.5, 0.0, -2.0)
+    examined = examine(demand, mounted(base), 0.1, LIMITS)
+    assert examined.motion is not None
+    assert tuple(examined.motion) == pytest.approx((201.7, 7.5084, 0.0, -1.832))
+    (hazard,) = examined.hazards
+    assert hazard.rule is Rule.STOPPING
+    assert hazard.finding.startswith("asked for 201.7°/7.5°, could not stop in time: elevation")
+
+
+def test_room_for_the_turn_that_passes_counts_unless_it_brakes_already() -> None:
+    """The mask stands at 6.31: rest after 1.19 deg, and 0.2 deg more before anybody reacts."""
+    steady = examine(
+        Motion(201.7, 7.6, 0.0, -2.0), mounted(Motion(201.7, 7.8, 0.0, -2.0)), 0.1, LIMITS
+    )
+    assert [hazard.rule for hazard in steady.hazards] == [Rule.STOPPING]
+    braking = examine(
+        Motion(201.7, 7.6, 0.0, -2.0), mounted(Motion(201.7, 7.81, 0.0, -2.2)), 0.1, LIMITS
+    )
+    assert braking == (Motion(201.7, 7.6, 0.0, -2.0), ())
+
+
+def test_where_even_braking_is_not_clear_nothing_leaves() -> None:
+    """The mount is beyond the mast; braking along the order's way would drag it through."""
+    base = Motion(139.9, 20.3, 2.0, 0.0)
+    demand = Motion(140.1, 20.3, 2.0, 0.0)
+    assert examine(demand, mounted(base, (140.0, 20.3)), 0.1, LIMITS).motion is not None
+    examined = examine(demand, mounted(base, (148.0, 20.3)), 0.1, LIMITS)
+    assert examined.motion is None
+
+
+def test_braking_from_within_a_limit_that_came_near_is_refused() -> None:
+    base = Motion(201.7, 6.35, 0.0, -2.0)
+    demand = Motion(201.7, 6.5, 0.0, -0.1)
+    examined = examine(demand, mounted(base, (201.7, 6.4)), 0.1, LIMITS)
+    assert examined.motion is None
+
+
+def test_where_the_braking_step_itself_is_forbidden_nothing_leaves() -> None:
+    """The order would just clear the mask at 6.309; braking on the way up falls short of it."""
+    base, demand = Motion(201.7, 6.21, 0.0, 1.0), Motion(201.7, 6.31, 0.0, 1.0)
+    assert examine(demand, mounted(base, (201.7, 6.4)), 0.1, LIMITS) == (demand, ())
+    falling = Motion(201.7, 6.4, 0.0, -4.0)
+    examined = examine(demand, mounted(base, (201.7, 6.4), falling), 0.1, LIMITS)
+    assert examined.motion is None
+    assert [hazard.rule for hazard in examined.hazards] == [Rule.STOPPING]
+
+
+def test_a_mount_faster_than_its_orders_needs_its_own_room() -> None:
+    base = Motion(201.7, 9.4)
+    slow = Motion(201.7, 9.4)
+    assert examine(slow, mounted(base), 0.1, LIMITS) == (slow, ())
+    fast = Motion(201.7, 9.0, 0.0, -4.0)
+    examined = examine(slow, mounted(base, (201.7, 9.0), fast), 0.1, LIMITS)
+    assert [hazard.rule for hazard in examined.hazards] == [Rule.STOPPING]
+    up = Motion(201.7, 9.0, 0.0, 4.0)
+    assert examine(slow, mounted(base, (201.7, 9.0), up), 0.1, LIMITS) == (slow, ())
