@@ -1,5 +1,6 @@
 """`trunnion check`: everything that can be known of a plan before it is flown."""
 
+from collections.abc import Mapping
 from typing import TYPE_CHECKING, Annotated
 
 import typer
@@ -31,16 +32,18 @@ def check(
     from trunnion.service.briefing_order import BriefingOrder
     from trunnion.service.clock import SystemClock
     from trunnion.service.drivers import build_driver
+    from trunnion.service.sky_notes import sky_notes
     from trunnion.service.winds import build_wind
 
     now_s = SystemClock().utc_s() if now is None else _instant(now)
     briefing = brief(BriefingOrder(station, plan, now_s))
     build_driver(briefing.station, SystemClock())
     build_wind(briefing.station, SystemClock())
+    notes = sky_notes(briefing)
     if as_json:
-        print_json(_plain(briefing))
+        print_json(_plain(briefing, notes))
     else:
-        _print(briefing)
+        _print(briefing, notes)
     if not all(each.is_served for each in briefing.contacts):
         raise typer.Exit(FAILED)
 
@@ -54,11 +57,14 @@ def _instant(text: str) -> float:
         raise typer.BadParameter(str(error)) from None
 
 
-def _plain(briefing: "Briefing") -> dict[str, object]:
+def _plain(briefing: "Briefing", notes: Mapping[str, tuple[str, ...]]) -> dict[str, object]:
     return {
         "station": briefing.station.site.name,
         "is_served": all(each.is_served for each in briefing.contacts),
-        "contacts": [_plain_contact(each) for each in briefing.contacts],
+        "contacts": [
+            {**_plain_contact(each), "notes": list(notes.get(each.contact.id, ()))}
+            for each in briefing.contacts
+        ],
     }
 
 
@@ -100,7 +106,7 @@ def _time(utc_s: float | None) -> str | None:
     return None if utc_s is None else format_utc(utc_s, 0)
 
 
-def _print(briefing: "Briefing") -> None:
+def _print(briefing: "Briefing", notes: Mapping[str, tuple[str, ...]]) -> None:
     columns = (
         "contact",
         "target",
@@ -115,7 +121,7 @@ def _print(briefing: "Briefing") -> None:
     )
     print_table(f"Plan of {briefing.station.site.name}", columns, map(_row, briefing.contacts))
     for each in briefing.contacts:
-        for sentence in each.sentences:
+        for sentence in (*each.sentences, *notes.get(each.contact.id, ())):
             print_text(f"{each.contact.id}: {sentence}")
 
 

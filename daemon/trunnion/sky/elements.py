@@ -20,6 +20,8 @@ from trunnion.sky.site import Vector
 from trunnion.sky.topocentric import topocentric_many
 from trunnion.sky.viewpoint import Viewpoint
 
+BLOCK = 4096
+
 SGP4_EPOCH_JD = 2433281.5
 """The midnight from which SGP4 counts the days of an epoch: 1949-12-31."""
 
@@ -159,6 +161,13 @@ class Satellite:
 
     def looks(self, utc_s: FloatArray) -> Looks:
         """Where it stands at many instants; raises NoPosition when it has none at any of them."""
+        if len(utc_s) <= BLOCK:
+            return self._looks(utc_s)
+        parts = [self._looks(utc_s[at : at + BLOCK]) for at in range(0, len(utc_s), BLOCK)]
+        return Looks(*map(np.concatenate, zip(*parts, strict=True)))
+
+    def _looks(self, utc_s: FloatArray) -> Looks:
+        """Of so few instants that all that is worked out of them stays in the processor's cache."""
         view = self.viewpoint
         days = np.floor(utc_s / SECONDS_A_DAY)
         fraction = (utc_s - days * SECONDS_A_DAY) / SECONDS_A_DAY
