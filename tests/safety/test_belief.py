@@ -1,11 +1,13 @@
 """Which readings are believed, which are not, and what they say of the motion."""
 
 import math
+from dataclasses import replace
 
 import pytest
 
 from tests.safety.bench_mount import LIMITS
 from trunnion.mount.joints import Reading
+from trunnion.mount.mount import JointLimits
 from trunnion.safety.belief import Belief
 from trunnion.safety.verdict import Rule
 
@@ -143,3 +145,17 @@ def test_findings_say_what_was_read() -> None:
     assert old.finding == "the last reading is 3.2 s old, 1 s are allowed"
     (wild,) = belief.find(71.8, Reading(71.75, 311.7, 41.2))
     assert wild.finding == "the mount says it is at 311.7°/41.2°"
+
+
+@pytest.mark.parametrize("joint", [0, 1])
+def test_exactly_as_far_as_the_mount_can_get_is_no_jump(joint: int) -> None:
+    """Numbers that are exact in binary: 1.5 x 4 deg/s x 1 s + 4 x 0.0625 = 6.25 deg."""
+    limits = JointLimits(-271.0, 268.0, 4.0, 2.0)
+    exact = replace(
+        LIMITS, mount=replace(LIMITS.mount, first=limits, second=limits), encoder_error_deg=0.0625
+    )
+    place, further = [20.5, 40.5], [20.5, 40.5]
+    further[joint] += 6.25
+    belief = Belief(exact)
+    for reading in (Reading(70.0, *place), Reading(71.0, *place), Reading(72.0, *further)):
+        assert found(belief, reading) == []

@@ -22,7 +22,9 @@ def test_any_cause_stays_one_line_and_readable(cause: str, utc_s: float) -> None
 
 @given(st.integers(0, len(encode(STOP)) - 2))
 def test_a_text_cut_anywhere_is_a_stop_that_says_so(length: int) -> None:
-    assert "damaged" in decode(encode(STOP)[:length]).cause
+    stop = decode(encode(STOP)[:length])
+    assert "damaged" in stop.cause
+    assert stop.utc_s == 0.0
 
 
 @given(st.integers(0, len(encode(STOP)) - 2), st.characters())
@@ -45,6 +47,7 @@ def test_a_text_whose_time_is_none_is_a_stop_that_says_so() -> None:
     body = encode(STOP).rsplit("\n", 2)[0].replace(repr(STOP.utc_s), "yesterday") + "\n"
     forged = f"{body}{sha256(body.encode()).hexdigest()}\n"
     assert "damaged" in decode(forged).cause
+    assert decode(forged).utc_s == 0.0
 
 
 def test_a_text_with_a_line_too_many_is_a_stop_that_says_so() -> None:
