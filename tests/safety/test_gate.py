@@ -370,3 +370,40 @@ def test_a_mount_that_runs_ahead_of_its_orders_is_braked_for_its_own_speed() -> 
     bench.place = Joints(201.7, 9.0)
     verdict = bench.turn(Motion(201.7, 9.39, 0.0, -0.1))
     assert Rule.STOPPING in rules(verdict)
+
+
+@pytest.mark.parametrize(("dt_s", "step_s"), [(0.24, 0.24), (0.25, 0.25), (0.45, 0.25)])
+def test_after_a_pause_an_order_moves_on_by_a_quarter_of_a_second_at_most(
+    dt_s: float, step_s: float
+) -> None:
+    bench = Bench().settle()
+    bench.turn(STILL)
+    goal = Motion(250.3, 60.1)
+    order = bench.turn(goal, dt_s=dt_s).order
+    assert isinstance(order, Move)
+    assert tuple(order.motion) == pytest.approx(tuple(approach(STILL, goal, MOUNT, step_s)))
+
+
+@pytest.mark.parametrize(
+    ("place", "is_stowed"),
+    [
+        (Joints(13.5, 87.25), True),
+        (Joints(13.52, 88.25), False),
+        (Joints(12.5, 87.23), False),
+    ],
+)
+def test_a_degree_from_stow_is_stowed(place: Joints, is_stowed: bool) -> None:
+    mount = replace(MOUNT, stow=Joints(12.5, 88.25))
+    bench = Bench(place=place, gate=Gate(replace(LIMITS, mount=mount, heartbeat_max_age_s=5.0)))
+    lost = CALM._replace(heartbeat_age_s=9.9)
+    verdicts = [bench.turn(None, lost, dt_s=1.0) for _ in range(310)]
+    assert (Rule.STOW_OVERDUE not in rules(verdicts[-1])) == is_stowed
+
+
+def test_a_turn_as_late_as_is_allowed_still_watches_the_mount() -> None:
+    bench = Bench().settle()
+    latched = None
+    for _ in range(30):
+        latched = latched or bench.turn(None, CALM._replace(lateness_s=0.5)).latch
+        bench.place = Joints(201.7, bench.place.second_deg - 0.2)
+    assert latched is not None
