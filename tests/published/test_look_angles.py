@@ -70,8 +70,8 @@ def element_set(orbit: Orbit, turn: int) -> ElementSet:
         f"2 90500 {orbit.inclination_deg:8.4f} {angles[0]:8.4f} {1e7 * orbit.eccentricity:07.0f} "
         f"{angles[1]:8.4f} {angles[2]:8.4f} {orbit.mean_motion:11.8f}    1"
     )
-    lines = [f"{line}{_checksum(line)}" for line in (first, second)]
-    return ElementSet("invented", 90500, parse_utc("2026-11-30T18:00:00Z"), *lines)
+    line_1, line_2 = (f"{line}{_checksum(line)}" for line in (first, second))
+    return ElementSet("invented", 90500, parse_utc("2026-11-30T18:00:00Z"), line_1, line_2)
 
 
 def _checksum(line: str) -> int:

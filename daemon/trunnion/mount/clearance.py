@@ -5,7 +5,6 @@ from math import cos, radians
 
 from trunnion.mount.horizon import HorizonMask
 
-
 NARROWEST = 0.02
 """Cosine of an elevation so near the zenith that a box there reaches all round anyhow."""
 

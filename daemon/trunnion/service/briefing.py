@@ -23,7 +23,6 @@ from trunnion.track.path import Assignment
 from trunnion.track.programme import Forecast
 from trunnion.track.wanted import Wanted
 
-
 MARGIN_DEG = 0.2
 """Contacts begin and end this far from floor, mask and keep-outs (common practice, no source)."""
 
