@@ -236,7 +236,7 @@ def test_with_leave_it_moves_inwards_and_slowly_however_far_is_asked_for() -> No
     leave = CALM._replace(may_recover=True)
     fastest, heights = 0.0, [3.1]
     bench.turn(None)
-    for _ in range(60):
+    for _ in range(80):
         order = bench.turn(Motion(201.7, 5.9), leave).order
         assert isinstance(order, Move)
         fastest = max(fastest, order.motion.second_rate_deg_s)
