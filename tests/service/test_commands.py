@@ -5,13 +5,20 @@ from pathlib import Path
 
 import pytest
 
+from tests.safety.bench_mount import LIMITS
 from tests.service.test_emergency_desk import Log, desk_of
+from trunnion.mount.joints import Reading
 from trunnion.pilot.phase import Wish
+from trunnion.service.clock import VirtualClock
 from trunnion.service.commands import Commands, StopInForce, Surroundings
 from trunnion.service.emergency_desk import EmergencyDesk, StopNotLifted
 from trunnion.service.link.status import LinkStatus
 from trunnion.service.records.values import EventKind
+from trunnion.service.recovery_leave import RecoveryLeave
 from trunnion.service.standing_wish import StandingWish
+
+OUTSIDE = Reading(41.4, 201.7, 3.1)
+"""Below the horizon mask."""
 
 
 @dataclass
@@ -39,15 +46,19 @@ class Rig:
     wish: StandingWish
     desk: EmergencyDesk
     around: Around
+    leave: RecoveryLeave
 
     def ask(self, command: str) -> dict[str, object]:
-        handlers = Commands(self.wish, self.desk, self.around.surroundings()).handlers()
+        around = self.around.surroundings()
+        handlers = Commands(self.wish, self.desk, around, self.leave).handlers()
         return dict(handlers[command]({}))
 
 
 @pytest.fixture
 def rig(tmp_path: Path) -> Rig:
-    return Rig(StandingWish(tmp_path / "wish"), desk_of(Log()), Around())
+    clock = VirtualClock(1_893_456_123.75, 41.5)
+    leave = RecoveryLeave(LIMITS, clock, lambda: OUTSIDE)
+    return Rig(StandingWish(tmp_path / "wish"), desk_of(Log()), Around(), leave)
 
 
 @pytest.mark.parametrize(
@@ -98,3 +109,24 @@ def test_status_and_reload_are_passed_on(rig: Rig) -> None:
     assert rig.ask("status") == {"phase": "tracking"}
     rig.ask("reload")
     assert rig.around.reloads == 1
+
+
+def test_leave_to_come_back_inside_holds_the_mount_otherwise(rig: Rig) -> None:
+    answer = rig.ask("recover")
+    assert answer["wish"] == "hold"
+    assert rig.wish.wish is Wish.HOLD
+    assert answer["goal_deg"] == list(rig.leave.way_back(OUTSIDE) or ())
+    assert "inside" in rig.around.events[-1][1]
+
+
+def test_any_other_wish_ends_the_leave(rig: Rig) -> None:
+    rig.ask("recover")
+    rig.ask("hold")
+    assert rig.leave.way_back(OUTSIDE) is None
+
+
+def test_there_is_no_leave_while_stopped(rig: Rig) -> None:
+    rig.desk.stop("a cow")
+    with pytest.raises(StopInForce, match="a cow"):
+        rig.ask("recover")
+    assert rig.leave.way_back(OUTSIDE) is None

@@ -1,4 +1,4 @@
-"""`trunnion status`, `stop`, `reset`, `stow`, `resume`: talk to the running daemon."""
+"""`trunnion status`, `stop`, `reset`, `stow`, `resume`, `recover`: talk to the running daemon."""
 
 from pathlib import Path
 from typing import TYPE_CHECKING, Annotated
@@ -64,6 +64,15 @@ def stow(daemon: Daemon = Path("station.yaml")) -> None:
 def resume(daemon: Daemon = Path("station.yaml")) -> None:
     """Follow the pass plan again. The antenna may move at once: see that nobody is near it."""
     _ask(daemon, "resume", "The antenna follows the pass plan again.")
+
+
+def recover(daemon: Daemon = Path("station.yaml")) -> None:
+    """Bring an antenna back inside its limits that stands outside them, slowly; then it holds.
+
+    See first that the way is free and nobody is near it.
+    """
+    done = "The antenna comes back slowly and holds still inside. Watch it; `stop` stops it."
+    _ask(daemon, "recover", done)
 
 
 def _ask(daemon: Path, command: str, done: str) -> None:

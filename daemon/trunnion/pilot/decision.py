@@ -3,7 +3,7 @@
 from collections.abc import Sequence
 from typing import NamedTuple
 
-from trunnion.mount.joints import Motion, Reading
+from trunnion.mount.joints import Joints, Motion, Reading
 from trunnion.pilot.phase import Phase, Wish
 from trunnion.sky.look import Look
 from trunnion.track.path import Assignment
@@ -14,7 +14,8 @@ class Situation(NamedTuple):
 
     `utc_s` and `mono_s` are the same instant on both clocks; `ordered` is the motion that really
     went to the mount in the turn before (None when it was halted or nothing was ordered);
-    `assignments` are in order of time and do not overlap.
+    `assignments` are in order of time and do not overlap; `way_back` is the place inside to which a
+    mount may go that was found outside its limits, None without an operator's leave.
     """
 
     utc_s: float
@@ -25,6 +26,7 @@ class Situation(NamedTuple):
     wish: Wish = Wish.FOLLOW_PLAN
     must_stow: bool = False
     is_stopped: bool = False
+    way_back: Joints | None = None
 
 
 class Decision(NamedTuple):

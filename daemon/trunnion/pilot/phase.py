@@ -22,6 +22,8 @@ class Phase(Enum):
     """The contact has begun and the boresight is still on its way to the target."""
     TRACKING = "tracking"
     """The contact has begun and the joints follow its path."""
+    RECOVERING = "recovering"
+    """Found outside its limits, and on the way back inside, by an operator's leave."""
     HALTED = "halted"
     """An emergency stop is latched: nothing is ordered."""
 

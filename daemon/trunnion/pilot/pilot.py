@@ -86,6 +86,9 @@ class Pilot:
         if now.reading is None or now.is_stopped:
             self._take_up(_Errand(_Kind.HOLD))
             return Decision(Phase.HALTED if now.is_stopped else Phase.STARTING, None)
+        if now.way_back is not None:
+            self._take_up(_Errand(_Kind.HOLD))
+            return Decision(Phase.RECOVERING, Motion(*now.way_back))
         base = now.ordered or Motion(*now.reading.joints)
         try:
             self._take_up(self._choose(now, scheduled, base))

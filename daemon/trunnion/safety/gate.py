@@ -136,7 +136,8 @@ class Gate:
         if demand is None or self._is_halting(hazards):
             return Examined(None)
         now = Mounted(self._ordered or Motion(*reading.joints), reading, measured)
-        outside = find_at(reading.joints, self._limits, self._limits.encoder_error_deg)
+        forgiven_deg = 0.0 if may_recover else self._limits.encoder_error_deg
+        outside = find_at(reading.joints, self._limits, forgiven_deg)
         if outside is None:
             return examine(demand, now, dt_s, self._limits)
         return examine_return(demand, now, dt_s, self._limits, outside, may_recover=may_recover)

@@ -12,6 +12,9 @@ from trunnion.safety.orders import Examined, Mounted
 from trunnion.safety.places import depth_deg
 from trunnion.safety.verdict import Rule
 
+GENTLY = 0.2
+"""Share of a joint's acceleration on the way back: who starts late has little to make up."""
+
 
 def examine_return(
     demand: Motion,
@@ -44,4 +47,8 @@ def _slow(limits: SafetyLimits) -> Mount:
 
 
 def _slow_joint(joint: JointLimits, rate_deg_s: float) -> JointLimits:
-    return replace(joint, rate_deg_s=min(rate_deg_s, joint.rate_deg_s))
+    return replace(
+        joint,
+        rate_deg_s=min(rate_deg_s, joint.rate_deg_s),
+        acceleration_deg_s2=GENTLY * joint.acceleration_deg_s2,
+    )

@@ -9,6 +9,7 @@ from trunnion.service.emergency_desk import EmergencyDesk
 from trunnion.service.errors import ServiceError
 from trunnion.service.link.status import LinkStatus
 from trunnion.service.records.values import EventKind
+from trunnion.service.recovery_leave import RecoveryLeave
 from trunnion.service.standing_wish import StandingWish
 
 Answer = Mapping[str, object]
@@ -30,10 +31,17 @@ class Surroundings(NamedTuple):
 class Commands:
     """The commands of the request lane; `stop` has a lane of its own."""
 
-    def __init__(self, wish: StandingWish, desk: EmergencyDesk, around: Surroundings) -> None:
+    def __init__(
+        self,
+        wish: StandingWish,
+        desk: EmergencyDesk,
+        around: Surroundings,
+        leave: RecoveryLeave,
+    ) -> None:
         self._wish = wish
         self._desk = desk
         self._around = around
+        self._leave = leave
 
     def handlers(self) -> Mapping[str, Handler]:
         """Each command's name and what fulfils it."""
@@ -44,6 +52,7 @@ class Commands:
             "resume": lambda _: self._take_up(Wish.FOLLOW_PLAN),
             "stow": lambda _: self._take_up(Wish.STOW),
             "hold": lambda _: self._take_up(Wish.HOLD),
+            "recover": self._recover,
         }
 
     def _reload(self, _: Answer) -> Answer:
@@ -59,10 +68,23 @@ class Commands:
         self._around.record(EventKind.RESET, "emergency stop lifted; nothing moves until told to")
         return {"wish": self._wish.wish.value, "trouble": trouble}
 
-    def _take_up(self, wish: Wish) -> Answer:
+    def _recover(self, _: Answer) -> Answer:
+        """Bring a mount back that was found outside, slowly; it holds still from there on."""
+        self._must_not_be_stopped()
+        goal = self._leave.grant()
+        trouble = self._wish.set(Wish.HOLD)
+        told = f"told to come back inside, to {goal.first_deg:.1f}°/{goal.second_deg:.1f}°"
+        self._around.record(EventKind.REQUEST, told)
+        return {"goal_deg": list(goal), "wish": Wish.HOLD.value, "trouble": trouble}
+
+    def _must_not_be_stopped(self) -> None:
         stop = self._desk.latched
         if stop is not None:
             raise StopInForce(f"an emergency stop is in force ({stop.cause}): reset it first")
+
+    def _take_up(self, wish: Wish) -> Answer:
+        self._must_not_be_stopped()
+        self._leave.withdraw()
         trouble = self._wish.set(wish)
         self._around.record(EventKind.REQUEST, f"told to {wish.value}")
         return {"wish": wish.value, "trouble": trouble}

@@ -11,6 +11,7 @@ from threading import Event
 from typing import NamedTuple
 
 from trunnion.files.station import StationFile, load_station
+from trunnion.mount.joints import Reading
 from trunnion.pilot.departure import Facts
 from trunnion.pilot.phase import Phase, Wish
 from trunnion.pilot.pilot import Pilot
@@ -36,6 +37,7 @@ from trunnion.service.power_cut import PowerCut
 from trunnion.service.recorder import Recorder
 from trunnion.service.records.values import EventKind
 from trunnion.service.records.writer import RecordWriter
+from trunnion.service.recovery_leave import RecoveryLeave
 from trunnion.service.senses import senses_of
 from trunnion.service.standing_wish import StandingWish
 from trunnion.service.status import Health, describe
@@ -94,7 +96,8 @@ class Daemon:
             around = Surroundings(
                 self._status, self.reload, lambda: self._link.status, self._record
             )
-            handlers = Commands(self._wish, self._desk, around).handlers()
+            self._leave = RecoveryLeave(limits, clock, self._last_reading)
+            handlers = Commands(self._wish, self._desk, around, self._leave).handlers()
             server = ControlServer(
                 station.files.control_socket, handlers, self.emergency_stop, clock
             )
@@ -140,7 +143,8 @@ class Daemon:
     def _beat(self, cadence: Cadence, wish: Wish | None = None) -> Turn:
         self._last_beat = cadence.wait()
         self._missed = cadence.missed_in_all
-        orders = Orders(self._plans.assignments, wish or self._wish.wish)
+        way_back = self._leave.way_back(self._last_reading())
+        orders = Orders(self._plans.assignments, wish or self._wish.wish, way_back)
         turn = self._control.run(orders, self._look_around)
         if turn.verdict.latch is not None:
             self.emergency_stop(turn.verdict.latch)
@@ -166,6 +170,9 @@ class Daemon:
         lateness_s = self._last_beat.lateness_s
         return world_of(self._desk.latched, status, lateness_s, self._senses.now())
 
+    def _last_reading(self) -> Reading | None:
+        return self._last_turn.reading if self._last_turn is not None else None
+
     def _stow_at_the_end(self, cadence: Cadence) -> None:
         until_s = self._clock.monotonic_s() + LONGEST_STOWING_S
         while self._clock.monotonic_s() < until_s and self._desk.latched is None:
@@ -184,6 +191,7 @@ class Daemon:
 
     def emergency_stop(self, cause: str) -> None:
         """Halt, and stay halted until reset."""
+        self._leave.withdraw()
         self._desk.stop(cause)
 
     def _status(self) -> Mapping[str, object]:

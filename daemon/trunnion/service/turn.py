@@ -7,7 +7,7 @@ simulated one; nothing in it knows which.
 from collections.abc import Callable, Sequence
 from typing import NamedTuple, Protocol
 
-from trunnion.mount.joints import Motion, Reading
+from trunnion.mount.joints import Joints, Motion, Reading
 from trunnion.pilot.decision import Decision, Situation
 from trunnion.pilot.phase import Wish
 from trunnion.pilot.pilot import Pilot
@@ -43,6 +43,7 @@ class Orders(NamedTuple):
 
     assignments: Sequence[Assignment] | None
     wish: Wish
+    way_back: Joints | None = None
 
 
 class ControlTurn:
@@ -68,7 +69,7 @@ class ControlTurn:
         """Do one turn now."""
         utc_s, mono_s = self._clock.utc_s(), self._clock.monotonic_s()
         reading = self._link.newest()
-        world = look_around()._replace(utc_s=utc_s)
+        world = look_around()._replace(utc_s=utc_s, may_recover=orders.way_back is not None)
         decision = self._pilot.decide(
             Situation(
                 utc_s,
@@ -79,6 +80,7 @@ class ControlTurn:
                 Wish.HOLD if orders.assignments is None else orders.wish,
                 self._must_stow,
                 world.emergency is not None,
+                orders.way_back,
             )
         )
         verdict = self._gate.judge(mono_s, decision.demand, reading, world)

@@ -29,6 +29,7 @@ class Driver(ABC):
         self._facts = facts
         self._clock = clock
         self._is_open = False
+        self._stands_at: DriverReading | None = None
 
     @classmethod
     @abstractmethod
@@ -47,7 +48,7 @@ class Driver(ABC):
         """Open the link; orders no motion. Does nothing when open. Raises LinkLost."""
         if not self._is_open:
             self._open()
-            self._is_open = True
+            self._is_open, self._stands_at = True, None
 
     def close(self) -> None:
         """Close the link; idempotent, never raises for a link that is already gone."""
@@ -61,12 +62,14 @@ class Driver(ABC):
         reading = self._read()
         if not (isfinite(reading.first_deg) and isfinite(reading.second_deg)):
             raise Garbled(f"expected two finite joint angles, got {reading[1:3]}")
+        self._stands_at = reading
         return reading
 
     def move(self, motion: DriverMotion) -> None:
         """Send the joints there. Raises LinkLost, NoReply, Garbled, Refused, WrongState.
 
-        Angles outside the travel are refused here too, whoever asks.
+        Angles outside the travel are refused here too, whoever asks; but a joint that stands
+        outside may be sent anywhere between there and the travel.
         """
         self._must_be_open("move")
         self._must_be_within_travel(motion)
@@ -124,11 +127,13 @@ class Driver(ABC):
     def _must_be_within_travel(self, motion: DriverMotion) -> None:
         if not all(isfinite(value) for value in motion):
             raise WrongState(f"move: expected finite values, got {motion}")
-        for name, angle, facts in (
-            ("first", motion.first_deg, self._facts.first),
-            ("second", motion.second_deg, self._facts.second),
+        last = self._stands_at
+        for name, angle, stands, facts in (
+            ("first", motion.first_deg, last and last.first_deg, self._facts.first),
+            ("second", motion.second_deg, last and last.second_deg, self._facts.second),
         ):
-            if not facts.lower_deg <= angle <= facts.upper_deg:
+            stands_deg = facts.lower_deg if stands is None else stands
+            if not min(facts.lower_deg, stands_deg) <= angle <= max(facts.upper_deg, stands_deg):
                 raise WrongState(
                     f"move: expected the {name} joint within "
                     f"{facts.lower_deg}…{facts.upper_deg}°, got {angle}°"

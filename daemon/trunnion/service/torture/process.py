@@ -16,6 +16,7 @@ from trunnion.service.commands import Commands, Surroundings
 from trunnion.service.emergency_desk import EmergencyDesk, Keeping
 from trunnion.service.errors import ServiceError
 from trunnion.service.link.direct import DirectLink
+from trunnion.service.recovery_leave import RecoveryLeave
 from trunnion.service.standing_wish import StandingWish
 from trunnion.service.surroundings import HARDWARE_STOP, world_of
 from trunnion.service.torture.steel import Steel
@@ -52,7 +53,8 @@ class Process:
         self.wish = StandingWish(wish_file)
         self._link = DirectLink(steel.driver, clock)
         around = Surroundings(dict, lambda: None, lambda: self._link.status, lambda *_: None)
-        self._handlers = Commands(self.wish, self.desk, around).handlers()
+        leave = RecoveryLeave(limits, clock, lambda: None)
+        self._handlers = Commands(self.wish, self.desk, around, leave).handlers()
         self.desk.attach(self._link)
         mount = limits.mount.with_reserve(0.97, 0.7)
         pilot = Pilot(Facts(mount, limits.clearance, TOLERANCE_DEG))
