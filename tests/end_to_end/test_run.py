@@ -9,6 +9,7 @@ from pathlib import Path
 import pytest
 
 from tests.end_to_end.station import Station
+from trunnion.cli.init import example_folder
 
 
 @pytest.fixture
@@ -160,3 +161,26 @@ def test_transmitting_is_permitted_on_target_and_not_after_a_stop(
     stopped = station.wait_for(lambda status: not status["transmit"]["is_permitted"])
     assert "a cow" in stopped["transmit"]["reason"]
     assert permit.read_text() == "forbidden\n"
+
+
+def test_a_port_that_is_not_there_is_told_and_tried_again(
+    station: Station, daemons: list[subprocess.Popen[str]]
+) -> None:
+    dialect = example_folder() / "dialects" / "reedmace.yaml"
+    text = station.file.read_text()
+    kind = "kind: simulator\n  memory: mount.json"
+    assert kind in text
+    before, after = text.split(kind)
+    _, cadence, rest = after.partition("\ncadence:")
+    driver = f"kind: dialect\n  dialect: {dialect}\n  url: /dev/serial/by-id/no-such-adapter\n"
+    station.file.write_text(before + driver + cadence + rest)
+    assert station.command("check", str(station.file)).returncode == 0
+    daemons.append(station.run())
+    status = station.wait_for(lambda status: bool(status["link"]["last_error"]))
+    assert "no-such-adapter" in status["link"]["last_error"]
+    assert status["phase"] == "starting"
+    assert status["mount"]["reading_deg"] is None
+    assert any("link down" in sentence for sentence in status["interventions"])
+    daemons[-1].send_signal(signal.SIGTERM)
+    assert daemons[-1].wait(timeout=20) == 0
+    assert "Traceback" not in station.log()
