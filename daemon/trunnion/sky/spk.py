@@ -5,6 +5,7 @@ from dataclasses import dataclass
 from functools import lru_cache, partial
 from pathlib import Path
 from typing import Any
+from weakref import finalize
 
 import numpy as np
 
@@ -35,7 +36,9 @@ class SpkFile:
 
     def __init__(self, path: str) -> None:
         self.path = path
-        segments = _segments(path)
+        kernel = _kernel(path)
+        finalize(self, kernel.close)
+        segments = kernel.segments
         self._segment_to = {segment.target: segment for segment in segments}
         days = [(segment.start_jd - J2000_JD, segment.end_jd - J2000_JD) for segment in segments]
         self.first_day, self.last_day = max(day[0] for day in days), min(day[1] for day in days)
@@ -104,8 +107,8 @@ class SpkBody:
         return AU_KM * as_seen(partial(file.geocentric_au, code), tt_days, earth_from_sun_au)
 
 
-def _segments(path: str) -> list[Any]:
-    """The file's segments of Chebyshev series, one a body."""
+def _kernel(path: str) -> Any:
+    """The open file, with segments of Chebyshev series, one a body."""
     try:
         from jplephem.spk import SPK
     except ImportError:
@@ -116,9 +119,10 @@ def _segments(path: str) -> list[Any]:
     if not Path(path).is_file():
         raise SkyError(f"{path}: no such file")
     try:
-        segments: list[Any] = SPK.open(path).segments
+        kernel = SPK.open(path)
     except (ValueError, OSError) as error:
         raise SkyError(f"{path}: expected a JPL ephemeris (SPK): {error}") from None
-    if not segments or any(segment.data_type not in {2, 3} for segment in segments):
+    if not kernel.segments or any(each.data_type not in {2, 3} for each in kernel.segments):
+        kernel.close()
         raise SkyError(f"{path}: expected segments of type 2 or 3, got others or none")
-    return segments
+    return kernel
