@@ -6,10 +6,13 @@ _NO_STEP = (
     "in its first turn the gate does not know yet that the mount rests, and moves nothing; "
     "and the monotonic clock never goes back"
 )
+_GUARD = "it only keeps a division from being one by zero; anything tiny serves"
 
 EQUIVALENT: dict[str, str] = {
     "gate: self._ordered_s = 0.0: greater": _NEVER_READ,
     "gate: self._ordered_s = 0.0: less": _NEVER_READ,
+    "orders: TINY_S = 1e-6: greater": _GUARD,
+    "orders: TINY_S = 1e-6: less": _GUARD,
     f"{_STEP}greater": _NO_STEP,
     f"{_STEP}less": _NO_STEP,
 }

@@ -407,3 +407,10 @@ def test_a_turn_as_late_as_is_allowed_still_watches_the_mount() -> None:
         latched = latched or bench.turn(None, CALM._replace(lateness_s=0.5)).latch
         bench.place = Joints(201.7, bench.place.second_deg - 0.2)
     assert latched is not None
+
+
+def test_a_mount_that_is_halted_anyhow_is_not_blamed_for_what_is_asked_of_it() -> None:
+    bench = Bench().settle()
+    bench.turn(STILL)
+    late = CALM._replace(lateness_s=0.73)
+    assert rules(bench.turn(Motion(268.1, 60.1), late)) == {Rule.TURN_LATE}

@@ -96,3 +96,23 @@ def test_a_mount_faster_than_its_orders_needs_its_own_room() -> None:
     assert [hazard.rule for hazard in examined.hazards] == [Rule.STOPPING]
     up = Motion(201.7, 9.0, 0.0, 4.0)
     assert examine(slow, mounted(base, (201.7, 9.0), up), 0.1, LIMITS) == (slow, ())
+
+
+@pytest.mark.parametrize(("rate_deg_s", "needs_room"), [(-4.09, False), (-4.11, True)])
+def test_a_little_faster_is_the_encoders_noise(rate_deg_s: float, needs_room: bool) -> None:
+    base, demand = Motion(201.7, 11.9, 0.0, -4.0), Motion(201.7, 11.5, 0.0, -4.0)
+    measured = Motion(201.7, 11.2, 0.0, rate_deg_s)
+    examined = examine(demand, mounted(base, (201.7, 11.2), measured), 0.1, LIMITS)
+    assert bool(examined.hazards) == needs_room
+
+
+@pytest.mark.parametrize(
+    ("was_deg_s", "place_deg", "is_braking"), [(-2.147, 7.505, True), (-2.105, 7.52, False)]
+)
+def test_seven_tenths_of_full_braking_is_braking_and_half_is_not(
+    was_deg_s: float, place_deg: float, is_braking: bool
+) -> None:
+    base = Motion(201.7, place_deg + 0.05 * (2.0 - was_deg_s), 0.0, was_deg_s)
+    demand = Motion(201.7, place_deg, 0.0, -2.0)
+    examined = examine(demand, mounted(base), 0.1, LIMITS)
+    assert (examined == (demand, ())) == is_braking

@@ -202,6 +202,7 @@ def test_the_row_acts_as_it_says(rule: Rule) -> None:
     assert intervention is not None
     assert intervention.action is action
     assert intervention.sentence.endswith(POLICY[rule].until)
+    assert verdict.must_cut_power == (rule is Rule.SLIPPED)
     if action is Action.LATCH:
         assert verdict.latch is not None
     if action >= Action.HALT:
