@@ -108,3 +108,17 @@ def test_the_demo_tells_its_story_on_stderr_and_its_table_on_stdout() -> None:
     for contact in ("brindle-4-morning", "quillon-2-north", "lantern-g-relay"):
         assert contact in done.stdout
     assert done.stdout.count("tracked") == 7
+
+
+def test_check_draws_the_plan(station: Path, tmp_path: Path) -> None:
+    file = tmp_path / "plan.svg"
+    done = trunnion("check", station, *MORNING, "--plot", file, "--json")
+    assert done.exit_code == 0
+    assert json.loads(done.stdout)["is_served"]
+    text = file.read_text()
+    assert text.startswith("<svg")
+    assert "good" in text
+    assert trunnion("check", station, *MORNING, "--plot", tmp_path / "plan.gif").exit_code == 2
+    nowhere = trunnion("check", station, *MORNING, "--plot", tmp_path / "no" / "plan.svg")
+    assert nowhere.exit_code == 1
+    assert "plan.svg" in nowhere.stderr

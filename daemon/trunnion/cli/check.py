@@ -1,13 +1,14 @@
 """`trunnion check`: everything that can be known of a plan before it is flown."""
 
 from collections.abc import Mapping
+from pathlib import Path
 from typing import TYPE_CHECKING, Annotated
 
 import typer
 
 from trunnion.cli.arguments import AsJson, OptionalPlan, Station
 from trunnion.cli.errors import FAILED
-from trunnion.cli.output import number, print_json, print_table, print_text
+from trunnion.cli.output import number, print_json, print_table, print_text, say
 from trunnion.sky.instants import format_utc
 
 if TYPE_CHECKING:
@@ -22,6 +23,13 @@ def check(
         str | None,
         typer.Option(metavar="TIME", help="Check as if it were this time; by default it is now."),
     ] = None,
+    plot: Annotated[
+        Path | None,
+        typer.Option(
+            metavar="FILE.svg",
+            help="Draw the sky as seen and as flown, and the joints over time, into this file.",
+        ),
+    ] = None,
     as_json: AsJson = False,
 ) -> None:
     """Check a station and its plan: files, times, turns of the cable, rates, conflicts.
@@ -35,10 +43,14 @@ def check(
     from trunnion.service.sky_notes import sky_notes
     from trunnion.service.winds import build_wind
 
+    if plot is not None and plot.suffix.lower() != ".svg":
+        raise typer.BadParameter(f"expected a file name that ends in .svg, got {plot.name}")
     now_s = SystemClock().utc_s() if now is None else _instant(now)
     briefing = brief(BriefingOrder(station, plan, now_s))
     build_driver(briefing.station, SystemClock())
     build_wind(briefing.station, SystemClock())
+    if plot is not None:
+        _draw(briefing, plot)
     notes = sky_notes(briefing)
     if as_json:
         print_json(_plain(briefing, notes))
@@ -46,6 +58,17 @@ def check(
         _print(briefing, notes)
     if not all(each.is_served for each in briefing.contacts):
         raise typer.Exit(FAILED)
+
+
+def _draw(briefing: "Briefing", file: Path) -> None:
+    from trunnion.cli.pictures.page import picture
+    from trunnion.service.antenna import beam_of, mount_of
+    from trunnion.service.clearance import clearance_of
+
+    station = briefing.station
+    parts = mount_of(station), clearance_of(station), beam_of(station)
+    file.write_text(picture(briefing.programme, *parts), encoding="utf-8")
+    say(f"Wrote the picture of the plan to {file}.")
 
 
 def _instant(text: str) -> float:

@@ -20,7 +20,7 @@ from trunnion.sky.errors import SkyError
 from trunnion.sky.look import Target
 from trunnion.track.day import plan_day
 from trunnion.track.path import Assignment
-from trunnion.track.programme import Forecast
+from trunnion.track.programme import Forecast, Programme
 from trunnion.track.wanted import Wanted
 
 MARGIN_DEG = 0.2
@@ -58,7 +58,12 @@ class Briefing:
 
     station: StationFile
     contacts: tuple[ContactBriefing, ...]
-    assignments: tuple[Assignment, ...]
+    programme: Programme
+
+    @property
+    def assignments(self) -> tuple[Assignment, ...]:
+        """Who has the mount when."""
+        return self.programme.assignments
 
 
 def brief(order: BriefingOrder) -> Briefing:
@@ -76,7 +81,7 @@ def brief(order: BriefingOrder) -> Briefing:
         order.place or mount.stow,
         order.now_s,
     )
-    return Briefing(station, tuple(_told(drafts, programme.forecasts)), programme.assignments)
+    return Briefing(station, tuple(_told(drafts, programme.forecasts)), programme)
 
 
 def _draft(
