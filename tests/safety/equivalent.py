@@ -11,6 +11,9 @@ _GUARD = "it only keeps a division from being one by zero; anything tiny serves"
 EQUIVALENT: dict[str, str] = {
     "gate: self._ordered_s = 0.0: greater": _NEVER_READ,
     "gate: self._ordered_s = 0.0: less": _NEVER_READ,
+    "obedience: self._readings = 0: greater": _NEVER_READ,
+    "obedience: self._readings = 0: less": _NEVER_READ,
+    "obedience: if run_deg < 0.0:: 0 LtE": "a run of no length has both ends at one place",
     "orders: TINY_S = 1e-6: greater": _GUARD,
     "orders: TINY_S = 1e-6: less": _GUARD,
     f"{_STEP}greater": _NO_STEP,

@@ -139,3 +139,9 @@ def test_a_reading_older_than_the_order_is_held_against_the_order_itself() -> No
     reading = Reading(71.0, 46.99, 41.3)
     (found,) = Obedience(LIMITS).find(Motion(50.0, 41.3, 2.0, 0.0), 71.25, reading)
     assert found.rule is Rule.STALLED
+
+
+@pytest.mark.parametrize(("rate_deg_s", "read_deg"), [(0.125, 53.5), (-0.125, 53.0)])
+def test_a_short_run_counts_to_its_side_alone(rate_deg_s: float, read_deg: float) -> None:
+    ordered, reading = Motion(50.0, 41.25, rate_deg_s, 0.0), Reading(75.25, read_deg, 41.25)
+    assert list(Obedience(LIMITS).find(ordered, 71.25, reading)) == []

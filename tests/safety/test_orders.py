@@ -98,7 +98,9 @@ def test_a_mount_faster_than_its_orders_needs_its_own_room() -> None:
     assert examine(slow, mounted(base, (201.7, 9.0), up), 0.1, LIMITS) == (slow, ())
 
 
-@pytest.mark.parametrize(("rate_deg_s", "needs_room"), [(-4.09, False), (-4.11, True)])
+@pytest.mark.parametrize(
+    ("rate_deg_s", "needs_room"), [(-4.09, False), (-4.1, False), (-4.11, True)]
+)
 def test_a_little_faster_is_the_encoders_noise(rate_deg_s: float, needs_room: bool) -> None:
     base, demand = Motion(201.7, 11.9, 0.0, -4.0), Motion(201.7, 11.5, 0.0, -4.0)
     measured = Motion(201.7, 11.2, 0.0, rate_deg_s)
@@ -116,3 +118,29 @@ def test_seven_tenths_of_full_braking_is_braking_and_half_is_not(
     demand = Motion(201.7, place_deg, 0.0, -2.0)
     examined = examine(demand, mounted(base), 0.1, LIMITS)
     assert (examined == (demand, ())) == is_braking
+
+
+@pytest.mark.parametrize(
+    ("was_deg_s", "place_deg", "is_allowed"),
+    [
+        (-2.0, 7.69, False),
+        (-2.0, 7.71, True),
+        (-1.95, 7.71, True),
+        (-2.2, 7.48, False),
+    ],
+)
+def test_a_whole_turn_counts_for_a_joint_that_goes_on_and_none_for_one_that_brakes(
+    was_deg_s: float, place_deg: float, is_allowed: bool
+) -> None:
+    """The mask stands at 6.309; 1.190 deg to rest, and 0.2 deg in the turn that passes."""
+    base = Motion(201.7, place_deg + 0.05 * (2.0 - was_deg_s), 0.0, was_deg_s)
+    demand = Motion(201.7, place_deg, 0.0, -2.0)
+    assert (examine(demand, mounted(base), 0.1, LIMITS) == (demand, ())) == is_allowed
+
+
+@pytest.mark.parametrize(("rate_deg_s", "needs_room"), [(4.1, False), (4.11, True)])
+def test_the_first_joint_may_be_a_little_faster_too(rate_deg_s: float, needs_room: bool) -> None:
+    base, demand = Motion(263.7, 41.3, 4.0, 0.0), Motion(264.1, 41.3, 4.0, 0.0)
+    measured = Motion(264.45, 41.3, rate_deg_s, 0.0)
+    examined = examine(demand, mounted(base, (264.45, 41.3), measured), 0.1, LIMITS)
+    assert bool(examined.hazards) == needs_room
