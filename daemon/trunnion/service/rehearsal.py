@@ -15,6 +15,7 @@ from trunnion.pilot.phase import Phase, Wish
 from trunnion.pilot.pilot import Pilot
 from trunnion.safety.emergency import EmergencyStop
 from trunnion.safety.gate import Gate
+from trunnion.safety.power import PowerJudge
 from trunnion.safety.world import World
 from trunnion.service.antenna import beam_of, flown_mount_of, mount_of
 from trunnion.service.briefing import Briefing, brief
@@ -25,6 +26,7 @@ from trunnion.service.contact_log import ContactLog, Flown
 from trunnion.service.drivers import build_simulator
 from trunnion.service.limits import safety_limits_of
 from trunnion.service.link.direct import DirectLink
+from trunnion.service.power_cut import PowerCut
 from trunnion.service.score import Score, combined
 from trunnion.service.senses import FAIR
 from trunnion.service.surroundings import HARDWARE_STOP, world_of
@@ -65,7 +67,9 @@ class Rehearsal:
         self.mount, self.clearance = mount_of(station), clearance_of(station)
         tolerance_deg = beam_of(station).tolerance_deg
         pilot = Pilot(Facts(flown_mount_of(station), self.clearance, tolerance_deg))
-        gate = Gate(safety_limits_of(station, self.mount, self.clearance))
+        limits = safety_limits_of(station, self.mount, self.clearance)
+        gate = Gate(limits)
+        self._power = PowerCut(PowerJudge(limits), self._link, _tell_nobody)
         observers: tuple[Observer, ...] = (self._contacts,)
         self._control = ControlTurn(self._clock, self._link, pilot, gate, observers)
         self.results: dict[str, Rehearsed] = {}
@@ -83,6 +87,7 @@ class Rehearsal:
             turn = self._control.run(orders, self._look_around)
             if turn.verdict.latch is not None:
                 self._stop(turn.verdict.latch)
+            self._power.see_to_it(turn, is_stopped=self._latched is not None)
             yield turn
             is_home = turn.decision.phase is Phase.STOWED
             if turn.utc_s >= end_s and (is_home or turn.utc_s >= end_s + LONGEST_RETURN_S):
@@ -124,6 +129,10 @@ class Rehearsal:
             if moment_s is not None and moment_s > turn.utc_s
         ]
         return max(self._period_s, min(RESTING_STEP_S, *ahead_s, RESTING_STEP_S))
+
+
+def _tell_nobody(_: str) -> None:
+    """A rehearsal keeps its results and no log."""
 
 
 def rehearsal_of(station: Path, plan: Path | None) -> tuple[Briefing, Rehearsal]:

@@ -74,11 +74,10 @@ class SimulatedMount:
             return
         self._advance(mono_s)
         self._faults = faults
-        for joint, build, fault in zip(self._joints, self._builds, faults, strict=True):
+        for joint, fault in zip(self._joints, faults, strict=True):
             if fault is JointFault.JAMMED:
                 joint.seize(mono_s)
-            elif fault in _RUNNING:
-                joint.run_at(mono_s, 0.5 * build.bounds.rate_deg_s)
+        self._run_away(mono_s)
 
     def power(self, mono_s: float, *, is_on: bool) -> None:
         """Give the motors power or take it; without it nothing moves that was at rest."""
@@ -89,6 +88,13 @@ class SimulatedMount:
             self._expires_s = inf
             for joint in self._joints:
                 joint.run_at(mono_s, 0.0)
+            self._run_away(mono_s)
+
+    def _run_away(self, mono_s: float) -> None:
+        """Let joints run that run away, as long as their motors have power."""
+        for joint, build, fault in zip(self._joints, self._builds, self._faults, strict=True):
+            if self._has_power and fault in _RUNNING:
+                joint.run_at(mono_s, 0.5 * build.bounds.rate_deg_s)
 
     def _advance(self, mono_s: float) -> None:
         while self._under_way and self._under_way[0].due_s <= mono_s:

@@ -14,6 +14,9 @@ BLINDING = frozenset({Kind.CABLE_PULLED, Kind.SILENT, Kind.GARBLED, Kind.DEAD})
 DEAFENING = frozenset({Kind.CABLE_PULLED, Kind.SILENT, Kind.DEAF, Kind.SLOW_CALLS, Kind.DEATH})
 """While one of these lasts not even a halt gets through; the mount's own watchdog ends motion."""
 
+HINDERING = DEAFENING | {Kind.TORN_LATCH, Kind.STALL}
+"""While one of these lasts, and a time after it, the motors may have power all the same."""
+
 STOWING = frozenset({Kind.WIND, Kind.WIND_UNKNOWN, Kind.HEARTBEAT_LOST})
 
 HARMLESS = frozenset(

@@ -22,6 +22,8 @@ REACTION_S = 0.5
 """Two turns, and the latency of the mount."""
 WATCHDOG_S = 2.0
 """The simulated mount ends a motion by itself that is not renewed for so long."""
+POWER_REACTION_S = 2.0
+"""A mount gets so long, and time to brake, before a stop takes the power of its motors."""
 READING_MAX_AGE_S = 1.0
 CONTACT_LOST_DEG = 1.0
 SHORT_S = 1.1
@@ -71,6 +73,7 @@ class Checker:
             ("2 sky", self._in_the_clear),
             ("3 stop holds", self._stop_holds),
             ("3 stop rests", self._rests_when_stopped),
+            ("3 stop takes the power", self._rests_without_power),
             ("3 reset starts nothing", self._rests_after_reset),
             ("4 blind", self._rests_when_blind),
             ("5 disobedience", self._latches_disobedience),
@@ -143,6 +146,15 @@ class Checker:
         if _is_moving(now) or moved_deg > STILL_DEG:
             return f"{moved_deg:.3f}° of motion while stopped"
         return None
+
+    def _rests_without_power(self, now: Instant) -> str | None:
+        """Even a joint that obeys no halt rests in the end: its motor has no power any more."""
+        longest_s = POWER_REACTION_S + 2.5 * self._braking_s
+        if self._stopped_s is None or now.since_s - self._stopped_s < longest_s:
+            return None
+        if allowance.is_any_on(self._scenario, allowance.HINDERING, now.since_s, longest_s):
+            return None
+        return "a joint moves long after a stop, so it has power" if _is_moving(now) else None
 
     def _rests_after_reset(self, now: Instant) -> str | None:
         before = self._before

@@ -8,6 +8,7 @@ from trunnion.pilot.departure import Facts
 from trunnion.pilot.pilot import Pilot
 from trunnion.safety.gate import Gate
 from trunnion.safety.limits import SafetyLimits
+from trunnion.safety.power import PowerJudge
 from trunnion.safety.transmit import TransmitJudge, TransmitPermit
 from trunnion.safety.world import World
 from trunnion.service.cadence import Cadence
@@ -16,6 +17,7 @@ from trunnion.service.commands import Commands, Surroundings
 from trunnion.service.emergency_desk import EmergencyDesk, Keeping
 from trunnion.service.errors import ServiceError
 from trunnion.service.link.direct import DirectLink
+from trunnion.service.power_cut import PowerCut
 from trunnion.service.recovery_leave import RecoveryLeave
 from trunnion.service.standing_wish import StandingWish
 from trunnion.service.surroundings import HARDWARE_STOP, world_of
@@ -53,6 +55,7 @@ class Process:
         self.wish = StandingWish(wish_file)
         self._link = DirectLink(steel.driver, clock)
         around = Surroundings(dict, lambda: None, lambda: self._link.status, lambda *_: None)
+        self._power = PowerCut(PowerJudge(limits), self._link, self.troubles.append)
         leave = RecoveryLeave(limits, clock, lambda: None)
         self._handlers = Commands(self.wish, self.desk, around, leave).handlers()
         self.desk.attach(self._link)
@@ -71,6 +74,7 @@ class Process:
         turn = self._turn.run(orders, lambda: self._look_around(late_s, weather))
         if turn.verdict.latch is not None:
             self.desk.stop(turn.verdict.latch)
+        self._power.see_to_it(turn, is_stopped=self.desk.latched is not None)
         permit = self._transmit.judge(
             turn.mono_s, turn.decision.error_deg, turn.reading, turn.verdict
         )

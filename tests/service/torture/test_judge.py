@@ -1,0 +1,48 @@
+"""The judge of the torture, shown what must never be."""
+
+from dataclasses import replace
+
+from trunnion.mount.joints import Motion
+from trunnion.pilot.phase import Wish
+from trunnion.service.torture.checker import Checker
+from trunnion.service.torture.flight import Instant
+from trunnion.service.torture.mishap import Mishap, MishapKind
+from trunnion.service.torture.scenario import START_UTC_S, Scenario, draw
+
+UNSTOPPABLE = Mishap(MishapKind.UNSTOPPABLE, 5.0, 90.0, 1.0, 0)
+POWER = "3 stop takes the power"
+
+
+def scenario(*mishaps: Mishap) -> Scenario:
+    return replace(draw(71), mishaps=(UNSTOPPABLE, *mishaps))
+
+
+def broken(flown: Scenario, rate_deg_s: float, until_s: float = 60.0) -> set[str]:
+    """The promises broken by a joint that moves on like this, stopped from the begin."""
+    judge, found = Checker(flown), set()
+    for turn in range(round(until_s / 0.1)):
+        since_s = 0.1 * turn
+        true = Motion(*flown.mount.stow, rate_deg_s, 0.0)
+        now = Instant(
+            since_s,
+            START_UTC_S + since_s,
+            true,
+            "stop",
+            Wish.HOLD,
+            may_transmit=False,
+            is_alive=True,
+            interventions=(),
+        )
+        found |= {violation.guarantee for violation in judge.note(now)}
+    return found
+
+
+def test_a_joint_that_runs_on_after_a_stop_has_power_and_must_not() -> None:
+    assert POWER in broken(scenario(), rate_deg_s=2.3)
+    assert POWER not in broken(scenario(), rate_deg_s=0.0)
+    assert POWER not in broken(scenario(), rate_deg_s=2.3, until_s=2.0)
+
+
+def test_nobody_can_take_the_power_over_a_cable_that_is_pulled() -> None:
+    pulled = Mishap(MishapKind.CABLE_PULLED, 0.0, 90.0, 1.0, 0)
+    assert POWER not in broken(scenario(pulled), rate_deg_s=2.3)
