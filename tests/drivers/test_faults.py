@@ -117,6 +117,19 @@ def test_a_joint_that_runs_away(
     assert driver.true_motion().first_rate_deg_s == 0.0
 
 
+def test_a_joint_without_power_does_not_begin_to_run_away(
+    driver: SimulatorDriver, clock: HandClock
+) -> None:
+    driver.cut_power()
+    now_wrong(driver, joints=(JointFault.UNSTOPPABLE, SOUND))
+    clock.sleep(2.0)
+    assert driver.true_motion().first_rate_deg_s == 0.0
+    driver.close()
+    driver.open()
+    clock.sleep(2.0)
+    assert driver.true_motion().first_rate_deg_s > 0.0
+
+
 def test_a_mount_without_power_coasts_to_rest_and_stays(
     driver: SimulatorDriver, clock: HandClock
 ) -> None:
