@@ -112,7 +112,11 @@ def test_one_elements_path_needs_no_list(tmp_path: Path) -> None:
         ),
         (
             {"stow_deg": "stow_deg: [0, 88]\n  geometry: azimuth-elevaton"},
-            "station.yaml:16: mount.geometry: expected 'azimuth-elevation', got 'azimuth-elevaton'",
+            (
+                "station.yaml:16: mount.geometry: expected one of 'azimuth-elevation', "
+                "'x-y-north-south', 'x-y-east-west', 'hour-angle-declination', "
+                "got 'azimuth-elevaton'"
+            ),
         ),
         (
             {

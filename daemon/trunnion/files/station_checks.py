@@ -3,13 +3,15 @@
 from collections.abc import Iterator
 
 from trunnion.files.station_files import FilesSection
-from trunnion.files.station_machine import CadenceSection, MountSection, WindSection
+from trunnion.files.station_machine import CadenceSection, Geometry, MountSection, WindSection
 from trunnion.files.station_safety import SafetySection
 from trunnion.files.validation import Check, Contradiction
 
 
 def floor_below_travel(mount: MountSection, safety: SafetySection) -> Iterator[Contradiction]:
     """The mount must reach some of the sky above the elevation floor."""
+    if mount.geometry is not Geometry.AZIMUTH_ELEVATION:
+        return
     highest_deg = _highest_elevation_deg(mount)
     if safety.elevation_floor_deg >= highest_deg:
         yield Contradiction(
@@ -20,7 +22,12 @@ def floor_below_travel(mount: MountSection, safety: SafetySection) -> Iterator[C
 
 
 def stow_above_floor(mount: MountSection, safety: SafetySection) -> Iterator[Contradiction]:
-    """The stow position must be one that the gate lets the mount go to."""
+    """The stow position must be one that the gate lets the mount go to.
+
+    For other geometries this needs the mount's hinges, and is found with the horizon mask.
+    """
+    if mount.geometry is not Geometry.AZIMUTH_ELEVATION:
+        return
     stow_deg = _elevation_deg(mount.stow_deg[1])
     if stow_deg < safety.elevation_floor_deg:
         yield Contradiction(

@@ -16,6 +16,9 @@ class Geometry(Enum):
     """How the two joints of the mount are arranged."""
 
     AZIMUTH_ELEVATION = "azimuth-elevation"
+    X_Y_NORTH_SOUTH = "x-y-north-south"
+    X_Y_EAST_WEST = "x-y-east-west"
+    HOUR_ANGLE_DECLINATION = "hour-angle-declination"
 
 
 class JointSection(Section):
@@ -40,12 +43,16 @@ class MountSection(Section):
     """The mount: two joints, the second carried by the first."""
 
     geometry: Annotated[Geometry, Field(strict=False)] = Geometry.AZIMUTH_ELEVATION
-    """How the joints are arranged: `azimuth-elevation` (first joint azimuth, second elevation)."""
+    """How the joints are arranged, by what the joint on the ground turns about: `azimuth-elevation`
+    (the vertical), `x-y-north-south` and `x-y-east-west` (a level axis along the meridian, or at a
+    right angle to it), `hour-angle-declination` (the axis of the Earth)."""
     first: JointSection
-    """The joint that stands on the ground: azimuth, from north through east."""
+    """The joint that stands on the ground: azimuth, from north through east; or X, from the zenith
+    towards east (north for `x-y-east-west`); or hour angle, from the meridian towards west."""
     second: JointSection
-    """The joint that it carries: elevation, 0 at the horizon and 90 at the zenith; beyond 90 the
-    antenna goes over the top."""
+    """The joint that it carries: elevation, 0 at the horizon and 90 at the zenith, beyond 90 the
+    antenna goes over the top; or Y, from the zenith towards north (east for `x-y-east-west`); or
+    declination."""
     stow_deg: Pair
     """Where the mount parks: angles of the first and the second joint in degrees."""
 

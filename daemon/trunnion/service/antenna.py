@@ -16,7 +16,7 @@ def mount_of(station: StationFile) -> Mount:
     """The station's mount."""
     section = station.mount
     return Mount(
-        _HINGES[section.geometry],
+        _hinges(section.geometry, station.site.latitude_deg),
         _limits(section.first),
         _limits(section.second),
         Joints(*section.stow_deg),
@@ -34,7 +34,16 @@ def beam_of(station: StationFile) -> Beam:
     return Beam(section.half_power_beamwidth_deg, section.pointing_tolerance_deg)
 
 
-_HINGES = {Geometry.AZIMUTH_ELEVATION: Hinges.azimuth_elevation()}
+def _hinges(geometry: Geometry, latitude_deg: float) -> Hinges:
+    match geometry:
+        case Geometry.AZIMUTH_ELEVATION:
+            return Hinges.azimuth_elevation()
+        case Geometry.X_Y_NORTH_SOUTH:
+            return Hinges.x_y_north_south()
+        case Geometry.X_Y_EAST_WEST:
+            return Hinges.x_y_east_west()
+        case Geometry.HOUR_ANGLE_DECLINATION:
+            return Hinges.hour_angle_declination(latitude_deg)
 
 
 def _limits(joint: JointSection) -> JointLimits:

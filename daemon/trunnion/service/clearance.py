@@ -33,8 +33,9 @@ def _why_stow_is_not_clear(station: StationFile, clearance: Clearance) -> str | 
         return f"expected a stow position outside all keep-outs, got one in {keep_out.name!r}"
     lowest_deg = clearance.lowest_deg(azimuth_deg)
     if elevation_deg < lowest_deg - _ROUNDING_DEG:
+        limit = "the floor" if lowest_deg == clearance.floor_deg else "the horizon mask"
         return (
-            f"expected an elevation of at least {lowest_deg:g}, which is the horizon mask at "
+            f"expected an elevation of at least {lowest_deg:g}, which is {limit} at "
             f"azimuth {azimuth_deg:g}, got {elevation_deg:g}"
         )
     return None
