@@ -4,7 +4,7 @@ from pathlib import Path
 
 from trunnion.safety.page import operators_page
 
-PAGE = Path(__file__).parents[2] / "OPERATORS.md"
+PAGE = Path(__file__).parents[2] / "systemd" / "OPERATORS.md"
 
 if __name__ == "__main__":
     PAGE.write_text(operators_page(), encoding="utf-8")
