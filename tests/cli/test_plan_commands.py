@@ -7,6 +7,7 @@ import pytest
 
 from tests.cli.command import trunnion
 from tests.service.stations import write_plan, write_station
+from trunnion.safety.policy import POLICY
 
 MORNING = ("--now", "2026-12-01T00:00Z")
 GOOD = "{id: good, target: beacon, from: 2026-12-01T00:24:00Z, until: 2026-12-01T00:25:00Z}"
@@ -122,3 +123,11 @@ def test_check_draws_the_plan(station: Path, tmp_path: Path) -> None:
     nowhere = trunnion("check", station, *MORNING, "--plot", tmp_path / "no" / "plan.svg")
     assert nowhere.exit_code == 1
     assert "plan.svg" in nowhere.stderr
+
+
+def test_check_prints_what_the_gate_does(station: Path) -> None:
+    done = trunnion("check", station, "--safety")
+    assert done.exit_code == 0
+    assert "emergency stop" in done.stdout
+    told = json.loads(trunnion("check", station, "--safety", "--json").stdout)["policy"]
+    assert len(told) == len(POLICY)

@@ -30,6 +30,9 @@ def check(
             help="Draw the sky as seen and as flown, and the joints over time, into this file.",
         ),
     ] = None,
+    safety: Annotated[
+        bool, typer.Option("--safety", help="Print what the safety gate does in each case instead.")
+    ] = False,
     as_json: AsJson = False,
 ) -> None:
     """Check a station and its plan: files, times, turns of the cable, rates, conflicts.
@@ -43,6 +46,9 @@ def check(
     from trunnion.service.sky_notes import sky_notes
     from trunnion.service.winds import build_wind
 
+    if safety:
+        _print_policy(as_json=as_json)
+        return
     if plot is not None and plot.suffix.lower() != ".svg":
         raise typer.BadParameter(f"expected a file name that ends in .svg, got {plot.name}")
     now_s = SystemClock().utc_s() if now is None else _instant(now)
@@ -58,6 +64,15 @@ def check(
         _print(briefing, notes)
     if not all(each.is_served for each in briefing.contacts):
         raise typer.Exit(FAILED)
+
+
+def _print_policy(*, as_json: bool) -> None:
+    from trunnion.safety.page import COLUMNS, rows
+
+    if as_json:
+        print_json({"policy": [dict(zip(COLUMNS, row, strict=True)) for row in rows()]})
+    else:
+        print_table("What the safety gate does", COLUMNS, rows())
 
 
 def _draw(briefing: "Briefing", file: Path) -> None:
