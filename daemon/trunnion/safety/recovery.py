@@ -32,8 +32,10 @@ def examine_return(
     if not may_recover or not isfinite(sum(demand)):
         return refused
     step = approach(now.base, demand, _slow(limits), dt_s)
-    before_deg, after_deg = depth_deg(now.reading.joints, limits), depth_deg(step.joints, limits)
-    is_inwards = after_deg < before_deg or step.joints == now.base.joints
+    after_deg = depth_deg(step.joints, limits)
+    seen_deg = depth_deg(now.reading.joints, limits) + limits.encoder_error_deg
+    is_inwards = after_deg < min(depth_deg(now.base.joints, limits), seen_deg)
+    is_inwards = is_inwards or step.joints == now.base.joints
     return Examined(step) if is_inwards else refused
 
 

@@ -46,3 +46,35 @@ def test_a_joint_that_runs_on_after_a_stop_has_power_and_must_not() -> None:
 def test_nobody_can_take_the_power_over_a_cable_that_is_pulled() -> None:
     pulled = Mishap(MishapKind.CABLE_PULLED, 0.0, 90.0, 1.0, 0)
     assert POWER not in broken(scenario(pulled), rate_deg_s=2.3)
+
+
+def outside() -> Scenario:
+    """A flight that begins outside the travel, and whose operator asks for the way back."""
+    flown = draw(71)
+    start = flown.mount.stow._replace(first_deg=flown.mount.first.upper_deg + 1.9)
+    back = Mishap(MishapKind.RECOVER, 5.0, 0.0, 1.0, 0)
+    return replace(flown, start=start, mishaps=(back,))
+
+
+def returned(rate_deg_s: float, begin_s: float = 5.0) -> set[str]:
+    """The promises broken by a mount that goes inwards (or, below zero, outwards) at this rate."""
+    flown = outside()
+    judge, found = Checker(flown), set()
+    first_deg, second_deg = flown.start
+    inwards = flown.mount.stow[0] - first_deg, flown.mount.stow[1] - second_deg
+    for turn in range(70):
+        since_s = 0.1 * turn
+        way_deg = max(0.0, since_s - begin_s) * rate_deg_s
+        share = way_deg / max(map(abs, inwards))
+        true = Motion(first_deg + share * inwards[0], second_deg + share * inwards[1])
+        now = Instant(since_s, START_UTC_S + since_s, true, None, Wish.HOLD,
+                      may_transmit=False, is_alive=True, interventions=())  # fmt: skip
+        found |= {violation.guarantee for violation in judge.note(now)}
+    return found
+
+
+def test_the_way_back_inside_is_slow_never_outwards_and_only_by_leave() -> None:
+    assert "6 outside" not in returned(0.4)
+    assert "6 outside" in returned(2.0)
+    assert "6 outside" in returned(-0.3)
+    assert "6 outside" in returned(0.4, begin_s=2.0)

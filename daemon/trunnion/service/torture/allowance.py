@@ -34,6 +34,7 @@ HARMLESS = frozenset(
         Kind.DEATH,
         Kind.DISK_FULL,
         Kind.NEW_PLAN,
+        Kind.RECOVER,
         *STOWING,
     }
 )

@@ -3,9 +3,11 @@
 Written apart from the gate, and knows nothing of it. Each check stands for one guarantee.
 """
 
+from collections import deque
 from collections.abc import Callable, Iterable, Iterator
 from typing import NamedTuple
 
+from trunnion.mount.joints import Joints
 from trunnion.mount.mount import JointLimits
 from trunnion.mount.sphere import separation_deg
 from trunnion.pilot.phase import Wish
@@ -24,6 +26,9 @@ WATCHDOG_S = 2.0
 """The simulated mount ends a motion by itself that is not renewed for so long."""
 POWER_REACTION_S = 2.0
 """A mount gets so long, and time to brake, before a stop takes the power of its motors."""
+RETURN_DEG = 1.2
+"""A mount that comes back inside moves so far in a second at most: 0.5° as ordered, and more for
+steel that swings round its orders, which come from readings that are a little wrong."""
 READING_MAX_AGE_S = 1.0
 CONTACT_LOST_DEG = 1.0
 SHORT_S = 1.1
@@ -44,6 +49,7 @@ class Checker:
 
     def __init__(self, scenario: Scenario) -> None:
         self._scenario = scenario
+        self._mishaps = scenario.mishaps
         self._before: Instant | None = None
         self._stopped_s: float | None = None
         self._rest: Instant | None = None
@@ -51,12 +57,8 @@ class Checker:
         self._held: Instant | None = None
         mount = scenario.mount
         self._braking_s = max(_braking_s(mount.first), _braking_s(mount.second))
-        place = mount.hinges.boresight(scenario.start)
-        self._begins_outside = not (
-            _is_within(scenario.start.first_deg, mount.first, 0.0)
-            and _is_within(scenario.start.second_deg, mount.second, 0.0)
-            and scenario.clearance.is_clear(*place)
-        )
+        self._begins_outside = self._is_outside = not self._is_inside(scenario.start)
+        self._trail: deque[Joints] = deque(maxlen=round(1.0 / TICK_S) + 1)
 
     def note(self, now: Instant) -> Iterator[Violation]:
         """What this instant violates."""
@@ -85,6 +87,8 @@ class Checker:
         )
 
     def _keep_track(self, now: Instant) -> None:
+        if self._is_outside and self._is_inside(now.true.joints):
+            self._is_outside = False
         was_stopped = self._before is not None and self._before.stopped is not None
         if now.stopped is None:
             self._stopped_s = None
@@ -95,7 +99,7 @@ class Checker:
     # -- where it is ----------------------------------------------------------------------------
 
     def _in_travel(self, now: Instant) -> str | None:
-        if allowance.is_unruly(self._scenario, now.since_s) or self._begins_outside:
+        if allowance.is_unruly(self._scenario, now.since_s) or self._is_outside:
             return None
         excused_deg = allowance.excused_deg(self._scenario, now.since_s)
         mount = self._scenario.mount
@@ -105,7 +109,7 @@ class Checker:
         return None
 
     def _in_the_clear(self, now: Instant) -> str | None:
-        if allowance.is_unruly(self._scenario, now.since_s) or self._begins_outside:
+        if allowance.is_unruly(self._scenario, now.since_s) or self._is_outside:
             return None
         excused_deg = allowance.excused_deg(self._scenario, now.since_s)
         clearance = self._scenario.clearance
@@ -142,7 +146,7 @@ class Checker:
             return None
         if self._rest is None:
             self._rest = now
-        moved_deg = _apart_deg(now, self._rest)
+        moved_deg = _apart_deg(now.true.joints, self._rest.true.joints)
         if _is_moving(now) or moved_deg > STILL_DEG:
             return f"{moved_deg:.3f}° of motion while stopped"
         return None
@@ -165,9 +169,9 @@ class Checker:
             self._held = now
         if self._held is None or allowance.is_unruly(self._scenario, now.since_s):
             return None
-        moved_deg = _apart_deg(now, self._held)
+        moved_deg = _apart_deg(now.true.joints, self._held.true.joints)
         is_new = now.since_s - self._held.since_s > self._rest_after_s(now.since_s)
-        if is_new and _is_moving(now):
+        if is_new and _is_moving(now) and not self._was(now, Kind.RECOVER, 120.0):
             return f"{moved_deg:.3f}° of motion after a reset, and nobody asked for it"
         return None
 
@@ -232,13 +236,35 @@ class Checker:
         )
 
     def _stays_outside(self, now: Instant) -> str | None:
-        if not self._begins_outside or allowance.is_unruly(self._scenario, now.since_s):
+        if not self._is_outside or allowance.is_unruly(self._scenario, now.since_s):
             return None
-        moved_deg = max(
-            abs(now.true.first_deg - self._scenario.start.first_deg),
-            abs(now.true.second_deg - self._scenario.start.second_deg),
-        )
+        if any(each.kind is Kind.RECOVER and each.at_s <= now.since_s for each in self._mishaps):
+            return self._returns_slowly(now)
+        moved_deg = _apart_deg(now.true.joints, self._scenario.start)
         return f"moved {moved_deg:.2f}° from outside" if moved_deg > STILL_DEG else None
+
+    def _returns_slowly(self, now: Instant) -> str | None:
+        """Told to come back inside: by the shortest way, slowly, never further out."""
+        place, last = now.true.joints, self._trail[-1] if self._trail else self._scenario.start
+        self._trail.append(place)
+        moved_deg = _apart_deg(place, self._trail[0])
+        if moved_deg > RETURN_DEG:
+            return f"comes back inside by {moved_deg:.2f}° in a second"
+        mount = self._scenario.mount
+        for joint, before_deg, now_deg in zip(
+            (mount.first, mount.second), last, place, strict=True
+        ):
+            if _beyond_deg(now_deg, joint) > _beyond_deg(before_deg, joint) + STILL_DEG:
+                return f"led further out, to {place}"
+        return None
+
+    def _is_inside(self, place: Joints) -> bool:
+        mount = self._scenario.mount
+        return (
+            _is_within(place.first_deg, mount.first, 0.0)
+            and _is_within(place.second_deg, mount.second, 0.0)
+            and self._scenario.clearance.is_clear(*mount.hinges.boresight(place))
+        )
 
     def _stows(self, now: Instant) -> str | None:
         mount = self._scenario.mount
@@ -321,13 +347,14 @@ def _is_within(angle_deg: float, joint: JointLimits, excused_deg: float) -> bool
     return joint.lower_deg - excused_deg <= angle_deg <= joint.upper_deg + excused_deg
 
 
+def _beyond_deg(angle_deg: float, joint: JointLimits) -> float:
+    return max(joint.lower_deg - angle_deg, angle_deg - joint.upper_deg, 0.0)
+
+
 def _is_moving(now: Instant) -> bool:
     first, second = now.true.first_rate_deg_s, now.true.second_rate_deg_s
     return max(abs(first), abs(second)) > RESTING_DEG_S
 
 
-def _apart_deg(one: Instant, other: Instant) -> float:
-    return max(
-        abs(one.true.first_deg - other.true.first_deg),
-        abs(one.true.second_deg - other.true.second_deg),
-    )
+def _apart_deg(one: Joints, other: Joints) -> float:
+    return max(abs(one.first_deg - other.first_deg), abs(one.second_deg - other.second_deg))

@@ -149,6 +149,7 @@ _BUTTONS = {
     MishapKind.RESUME: "resume",
     MishapKind.STOW: "stow",
     MishapKind.HOLD: "hold",
+    MishapKind.RECOVER: "recover",
 }
 _PLANS: Mapping[MishapKind, Callable[[Scenario], Sequence[Assignment] | None]] = {
     MishapKind.NEW_PLAN: lambda scenario: _assignments(scenario.contacts),

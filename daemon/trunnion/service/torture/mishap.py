@@ -41,6 +41,7 @@ class MishapKind(Enum):
     WIND = "wind too high"
     WIND_UNKNOWN = "wind sensor lost"
     HEARTBEAT_LOST = "heartbeat lost"
+    RECOVER = "operator recovers"
 
 
 class Mishap(NamedTuple):

@@ -56,8 +56,8 @@ class Process:
         self._link = DirectLink(steel.driver, clock)
         around = Surroundings(dict, lambda: None, lambda: self._link.status, lambda *_: None)
         self._power = PowerCut(PowerJudge(limits), self._link, self.troubles.append)
-        leave = RecoveryLeave(limits, clock, lambda: None)
-        self._handlers = Commands(self.wish, self.desk, around, leave).handlers()
+        self._leave = RecoveryLeave(limits, clock, self._link.newest)
+        self._handlers = Commands(self.wish, self.desk, around, self._leave).handlers()
         self.desk.attach(self._link)
         mount = limits.mount.with_reserve(0.97, 0.7)
         pilot = Pilot(Facts(mount, limits.clearance, TOLERANCE_DEG))
@@ -70,10 +70,11 @@ class Process:
     ) -> tuple[Turn, TransmitPermit]:
         """Wait for the next turn, and do it."""
         late_s = self._cadence.wait().lateness_s
-        orders = Orders(assignments, self.wish.wish)
+        way_back = self._leave.way_back(self._link.newest())
+        orders = Orders(assignments, self.wish.wish, way_back)
         turn = self._turn.run(orders, lambda: self._look_around(late_s, weather))
         if turn.verdict.latch is not None:
-            self.desk.stop(turn.verdict.latch)
+            self._stop(turn.verdict.latch)
         self._power.see_to_it(turn, is_stopped=self.desk.latched is not None)
         permit = self._transmit.judge(
             turn.mono_s, turn.decision.error_deg, turn.reading, turn.verdict
@@ -83,7 +84,7 @@ class Process:
     def press(self, command: str) -> bool:
         """Press one of the operator's buttons; whether it was accepted."""
         if command == "stop":
-            self.desk.stop("somebody pressed stop")
+            self._stop("somebody pressed stop")
             return True
         try:
             self._handlers[command]({})
@@ -95,10 +96,14 @@ class Process:
         """Be killed: nothing is said to the mount any more."""
         self._steel.driver.close()
 
+    def _stop(self, cause: str) -> None:
+        self._leave.withdraw()
+        self.desk.stop(cause)
+
     def _look_around(self, late_s: float, weather: Weather) -> World:
         status = self._link.status
         if status.stop_pressed:
-            self.desk.stop(HARDWARE_STOP)
+            self._stop(HARDWARE_STOP)
         return world_of(self.desk.latched, status, late_s)._replace(
             wind_gust_m_s=weather.wind_m_s,
             heartbeat_age_s=weather.heartbeat_age_s,

@@ -54,10 +54,10 @@ def draw(seed: int) -> Scenario:
     start = mount.stow if chance.random() > SHARE_OUTSIDE else _outside(chance, mount)
     scenario = Scenario(seed, mount, clearance, start, _draw_machine(chance, seed), contacts, ())
     count = chance.choice((0, 1, 1, 2, 2, 3, 5))
-    mishaps = sorted(
-        (_draw_mishap(chance, scenario.end_s) for _ in range(count)), key=lambda each: each.at_s
-    )
-    return replace(scenario, mishaps=tuple(mishaps))
+    mishaps = [_draw_mishap(chance, scenario.end_s) for _ in range(count)]
+    if start != mount.stow:
+        mishaps.append(Mishap(MishapKind.RECOVER, chance.uniform(2.0, 30.0), 0.0, 1.0, 0))
+    return replace(scenario, mishaps=tuple(sorted(mishaps, key=lambda each: each.at_s)))
 
 
 def _draw_station(chance: Random) -> tuple[Mount, Clearance]:
@@ -207,13 +207,15 @@ def _draw_machine(chance: Random, seed: int) -> dict[str, float]:
 
 
 def _draw_mishap(chance: Random, end_s: float) -> Mishap:
-    kind = chance.choice(tuple(MishapKind))
+    kind = chance.choice(_ANYWHERE)
     lasts_s = chance.choice((0.15, 1.0, 4.0, LONGEST_MISHAP_S)) * chance.uniform(0.7, 1.0)
     if kind in _LONG:
         lasts_s *= 10.0
     amount = chance.choice((-1.0, 1.0)) * chance.uniform(0.3, 1.0) * _MOST.get(kind, 1.0)
     return Mishap(kind, chance.uniform(1.0, end_s), lasts_s, amount, chance.randint(0, 1))
 
+
+_ANYWHERE = tuple(kind for kind in MishapKind if kind is not MishapKind.RECOVER)
 
 _LONG = frozenset({MishapKind.WIND, MishapKind.WIND_UNKNOWN, MishapKind.HEARTBEAT_LOST})
 
