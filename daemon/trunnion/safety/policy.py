@@ -68,7 +68,8 @@ POLICY: dict[Rule, Policy] = {
         0.0,
         Clears.BY_OPERATOR,
         "until it is reset",
-        "Somebody or something asked for an emergency stop, or the file that keeps one is damaged.",
+        "Somebody or something asked for an emergency stop, or the file that keeps one is damaged. "
+        "Where the mount has a power output, its motors lose their power as soon as it rests.",
         "Go and look. When the cause is gone and nobody is near the mount, reset the stop; then "
         "tell the mount to go on.",
     ),
@@ -129,7 +130,7 @@ POLICY: dict[Rule, Policy] = {
     Rule.OUTSIDE: _halt(
         "until it was brought back by hand or by leave",
         "The mount stands outside its travel, below its floor or horizon, or in a keep-out.",
-        "Look whether the way back is free, and bring it back slowly.",
+        "Look whether the way back is free, and let `trunnion recover` bring it back slowly.",
     ),
     Rule.LINK_DOWN: _halt(
         "until the link is up",
