@@ -115,6 +115,7 @@ def test_one_elements_path_needs_no_list(tmp_path: Path) -> None:
             (
                 "station.yaml:16: mount.geometry: expected one of 'azimuth-elevation', "
                 "'x-y-north-south', 'x-y-east-west', 'hour-angle-declination', "
+                "'other-axis', "
                 "got 'azimuth-elevaton'"
             ),
         ),
@@ -227,8 +228,8 @@ def test_a_stow_over_the_top_counts_by_its_true_elevation(tmp_path: Path) -> Non
         (
             "zebra: 3\n",
             (
-                "station.yaml:22: zebra: unknown key; known here: site, mount, antenna, sky, "
-                "safety, driver, wind, cadence, files, targets"
+                "station.yaml:22: zebra: unknown key; known here: site, mount, antenna, planning, "
+                "sky, safety, driver, wind, cadence, files, targets"
             ),
         ),
     ],

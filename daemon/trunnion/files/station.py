@@ -16,6 +16,7 @@ from trunnion.files.station_machine import (
     CadenceSection,
     DriverSection,
     MountSection,
+    PlanningSection,
     WindSection,
 )
 from trunnion.files.station_safety import SafetySection
@@ -43,6 +44,7 @@ class StationFile(Section):
     site: SiteSection
     mount: MountSection
     antenna: AntennaSection
+    planning: PlanningSection = _ALL_DEFAULTS
     sky: SkySection = _ALL_DEFAULTS
     safety: SafetySection
     driver: DriverSection

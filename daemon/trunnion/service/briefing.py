@@ -9,7 +9,7 @@ from dataclasses import dataclass
 
 from trunnion.files.plan import Contact, load_plan
 from trunnion.files.station import StationFile, load_station
-from trunnion.service.antenna import beam_of, flown_mount_of
+from trunnion.service.antenna import beam_of, flown_mount_of, objective_of
 from trunnion.service.briefing_order import BriefingOrder
 from trunnion.service.clearance import clearance_of
 from trunnion.service.errors import ServiceError
@@ -80,6 +80,7 @@ def brief(order: BriefingOrder) -> Briefing:
         beam_of(station),
         order.place or mount.stow,
         order.now_s,
+        objective_of(station),
     )
     return Briefing(station, tuple(_told(drafts, programme.forecasts)), programme)
 
