@@ -184,3 +184,32 @@ def test_a_port_that_is_not_there_is_told_and_tried_again(
     daemons[-1].send_signal(signal.SIGTERM)
     assert daemons[-1].wait(timeout=20) == 0
     assert "Traceback" not in station.log()
+
+
+def test_a_stop_takes_the_power_and_the_reset_gives_it_back(
+    station: Station, daemons: list[subprocess.Popen[str]]
+) -> None:
+    daemons.append(station.run())
+    assert not station.wait_for_phase("tracking")["link"]["is_power_cut"]
+    assert station.command("stop", str(station.file)).returncode == 0
+    station.wait_for(lambda status: status["link"]["is_power_cut"])
+    assert station.command("reset", str(station.file)).returncode == 0
+    station.wait_for(lambda status: not status["link"]["is_power_cut"])
+    assert station.command("resume", str(station.file)).returncode == 0
+    station.wait_for_phase("tracking")
+
+
+def test_a_mount_found_outside_comes_back_when_told_to(
+    station: Station, daemons: list[subprocess.Popen[str]]
+) -> None:
+    (station.folder / "mount.json").write_text(f"{13.7:+025.12f} {4.1:+025.12f}\n")
+    daemons.append(station.run())
+    waiting = station.wait_for(lambda status: bool(status["mount"]["reading_deg"]))
+    assert waiting["mount"]["reading_deg"] == pytest.approx([13.7, 4.1], abs=0.05)
+    assert station.command("recover", str(station.file)).returncode == 0
+    station.wait_for(lambda status: status["mount"]["reading_deg"][1] > 5.0)
+    station.wait_for_phase("holding")
+    refused = station.command("recover", str(station.file))
+    assert (refused.returncode, "inside its limits" in refused.stderr) == (1, True)
+    assert station.command("resume", str(station.file)).returncode == 0
+    station.wait_for_phase("tracking")

@@ -84,6 +84,7 @@ class Daemon:
         self._last_turn: Turn | None = None
         self._last_beat = Beat(0, 0.0, 0)
         self._missed = 0
+        self._was_coming_back = False
         self._records: RecordWriter | None = None  # a stop may come before it is there
         driver = build_driver(station, clock)
         clearance = clearance_of(station)
@@ -144,6 +145,9 @@ class Daemon:
         self._last_beat = cadence.wait()
         self._missed = cadence.missed_in_all
         way_back = self._leave.way_back(self._last_reading())
+        if self._was_coming_back and way_back is None:
+            self._plans.plan_anew()  # from outside nothing could be planned
+        self._was_coming_back = way_back is not None
         orders = Orders(self._plans.assignments, wish or self._wish.wish, way_back)
         turn = self._control.run(orders, self._look_around)
         if turn.verdict.latch is not None:
