@@ -11,6 +11,8 @@ from trunnion.mount.joints import Reading
 from trunnion.pilot.phase import Wish
 from trunnion.service.clock import VirtualClock
 from trunnion.service.commands import Commands, StopInForce, Surroundings
+from trunnion.service.control.protocol import BadArguments
+from trunnion.service.corrections import Corrections, NothingToCorrect
 from trunnion.service.emergency_desk import EmergencyDesk, StopNotLifted
 from trunnion.service.link.status import LinkStatus
 from trunnion.service.records.values import EventKind
@@ -47,18 +49,20 @@ class Rig:
     desk: EmergencyDesk
     around: Around
     leave: RecoveryLeave
+    corrections: Corrections
 
-    def ask(self, command: str) -> dict[str, object]:
+    def ask(self, command: str, **arguments: object) -> dict[str, object]:
         around = self.around.surroundings()
-        handlers = Commands(self.wish, self.desk, around, self.leave).handlers()
-        return dict(handlers[command]({}))
+        commands = Commands(self.wish, self.desk, around, self.leave, self.corrections)
+        return dict(commands.handlers()[command](arguments))
 
 
 @pytest.fixture
 def rig(tmp_path: Path) -> Rig:
     clock = VirtualClock(1_893_456_123.75, 41.5)
     leave = RecoveryLeave(LIMITS, clock, lambda: OUTSIDE)
-    return Rig(StandingWish(tmp_path / "wish"), desk_of(Log()), Around(), leave)
+    corrections = Corrections(clock, lambda: None, lambda: None)
+    return Rig(StandingWish(tmp_path / "wish"), desk_of(Log()), Around(), leave, corrections)
 
 
 @pytest.mark.parametrize(
@@ -130,3 +134,49 @@ def test_there_is_no_leave_while_stopped(rig: Rig) -> None:
     with pytest.raises(StopInForce, match="a cow"):
         rig.ask("recover")
     assert rig.leave.way_back(OUTSIDE) is None
+
+
+def test_a_correction_is_given_put_on_record_and_cleared(rig: Rig) -> None:
+    answer = rig.ask("correct", time_bias_s=1.75, elevation_deg=-0.3, keep=True)
+    assert answer["correction"] == {
+        "time_bias_s": 1.75,
+        "azimuth_deg": 0.0,
+        "elevation_deg": -0.3,
+        "along_deg": 0.0,
+        "across_deg": 0.0,
+        "contact": None,
+    }
+    told = "told to correct time +1.75 s, elevation -0.3° until cleared"
+    assert rig.around.events == [(EventKind.REQUEST, told)]
+    assert rig.ask("correct", clear=True) == {"correction": None}
+    assert rig.corrections.in_force is None
+    assert len(rig.around.events) == 2
+
+
+@pytest.mark.parametrize(
+    ("arguments", "sentence"),
+    [
+        ({}, "expected something to correct"),
+        ({"time_bias_s": 301}, "expected time_bias_s within ±300, got 301"),
+        ({"azimuth_deg": -10.5}, "expected azimuth_deg within ±10, got -10.5"),
+        ({"azimuth_deg": "3"}, "expected azimuth_deg to be a number, got '3'"),
+        ({"azimuth_deg": True}, "expected azimuth_deg to be a number, got True"),
+        ({"azimuth_deg": 1, "keep": 1}, "expected keep to be true or false, got 1"),
+        ({"azimut_deg": 1}, r"expected no other arguments, got \['azimut_deg'\]"),
+        ({"clear": True, "azimuth_deg": 1}, "expected clear alone"),
+    ],
+)
+def test_a_correction_that_makes_no_sense_changes_nothing(
+    rig: Rig, arguments: dict[str, object], sentence: str
+) -> None:
+    rig.ask("correct", along_deg=0.2, keep=True)
+    before = rig.corrections.in_force
+    with pytest.raises(BadArguments, match=sentence):
+        rig.ask("correct", **arguments)
+    assert rig.corrections.in_force == before
+
+
+def test_without_a_contact_a_correction_must_be_kept(rig: Rig) -> None:
+    with pytest.raises(NothingToCorrect, match="no contact"):
+        rig.ask("correct", along_deg=0.2)
+    assert rig.corrections.in_force is None

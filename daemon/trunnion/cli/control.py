@@ -1,6 +1,8 @@
 """`trunnion status`, `stop`, `reset`, `stow`, `resume`, `recover`: talk to the running daemon."""
 
+from collections.abc import Mapping
 from pathlib import Path
+from types import MappingProxyType
 from typing import TYPE_CHECKING, Annotated
 
 import typer
@@ -75,9 +77,16 @@ def recover(daemon: Daemon = Path("station.yaml")) -> None:
     _ask(daemon, "recover", done)
 
 
-def _ask(daemon: Path, command: str, done: str) -> None:
+def ask(
+    daemon: Path, command: str, arguments: Mapping[str, object] = MappingProxyType({})
+) -> Mapping[str, object]:
+    """Have the daemon do something, and return its answer."""
     with _client(daemon) as client:
-        client.request(command)
+        return client.request(command, **arguments)
+
+
+def _ask(daemon: Path, command: str, done: str) -> None:
+    ask(daemon, command)
     print_text(done)
 
 

@@ -9,6 +9,7 @@ from typer.core import TyperGroup
 from trunnion.cli.angles import angles
 from trunnion.cli.check import check
 from trunnion.cli.control import recover, reset, resume, status, stop, stow
+from trunnion.cli.correct import correct
 from trunnion.cli.demo import demo
 from trunnion.cli.errors import told_plainly
 from trunnion.cli.init import init
@@ -38,6 +39,7 @@ _COMMANDS = (
     reset,
     stow,
     resume,
+    correct,
     recover,
 )
 _TOOLS = (bench, dialect, commission)

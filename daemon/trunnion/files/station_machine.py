@@ -125,8 +125,10 @@ class MountSection(Section):
     def _stow_outside(
         cls, forbidden: tuple[JointBoxSection, ...], info: ValidationInfo
     ) -> tuple[JointBoxSection, ...]:
-        stow_deg = info.data.get("stow_deg")
-        for box in forbidden if stow_deg else ():
+        stow_deg: tuple[float, float] | None = info.data.get("stow_deg")
+        if stow_deg is None:
+            return forbidden
+        for box in forbidden:
             if all(
                 lower_deg <= angle_deg <= upper_deg
                 for angle_deg, (lower_deg, upper_deg) in zip(

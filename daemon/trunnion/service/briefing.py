@@ -12,15 +12,18 @@ from trunnion.files.station import StationFile, load_station
 from trunnion.service.antenna import beam_of, flown_mount_of, objective_of
 from trunnion.service.briefing_order import BriefingOrder
 from trunnion.service.clearance import clearance_of
+from trunnion.service.corrections import CorrectionInForce
 from trunnion.service.errors import ServiceError
 from trunnion.service.targets import TargetBook
 from trunnion.service.viewpoint import viewpoint_of
 from trunnion.sky.elements import Satellite
 from trunnion.sky.errors import SkyError
 from trunnion.sky.look import Target
+from trunnion.track.corrected import Corrected
 from trunnion.track.day import plan_day
 from trunnion.track.path import Assignment
 from trunnion.track.programme import Forecast, Programme
+from trunnion.track.replan import corrected
 from trunnion.track.wanted import Wanted
 
 MARGIN_DEG = 0.2
@@ -71,7 +74,10 @@ def brief(order: BriefingOrder) -> Briefing:
     station = load_station(order.station)
     plan = load_plan(order.plan or station.files.plan)
     targets = TargetBook(station, viewpoint_of(station))
-    drafts = [_draft(contact, station, targets) for contact in plan.contacts]
+    drafts = [
+        (contact, _as_corrected(wanted, order.correction))
+        for contact, wanted in (_draft(each, station, targets) for each in plan.contacts)
+    ]
     mount = flown_mount_of(station)
     programme = plan_day(
         [wanted for _, wanted in drafts if isinstance(wanted, Wanted)],
@@ -111,6 +117,12 @@ def _draft(
     )
 
 
+def _as_corrected(wanted: Wanted | str, given: CorrectionInForce | None) -> Wanted | str:
+    if given is None or isinstance(wanted, str) or not given.holds_for(wanted.contact):
+        return wanted
+    return corrected(wanted, given.correction)
+
+
 def _told(
     drafts: Iterable[tuple[Contact, Wanted | str]], forecasts: Iterable[Forecast]
 ) -> Iterable[ContactBriefing]:
@@ -124,6 +136,8 @@ def _told(
 
 def _age_days(target: Target, contact: Contact) -> float | None:
     """Largest distance in time between the contact and the epoch of the target's elements."""
+    if isinstance(target, Corrected):
+        target = target.target
     if not isinstance(target, Satellite):
         return None
     elements = target.element_set

@@ -8,6 +8,7 @@ from pathlib import Path
 from typing import TYPE_CHECKING, NamedTuple
 
 from trunnion.mount.joints import Joints
+from trunnion.service.corrections import CorrectionInForce
 
 if TYPE_CHECKING:
     from trunnion.service.briefing import Briefing
@@ -16,13 +17,15 @@ if TYPE_CHECKING:
 class BriefingOrder(NamedTuple):
     """What to prepare: which files, from where the mount stands, from when on.
 
-    Without a plan path the station's own; without a place the mount's stow position.
+    Without a plan path the station's own; without a place the mount's stow position; an operator's
+    correction where one is in force.
     """
 
     station: Path
     plan: Path | None
     now_s: float
     place: Joints | None = None
+    correction: CorrectionInForce | None = None
 
 
 def brief_elsewhere(order: BriefingOrder) -> "Briefing":

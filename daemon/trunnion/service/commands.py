@@ -5,6 +5,14 @@ from typing import NamedTuple
 
 from trunnion.pilot.phase import Wish
 from trunnion.service.control.conversation import Handler
+from trunnion.service.correction_request import (
+    clears,
+    correction_in,
+    is_kept_in,
+    plain_correction,
+    told,
+)
+from trunnion.service.corrections import Corrections
 from trunnion.service.emergency_desk import EmergencyDesk
 from trunnion.service.errors import ServiceError
 from trunnion.service.link.status import LinkStatus
@@ -37,11 +45,13 @@ class Commands:
         desk: EmergencyDesk,
         around: Surroundings,
         leave: RecoveryLeave,
+        corrections: Corrections,
     ) -> None:
         self._wish = wish
         self._desk = desk
         self._around = around
         self._leave = leave
+        self._corrections = corrections
 
     def handlers(self) -> Mapping[str, Handler]:
         """Each command's name and what fulfils it."""
@@ -53,11 +63,22 @@ class Commands:
             "stow": lambda _: self._take_up(Wish.STOW),
             "hold": lambda _: self._take_up(Wish.HOLD),
             "recover": self._recover,
+            "correct": self._correct,
         }
 
     def _reload(self, _: Answer) -> Answer:
         self._around.reload()
         return {"is_planning": True}
+
+    def _correct(self, arguments: Answer) -> Answer:
+        """Correct where the target is looked for; the plan is made anew, taken over smoothly."""
+        if clears(arguments):
+            self._corrections.clear()
+            self._around.record(EventKind.REQUEST, "told to correct nothing any more")
+            return {"correction": None}
+        given = self._corrections.give(correction_in(arguments), is_kept=is_kept_in(arguments))
+        self._around.record(EventKind.REQUEST, f"told to correct {told(given)}")
+        return {"correction": plain_correction(given)}
 
     def _reset(self, _: Answer) -> Answer:
         """Lift the stop, and wait: the wish to hold still is there before the stop is gone."""

@@ -25,6 +25,8 @@ from trunnion.service.clock import Clock
 from trunnion.service.commands import Commands, Surroundings
 from trunnion.service.contact_log import ContactLog
 from trunnion.service.control.server import ControlServer
+from trunnion.service.corrections import Corrections
+from trunnion.service.departure_watch import DepartureWatch
 from trunnion.service.drivers import build_driver
 from trunnion.service.emergency_desk import EmergencyDesk
 from trunnion.service.file_watch import FileWatch
@@ -98,7 +100,13 @@ class Daemon:
                 self._status, self.reload, lambda: self._link.status, self._record
             )
             self._leave = RecoveryLeave(limits, clock, self._last_reading)
-            handlers = Commands(self._wish, self._desk, around, self._leave).handlers()
+            self._plans = PlanKeeper(paths.station, paths.plan, clock, self._tell_trouble)
+            held.callback(self._plans.close)
+            self._corrections = Corrections(
+                clock, lambda: self._plans.assignments, self._plans.plan_anew
+            )
+            commands = Commands(self._wish, self._desk, around, self._leave, self._corrections)
+            handlers = commands.handlers()
             server = ControlServer(
                 station.files.control_socket, handlers, self.emergency_stop, clock
             )
@@ -111,8 +119,6 @@ class Daemon:
             held.callback(self._link.close)
             self._desk.attach(self._link)
             self._power = PowerCut(PowerJudge(limits), self._link, self._tell_trouble)
-            self._plans = PlanKeeper(paths.station, paths.plan, clock, self._tell_trouble)
-            held.callback(self._plans.close)
             self._watch = FileWatch(_watched(paths, station))
             held.callback(self._watch.close)
             recorder = Recorder(records)
@@ -120,7 +126,14 @@ class Daemon:
             self._transmission = transmission_of(station, limits, beam_of(station).tolerance_deg)
             held.callback(self._transmission.end)
             heartbeat = _Heartbeat(station, notifier)
-            observers = (self._transmission, self._contacts, recorder, heartbeat)
+            self._departures = DepartureWatch(beam_of(station).tolerance_deg)
+            observers = (
+                self._transmission,
+                self._contacts,
+                recorder,
+                heartbeat,
+                self._departures,
+            )
             self._control = ControlTurn(clock, self._link, pilot, gate, observers)
             self._held = held.pop_all()
 
@@ -157,15 +170,22 @@ class Daemon:
         return turn
 
     def _see_to_the_plan(self) -> None:
-        """Plan from where the mount stands: at the start, and whenever a file was replaced.
+        """Plan from where the mount stands: at the start, and when anything has changed since.
 
+        That is a file that was replaced, a correction, or a mount that is off its path.
         Between the turns: starting the child takes some milliseconds.
         """
         reading = self._link.newest()
         if self._watch.take_change():
             self._plans.plan_anew()
+        if over := self._corrections.end_with_the_contact():
+            self._record(EventKind.STATE, f"the correction ends with contact {over}")
+        is_idle = not self._plans.is_planning
+        if is_idle and self._departures.is_due(self._clock.monotonic_s()):
+            self._record(EventKind.STATE, "the mount is off its path: the rest is planned anew")
+            self._plans.plan_anew()
         if reading is not None:
-            self._plans.see_to_it(reading.joints)
+            self._plans.see_to_it(reading.joints, self._corrections.in_force)
 
     def _look_around(self) -> World:
         status = self._link.status
@@ -215,6 +235,7 @@ class Daemon:
             self._transmission.permit_at(self._clock.monotonic_s()),
             self._transmission.trouble,
             self._senses.trouble,
+            self._corrections.in_force,
         )
 
     # -- what is told ---------------------------------------------------------------------------

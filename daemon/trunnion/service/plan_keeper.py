@@ -10,6 +10,7 @@ from typing import TYPE_CHECKING
 from trunnion.mount.joints import Joints
 from trunnion.service.briefing_order import BriefingOrder, brief_elsewhere
 from trunnion.service.clock import Clock
+from trunnion.service.corrections import CorrectionInForce
 from trunnion.service.planner import Planner
 from trunnion.track.path import Assignment
 
@@ -51,12 +52,12 @@ class PlanKeeper:
         """Read the files again, at the next occasion; may be called from any thread."""
         self._is_wanted = True
 
-    def see_to_it(self, place: Joints) -> None:
+    def see_to_it(self, place: Joints, correction: CorrectionInForce | None = None) -> None:
         """Have a plan made from where the mount stands, if one is wanted; take up what is made."""
         if self._is_wanted:
             self._is_wanted = False
-            order = BriefingOrder(self._station, self._plan, self._clock.utc_s(), place)
-            self._planner.ask(order)
+            now_s = self._clock.utc_s()
+            self._planner.ask(BriefingOrder(self._station, self._plan, now_s, place, correction))
         outcome = self._planner.collect()
         if outcome is None:
             return

@@ -11,6 +11,8 @@ from trunnion.safety.transmit import TransmitPermit
 from trunnion.safety.verdict import Move
 from trunnion.safety.world import World
 from trunnion.service.cadence import Beat
+from trunnion.service.correction_request import plain_correction
+from trunnion.service.corrections import CorrectionInForce
 from trunnion.service.link.status import LinkStatus
 from trunnion.service.recorder import summary_of
 from trunnion.service.score import Score
@@ -33,6 +35,7 @@ class Health(NamedTuple):
     transmit: TransmitPermit
     transmit_trouble: str | None
     sensors_trouble: str | None
+    correction: CorrectionInForce | None = None
 
 
 def describe(
@@ -46,6 +49,7 @@ def describe(
         "wish": health.wish.value,
         "emergency_stop": _stop(health.stop),
         "contact": _contact(turn, score) if turn else None,
+        "correction": plain_correction(health.correction),
         "mount": _mount(turn) if turn else None,
         "interventions": [each.sentence for each in turn.verdict.interventions] if turn else [],
         "surroundings": _surroundings(turn.world) if turn else None,

@@ -14,6 +14,7 @@ from trunnion.safety.world import World
 from trunnion.service.cadence import Cadence
 from trunnion.service.clock import VirtualClock
 from trunnion.service.commands import Commands, Surroundings
+from trunnion.service.corrections import Corrections
 from trunnion.service.emergency_desk import EmergencyDesk, Keeping
 from trunnion.service.errors import ServiceError
 from trunnion.service.link.direct import DirectLink
@@ -57,7 +58,9 @@ class Process:
         around = Surroundings(dict, lambda: None, lambda: self._link.status, lambda *_: None)
         self._power = PowerCut(PowerJudge(limits), self._link, self.troubles.append)
         self._leave = RecoveryLeave(limits, clock, self._link.newest)
-        self._handlers = Commands(self.wish, self.desk, around, self._leave).handlers()
+        corrections = Corrections(clock, lambda: None, lambda: None)
+        commands = Commands(self.wish, self.desk, around, self._leave, corrections)
+        self._handlers = commands.handlers()
         self.desk.attach(self._link)
         mount = limits.mount.with_reserve(0.97, 0.7)
         pilot = Pilot(Facts(mount, limits.clearance, TOLERANCE_DEG))
