@@ -43,6 +43,7 @@ def check(
     from trunnion.service.briefing_order import BriefingOrder
     from trunnion.service.clock import SystemClock
     from trunnion.service.drivers import build_driver
+    from trunnion.service.plan_words import FASTER, is_worth_comparing, plan_words
     from trunnion.service.sky_notes import sky_notes
     from trunnion.service.winds import build_wind
 
@@ -52,12 +53,15 @@ def check(
     if plot is not None and plot.suffix.lower() != ".svg":
         raise typer.BadParameter(f"expected a file name that ends in .svg, got {plot.name}")
     now_s = SystemClock().utc_s() if now is None else _instant(now)
-    briefing = brief(BriefingOrder(station, plan, now_s))
+    order = BriefingOrder(station, plan, now_s)
+    briefing = brief(order)
     build_driver(briefing.station, SystemClock())
     build_wind(briefing.station, SystemClock())
     if plot is not None:
         _draw(briefing, plot)
-    notes = sky_notes(briefing)
+    faster = brief(order, FASTER) if is_worth_comparing(briefing) else None
+    sky, ways = sky_notes(briefing), plan_words(briefing, faster)
+    notes = {name: (*words, *sky.get(name, ())) for name, words in ways.items()}
     if as_json:
         print_json(_plain(briefing, notes))
     else:

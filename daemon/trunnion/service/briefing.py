@@ -69,8 +69,11 @@ class Briefing:
         return self.programme.assignments
 
 
-def brief(order: BriefingOrder) -> Briefing:
-    """Prepare a plan; raises FileProblems where station or plan cannot be read."""
+def brief(order: BriefingOrder, strength: float = 1.0) -> Briefing:
+    """Prepare a plan, for joints of so many times the rate and acceleration that they have.
+
+    Raises FileProblems where station or plan cannot be read.
+    """
     station = load_station(order.station)
     plan = load_plan(order.plan or station.files.plan)
     targets = TargetBook(station, viewpoint_of(station))
@@ -78,7 +81,7 @@ def brief(order: BriefingOrder) -> Briefing:
         (contact, _as_corrected(wanted, order.correction))
         for contact, wanted in (_draft(each, station, targets) for each in plan.contacts)
     ]
-    mount = flown_mount_of(station)
+    mount = flown_mount_of(station).with_reserve(strength, strength)
     programme = plan_day(
         [wanted for _, wanted in drafts if isinstance(wanted, Wanted)],
         mount,
