@@ -70,3 +70,25 @@ def test_an_x_y_mount_follows_the_overhead_pass_that_azimuth_cannot(tmp_path: Pa
         assert worst_deg[name] == pytest.approx(contact.forecast.worst_error_deg, abs=0.02)
     assert worst_deg["station.yaml"] > 0.5
     assert worst_deg["station-x-y.yaml"] < 0.02
+
+
+WESTERN = "{id: west, target: BRINDLE-4, from: 2026-12-01T00:36:54Z, until: 2026-12-01T00:49:18Z}"
+
+
+def test_a_pass_that_only_a_mount_that_goes_over_the_top_can_hold(tmp_path: Path) -> None:
+    write_station(tmp_path)
+    over = (example_folder() / "station-over-the-top.yaml").read_text()
+    upright = over.replace(
+        "travel_deg: [0, 180]\n    rate_deg_s: 4.0", "travel_deg: [0, 90]\n    rate_deg_s: 4.0"
+    )
+    assert upright != over
+    (tmp_path / "over.yaml").write_text(over)
+    (tmp_path / "upright.yaml").write_text(upright)
+    write_plan(tmp_path, WESTERN)
+    briefing, rehearsal = rehearsal_of(tmp_path / "over.yaml", None)
+    assert all(not turn.verdict.interventions for turn in rehearsal.turns())
+    assert briefing.contacts[0].is_served
+    assert rehearsal.results["west"].score.worst_error_deg < 0.02
+    assert all(each.path.at(each.begin_s + 99.3).second_deg > 90.0 for each in briefing.assignments)
+    other, _ = rehearsal_of(tmp_path / "upright.yaml", None)
+    assert not other.contacts[0].is_served
