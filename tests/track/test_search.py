@@ -1,6 +1,7 @@
 """The search against every way there is, and what must never make it worse."""
 
 from itertools import product
+from random import Random
 
 import numpy as np
 import pytest
@@ -57,3 +58,14 @@ def test_a_faster_joint_and_a_longer_travel_never_cost_more(cost: FloatArray, ta
     assert (fast <= slow).all()
     shorter = costs_to_go(cost[:, 1:], 1, tally)[0]
     assert (slow[1:] <= shorter).all()
+
+
+@given(pictures, st.sampled_from(Tally), st.randoms(use_true_random=False))
+def test_a_smaller_mask_never_costs_more(cost: FloatArray, tally: Tally, random: Random) -> None:
+    """What a mask, a floor or a keep-out forbids is a cell that costs without end."""
+    masked = cost.copy()
+    for place in np.ndindex(*cost.shape):
+        if random.random() < 0.2:
+            masked[place] = np.inf
+    free, hindered = (costs_to_go(each, 1, tally)[0] for each in (cost, masked))
+    assert (free <= hindered).all()
