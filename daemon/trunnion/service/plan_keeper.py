@@ -5,30 +5,59 @@ A plan that cannot be read does not replace the one that is being flown.
 
 from collections.abc import Callable
 from pathlib import Path
-from typing import TYPE_CHECKING
+from typing import TYPE_CHECKING, Protocol
 
 from trunnion.mount.joints import Joints
 from trunnion.service.briefing_order import BriefingOrder, brief_elsewhere
 from trunnion.service.clock import Clock
 from trunnion.service.corrections import CorrectionInForce
-from trunnion.service.planner import Planner
+from trunnion.service.planner import Outcome, Planner
 from trunnion.track.path import Assignment
 
 if TYPE_CHECKING:
     from trunnion.service.briefing import Briefing
 
 
+class MakesPlans(Protocol):
+    """The part of the planner that is needed here."""
+
+    @property
+    def is_busy(self) -> bool:
+        """Whether an order is being worked on."""
+        ...
+
+    def ask(self, order: BriefingOrder) -> None:
+        """Begin on this order; what was asked before is dropped."""
+        ...
+
+    def collect(self) -> "Outcome[Briefing] | None":
+        """The outcome of the newest order, once."""
+        ...
+
+    def close(self) -> None:
+        """Drop what is under way."""
+        ...
+
+
 class PlanKeeper:
-    """Has plans made, and takes them up; for the thread of the control turn."""
+    """Has plans made, and takes them up; for the thread of the control turn.
+
+    Plans are made in a child process unless another planner is handed in.
+    """
 
     def __init__(
-        self, station: Path, plan: Path | None, clock: Clock, tell: Callable[[str], None]
+        self,
+        station: Path,
+        plan: Path | None,
+        clock: Clock,
+        tell: Callable[[str], None],
+        planner: MakesPlans | None = None,
     ) -> None:
         self._station = station
         self._plan = plan
         self._clock = clock
         self._tell = tell
-        self._planner: Planner[BriefingOrder, Briefing] = Planner(brief_elsewhere)
+        self._planner = planner or Planner[BriefingOrder, "Briefing"](brief_elsewhere)
         self._is_wanted = True
         self._assignments: tuple[Assignment, ...] | None = None
         self._trouble: str | None = None
