@@ -114,3 +114,14 @@ def test_a_plan_that_cannot_be_read_is_told_with_all_its_problems(tmp_path: Path
         brief_in(tmp_path)
     assert {each.line for each in caught.value.problems} == {2, 3}
     assert len(caught.value.problems) == 3
+
+
+def test_what_is_wrong_with_plan_mask_and_elements_is_told_together(tmp_path: Path) -> None:
+    write_station(tmp_path)
+    write_plan(tmp_path, "{id: a, target: sun, form: 2026}")
+    (tmp_path / "horizon.txt").write_text("10 four\n")
+    (tmp_path / "elements.tle").write_text("1 90117U\n")
+    with pytest.raises(FileProblems) as caught:
+        brief_in(tmp_path)
+    names = {Path(each.file).name for each in caught.value.problems}
+    assert names == {"plan.yaml", "horizon.txt", "elements.tle"}

@@ -30,7 +30,8 @@ def init(
     station = folder / "station.yaml"
     print_text(
         f"Wrote {', '.join(examples)} to {folder.absolute()}.\n"
-        f"Make them your station's, then: trunnion check {station}"
+        f"To look at the example as on its day: trunnion check {station} --now 2026-12-01T00:00Z\n"
+        f"Make the files your station's, then: trunnion check {station}"
     )
 
 

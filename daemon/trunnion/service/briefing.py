@@ -4,10 +4,11 @@
 keep the others from being served; it is told with its reason.
 """
 
-from collections.abc import Iterable
+from collections.abc import Callable, Iterable
 from dataclasses import dataclass
 
 from trunnion.files.plan import Contact, load_plan
+from trunnion.files.problems import FileProblems, Problem
 from trunnion.files.station import StationFile, load_station
 from trunnion.service.antenna import beam_of, flown_mount_of, objective_of
 from trunnion.service.briefing_order import BriefingOrder
@@ -72,11 +73,17 @@ class Briefing:
 def brief(order: BriefingOrder, strength: float = 1.0) -> Briefing:
     """Prepare a plan, for joints of so many times the rate and acceleration that they have.
 
-    Raises FileProblems where station or plan cannot be read.
+    Raises FileProblems with all that is wrong with plan, horizon mask and orbit elements together;
+    a station file that cannot be read does not tell where those are, and comes first.
     """
     station = load_station(order.station)
-    plan = load_plan(order.plan or station.files.plan)
     targets = TargetBook(station, viewpoint_of(station))
+    _must_be_readable(
+        lambda: load_plan(order.plan or station.files.plan),
+        lambda: clearance_of(station),
+        lambda: targets.elements,
+    )
+    plan = load_plan(order.plan or station.files.plan)
     drafts = [
         (contact, _as_corrected(wanted, order.correction))
         for contact, wanted in (_draft(each, station, targets) for each in plan.contacts)
@@ -92,6 +99,18 @@ def brief(order: BriefingOrder, strength: float = 1.0) -> Briefing:
         objective_of(station),
     )
     return Briefing(station, tuple(_told(drafts, programme.forecasts)), programme)
+
+
+def _must_be_readable(*files: Callable[[], object]) -> None:
+    """Read every file before anything is said of one; raises FileProblems with those of all."""
+    problems: list[Problem] = []
+    for read in files:
+        try:
+            read()
+        except FileProblems as found:
+            problems.extend(found.problems)
+    if problems:
+        raise FileProblems(problems)
 
 
 def _draft(
