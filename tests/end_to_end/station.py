@@ -1,5 +1,6 @@
 """A station in a folder of its own, and the real daemon on it as a user would start it."""
 
+import os
 import subprocess
 import sys
 import time
@@ -38,14 +39,15 @@ class Station:
             f"    from: {format_utc(begin_s)}\n    until: {format_utc(begin_s + length_s)}\n"
         )
 
-    def run(self) -> subprocess.Popen[str]:
-        """Start the daemon."""
+    def run(self, **environment: str) -> subprocess.Popen[str]:
+        """Start the daemon, with these variables set besides."""
         with (self.folder / "log").open("a") as log:
             return subprocess.Popen(
                 [*TRUNNION, "run", str(self.file)],
                 stderr=log,
                 stdout=subprocess.DEVNULL,
                 text=True,
+                env={**os.environ, **environment},
             )
 
     def command(self, *arguments: str) -> subprocess.CompletedProcess[str]:

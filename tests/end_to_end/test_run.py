@@ -2,6 +2,7 @@
 
 import json
 import signal
+import socket
 import subprocess
 from collections.abc import Iterator
 from pathlib import Path
@@ -213,3 +214,20 @@ def test_a_mount_found_outside_comes_back_when_told_to(
     assert (refused.returncode, "inside its limits" in refused.stderr) == (1, True)
     assert station.command("resume", str(station.file)).returncode == 0
     station.wait_for_phase("tracking")
+
+
+def test_the_service_manager_hears_that_it_is_ready_alive_and_what_it_does(
+    station: Station, daemons: list[subprocess.Popen[str]], tmp_path: Path
+) -> None:
+    with socket.socket(socket.AF_UNIX, socket.SOCK_DGRAM) as manager:
+        manager.bind(str(tmp_path / "notify"))
+        manager.settimeout(20.0)
+        daemons.append(station.run(NOTIFY_SOCKET=str(tmp_path / "notify")))
+        heard = {manager.recv(4096).decode()}
+        while "STATUS=tracking the-contact" not in heard:
+            heard.add(manager.recv(4096).decode())
+        assert "READY=1" in heard
+        assert "WATCHDOG=1" in heard
+        daemons[-1].send_signal(signal.SIGTERM)
+        while "STOPPING=1" not in heard:
+            heard.add(manager.recv(4096).decode())

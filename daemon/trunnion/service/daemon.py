@@ -58,9 +58,16 @@ class _Heartbeat:
 
     def __init__(self, station: StationFile, notifier: Notifier) -> None:
         self._watchdog = Watchdog(notifier, station.safety.reading_max_age_s, watchdog_timeout_s())
+        self._notifier = notifier
+        self._told: str | None = None
 
     def note(self, turn: Turn) -> None:
         self._watchdog.turn_completed(turn.mono_s, turn.reading)
+        assignment = turn.decision.assignment
+        status = turn.decision.phase.value + (f" {assignment.contact}" if assignment else "")
+        if status != self._told:
+            self._told = status
+            self._notifier.status(status)
 
 
 class Paths(NamedTuple):
