@@ -57,7 +57,7 @@ def test_status_prints_what_the_daemon_tells(daemon: Daemon) -> None:
     assert told.exit_code == 0
     assert "-47.25" in told.stdout
     assert ["state", "tracking"] in [line.split() for line in told.stdout.splitlines()]
-    assert "joints: first deg" in told.stdout
+    assert "joints: first [°]" in told.stdout
     assert "floor; mask" in told.stdout
 
 

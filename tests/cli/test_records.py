@@ -74,7 +74,7 @@ def test_the_list_can_be_cut_short(station: Path) -> None:
 def test_show_prints_the_summary_and_the_events(station: Path) -> None:
     told = trunnion("records", "show", "1", station)
     assert told.exit_code == 0
-    assert "summary: worst error deg" in told.stdout
+    assert "summary: worst error [°]" in told.stdout
     assert "0.042" in told.stdout
     assert "held above the floor" in told.stdout
 

@@ -80,7 +80,7 @@ def number(value: float | None, digits: int) -> str:
 def flattened(value: Mapping[str, object], above: str = "") -> Iterator[tuple[str, str]]:
     """Yield the names and the words of a nested result, for a table of two columns."""
     for key, inner in value.items():
-        name = f"{above}{key.replace('_', ' ')}"
+        name = f"{above}{_in_words(key)}"
         if isinstance(inner, Mapping):
             yield from flattened(inner, f"{name}: ")
         elif isinstance(inner, list):
@@ -89,9 +89,21 @@ def flattened(value: Mapping[str, object], above: str = "") -> Iterator[tuple[st
             yield name, _word(inner)
 
 
+_UNITS = (("_m_s", "m/s"), ("_deg", "°"), ("_km", "km"), ("_s", "s"))
+"""Endings of keys, the longer before the shorter, and how their units are written."""
+
+
+def _in_words(key: str) -> str:
+    """Return a key as people read it: `reading_age_s` is "reading age [s]"."""
+    for ending, unit in _UNITS:
+        if key.endswith(ending):
+            return f"{key.removesuffix(ending).replace('_', ' ')} [{unit}]"
+    return key.replace("_", " ")
+
+
 def _word(value: object) -> str:
     if isinstance(value, bool):
         return "yes" if value else "no"
     if isinstance(value, float):
-        return f"{value:.6g}"
+        return f"{value:.3f}"
     return "none" if value is None else str(value)
