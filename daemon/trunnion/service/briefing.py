@@ -6,6 +6,7 @@ keep the others from being served; it is told with its reason.
 
 from collections.abc import Callable, Iterable
 from dataclasses import dataclass
+from typing import TypeVar
 
 from trunnion.files.plan import Contact, load_plan
 from trunnion.files.problems import FileProblems, Problem
@@ -26,6 +27,8 @@ from trunnion.track.path import Assignment
 from trunnion.track.programme import Forecast, Programme
 from trunnion.track.replan import corrected
 from trunnion.track.wanted import Wanted
+
+Content = TypeVar("Content")
 
 MARGIN_DEG = 0.2
 """Contacts begin and end this far from floor, mask and keep-outs (common practice, no source)."""
@@ -78,12 +81,12 @@ def brief(order: BriefingOrder, strength: float = 1.0) -> Briefing:
     """
     station = load_station(order.station)
     targets = TargetBook(station, viewpoint_of(station))
-    _must_be_readable(
-        lambda: load_plan(order.plan or station.files.plan),
-        lambda: clearance_of(station),
-        lambda: targets.elements,
-    )
-    plan = load_plan(order.plan or station.files.plan)
+    problems: list[Problem] = []
+    plan = _read(lambda: load_plan(order.plan or station.files.plan), problems)
+    clearance = _read(lambda: clearance_of(station), problems)
+    _read(lambda: targets.elements, problems)
+    if plan is None or clearance is None or problems:
+        raise FileProblems(problems)
     drafts = [
         (contact, _as_corrected(wanted, order.correction))
         for contact, wanted in (_draft(each, station, targets) for each in plan.contacts)
@@ -92,7 +95,7 @@ def brief(order: BriefingOrder, strength: float = 1.0) -> Briefing:
     programme = plan_day(
         [wanted for _, wanted in drafts if isinstance(wanted, Wanted)],
         mount,
-        clearance_of(station),
+        clearance,
         beam_of(station),
         order.place or mount.stow,
         order.now_s,
@@ -101,16 +104,13 @@ def brief(order: BriefingOrder, strength: float = 1.0) -> Briefing:
     return Briefing(station, tuple(_told(drafts, programme.forecasts)), programme)
 
 
-def _must_be_readable(*files: Callable[[], object]) -> None:
-    """Read every file before anything is said of one; raises FileProblems with those of all."""
-    problems: list[Problem] = []
-    for read in files:
-        try:
-            read()
-        except FileProblems as found:
-            problems.extend(found.problems)
-    if problems:
-        raise FileProblems(problems)
+def _read(load: Callable[[], Content], problems: list[Problem]) -> Content | None:
+    """What a file holds; None, and its problems with those of the other files, where it is bad."""
+    try:
+        return load()
+    except FileProblems as found:
+        problems.extend(found.problems)
+        return None
 
 
 def _draft(
