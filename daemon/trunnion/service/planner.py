@@ -6,6 +6,7 @@ needs the processor for itself.
 """
 
 import os
+import pickle
 import signal
 from collections.abc import Callable
 from multiprocessing import get_context, parent_process
@@ -51,7 +52,8 @@ class Planner(Generic[WorkOrder, Result]):
         self.close()
         context = get_context("spawn")
         ours, theirs = context.Pipe(duplex=False)
-        child = context.Process(target=_work, args=(self._work, order, theirs), daemon=True)
+        task = pickle.dumps((self._work, order))
+        child = context.Process(target=_work, args=(task, theirs), daemon=True)
         child.start()
         theirs.close()
         with self._lock:
@@ -82,12 +84,14 @@ class Planner(Generic[WorkOrder, Result]):
                 self._child, self._outcome = None, outcome
 
 
-def _work(work: Callable[[WorkOrder], Result], order: WorkOrder, answer: Connection) -> None:
+def _work(task: bytes, answer: Connection) -> None:
+    """Give way first: to unpack the task imports all that planning needs."""
     signal.signal(signal.SIGINT, signal.SIG_IGN)  # the parent is told, and tells us
     os.nice(NICENESS)
     Thread(target=_end_with_the_parent, name="parent-watch", daemon=True).start()
     try:
-        outcome: Outcome[Result] = Outcome(work(order), None)
+        work, order = pickle.loads(task)  # noqa: S301 - our own parent's
+        outcome: Outcome[object] = Outcome(work(order), None)
     except Exception as error:  # noqa: BLE001 - it is told to the parent, whatever it is
         outcome = Outcome(None, error)
     answer.send(outcome)
