@@ -140,6 +140,23 @@ def test_the_signal_for_an_emergency_stop_stops(
     assert "signal" in station.wait_for_phase("halted")["emergency_stop"]["cause"]
 
 
+def test_a_file_stops_and_keeps_it_stopped_until_it_is_gone(
+    station: Station, daemons: list[subprocess.Popen[str]]
+) -> None:
+    text = station.file.read_text()
+    assert "stop_request: null" in text
+    station.file.write_text(text.replace("stop_request: null", "stop_request: stop-here"))
+    daemons.append(station.run())
+    station.wait_for_phase("tracking")
+    (station.folder / "stop-here").touch()
+    assert "stop-here" in station.wait_for_phase("halted")["emergency_stop"]["cause"]
+    refused = station.command("reset", str(station.file))
+    assert (refused.returncode, "stop-here asks for it" in refused.stderr) == (1, True)
+    (station.folder / "stop-here").unlink()
+    assert station.command("reset", str(station.file)).returncode == 0
+    station.wait_for_phase("holding")
+
+
 def test_a_broken_station_file_is_told_without_a_traceback(station: Station) -> None:
     station.file.write_text(station.file.read_text().replace("tick_hz", "tick_h"))
     done = station.command("run", str(station.file))

@@ -28,6 +28,7 @@ class Around:
     """The rest of the daemon."""
 
     link: LinkStatus = field(default_factory=LinkStatus)
+    stop_file: str | None = None
     reloads: int = 0
     events: list[tuple[EventKind, str]] = field(default_factory=list)
 
@@ -40,6 +41,7 @@ class Around:
             self.reload,
             lambda: self.link,
             lambda kind, sentence: self.events.append((kind, sentence)),
+            lambda: self.stop_file,
         )
 
 
@@ -107,6 +109,16 @@ def test_a_reset_is_refused_while_the_cause_is_there(
     with pytest.raises(StopNotLifted, match=sentence):
         rig.ask("reset")
     assert rig.desk.latched is not None
+
+
+def test_a_reset_is_refused_while_the_file_that_asked_for_the_stop_is_there(rig: Rig) -> None:
+    rig.desk.stop("the file asks for it")
+    rig.around.stop_file = "the file still asks for it"
+    with pytest.raises(StopNotLifted, match="the file still asks"):
+        rig.ask("reset")
+    rig.around.stop_file = None
+    rig.ask("reset")
+    assert rig.desk.latched is None
 
 
 def test_status_and_reload_are_passed_on(rig: Rig) -> None:

@@ -39,6 +39,10 @@ class FilesSection(Section):
     """The file that remembers an emergency stop over a restart."""
     control_socket: FilePath = Path(DEFAULT_CONTROL_SOCKET)
     """The socket by which `trunnion status`, `stop` and the others reach the running daemon."""
+    stop_request: FilePath | None = None
+    """A file whose appearance is an emergency stop, which cannot be reset as long as the file is
+    there; on a local disk, in a folder that is always there. It stops a controller, not a hazard:
+    no substitute for a hard-wired emergency stop."""
     heartbeat: FilePath | None = None
     """A file that somebody outside touches as long as all is well there; on a local disk."""
     transmit_permit: FilePath | None = None

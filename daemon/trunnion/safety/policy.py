@@ -71,7 +71,8 @@ POLICY: dict[Rule, Policy] = {
         "Somebody or something asked for an emergency stop, or the file that keeps one is damaged. "
         "Where the mount has a power output, its motors lose their power as soon as it rests.",
         "Go and look. When the cause is gone and nobody is near the mount, reset the stop; then "
-        "tell the mount to go on.",
+        "tell the mount to go on. As long as a stop input is pressed, or the file that asks for a "
+        "stop is there, no reset is taken.",
     ),
     Rule.NO_READING: _halt(
         "until the mount says where it is",

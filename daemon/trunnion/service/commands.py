@@ -34,6 +34,7 @@ class Surroundings(NamedTuple):
     reload: Callable[[], None]
     link_status: Callable[[], LinkStatus]
     record: Callable[[EventKind, str], None]
+    stop_asked_by_file: Callable[[], str | None] = lambda: None
 
 
 class Commands:
@@ -82,12 +83,15 @@ class Commands:
 
     def _reset(self, _: Answer) -> Answer:
         """Lift the stop, and wait: the wish to hold still is there before the stop is gone."""
-        status = self._around.link_status()
-        still_there = "the hardware stop input is pressed" if status.stop_pressed else status.fault
         trouble = self._wish.set(Wish.HOLD)
-        self._desk.reset(still_there)
+        self._desk.reset(self._still_there())
         self._around.record(EventKind.RESET, "emergency stop lifted; nothing moves until told to")
         return {"wish": self._wish.wish.value, "trouble": trouble}
+
+    def _still_there(self) -> str | None:
+        status = self._around.link_status()
+        pressed = "the hardware stop input is pressed" if status.stop_pressed else None
+        return pressed or self._around.stop_asked_by_file() or status.fault
 
     def _recover(self, _: Answer) -> Answer:
         """Bring a mount back that was found outside, slowly; it holds still from there on."""

@@ -43,6 +43,7 @@ from trunnion.service.recovery_leave import RecoveryLeave
 from trunnion.service.senses import senses_of
 from trunnion.service.standing_wish import StandingWish
 from trunnion.service.status import Health, describe
+from trunnion.service.stop_file import StopFile
 from trunnion.service.surroundings import HARDWARE_STOP, world_of
 from trunnion.service.transmission import transmission_of
 from trunnion.service.turn import ControlTurn, Orders, Turn
@@ -95,6 +96,7 @@ class Daemon:
         self._missed = 0
         self._was_coming_back = False
         self._records: RecordWriter | None = None  # a stop may come before it is there
+        self._stop_file: StopFile | None = None
         driver = build_driver(station, clock)
         clearance = clearance_of(station)
         pilot = Pilot(Facts(flown_mount_of(station), clearance, beam_of(station).tolerance_deg))
@@ -104,7 +106,11 @@ class Daemon:
             self._wish = StandingWish(station.files.latch.with_name(WISH_FILE))
             self._desk = EmergencyDesk(EmergencyLatch(station.files.latch), clock, self._tell_stop)
             around = Surroundings(
-                self._status, self.reload, lambda: self._link.status, self._record
+                self._status,
+                self.reload,
+                lambda: self._link.status,
+                self._record,
+                lambda: self._stop_file.asked() if self._stop_file is not None else None,
             )
             self._leave = RecoveryLeave(limits, clock, self._last_reading)
             self._plans = PlanKeeper(paths.station, paths.plan, clock, self._tell_trouble)
@@ -125,6 +131,9 @@ class Daemon:
             self._link = ThreadedLink(driver, clock, poll_s=0.5 / station.cadence.tick_hz)
             held.callback(self._link.close)
             self._desk.attach(self._link)
+            if station.files.stop_request is not None:
+                self._stop_file = StopFile(station.files.stop_request, self.emergency_stop)
+                held.callback(self._stop_file.close)
             self._power = PowerCut(PowerJudge(limits), self._link, self._tell_trouble)
             self._watch = FileWatch(_watched(paths, station))
             held.callback(self._watch.close)
