@@ -9,13 +9,13 @@ import numpy as np
 import pytest
 
 from tests.published.reference_sky import EARTH, EPHEMERIS, apart_arcsec, de421, skyfield_look
-from trunnion.sky.bodies import SERIES_LIMIT_ARCSEC, SeriesBody
+from trunnion.sky.bodies import SERIES_LIMIT_ARCSEC, SeriesBody, series_au
 from trunnion.sky.celestial import Celestial
-from trunnion.sky.course import course_at
 from trunnion.sky.instants import parse_utc
 from trunnion.sky.look import FloatArray
 from trunnion.sky.naming import Body
-from trunnion.sky.place import Place
+from trunnion.sky.place import AU_KM, Place
+from trunnion.sky.refinement import ARCSEC, axes, refined
 from trunnion.sky.refraction import NoRefraction
 from trunnion.sky.site import Site
 from trunnion.sky.spk import SpkBody
@@ -77,15 +77,26 @@ def test_the_moon_of_a_textbook_example() -> None:
     """Meeus, "Astronomical Algorithms", 2nd edition, example 47.a: 1992-04-12 0h TD.
 
     Right ascension 134.688470°, declination 13.768368°, 368 409.7 km; the light's travel is in
-    the series' longitude, so the geometric place is compared.
+    the series' longitude, so the geometric place is compared, before it is refined.
     """
     tt_days = 2448724.5 - 2451545.0
-    (x, y, z), _ = course_at(SeriesBody(Body.MOON), tt_days, is_apparent=False)
+    of_date = erfa.c2i06a(2451545.0, tt_days) @ series_au(Body.MOON, tt_days)
+    x, y, z = AU_KM * of_date
     right_ascension = np.arctan2(y, x) - erfa.eo06a(2448724.5, 0.0)
     distance_km = np.linalg.norm((x, y, z))
     assert np.degrees(right_ascension) % 360.0 == pytest.approx(134.688470, abs=5e-4)
     assert np.degrees(np.arcsin(z / distance_km)) == pytest.approx(13.768368, abs=5e-4)
     assert distance_km == pytest.approx(368_409.7, abs=0.1)
+
+
+def test_the_moon_refined_stays_within_what_the_textbook_allows() -> None:
+    """The same example; its author gives 10″ in longitude and 4″ in latitude."""
+    tt_days = 2448724.5 - 2451545.0
+    series = series_au(Body.MOON, tt_days)
+    off = axes(series) @ (refined(Body.MOON, series, tt_days) - series) / np.linalg.norm(series)
+    along_arcsec, across_arcsec, _ = np.abs(off) / ARCSEC
+    assert 0.1 < along_arcsec < 10.0
+    assert 0.01 < across_arcsec < 4.0
 
 
 @pytest.mark.parametrize("body", [Body.SUN, Body.MOON, Body.SATURN])

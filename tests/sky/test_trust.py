@@ -6,10 +6,14 @@ import pytest
 
 from tests.sky.stations import DAY_S, EARTH, EPOCH_S, NORTH, satellite
 from trunnion.sky.atmosphere import standard_air
+from trunnion.sky.bodies import SeriesBody
+from trunnion.sky.celestial import Celestial
 from trunnion.sky.earth import EarthOrientation
 from trunnion.sky.elements import Satellite
 from trunnion.sky.fixed import FixedDirection
 from trunnion.sky.growth import OrbitClass, orbit_class, position_error_km
+from trunnion.sky.instants import parse_utc
+from trunnion.sky.naming import Body
 from trunnion.sky.passes import find_passes
 from trunnion.sky.refraction import TracedRefraction
 from trunnion.sky.sun import Sun
@@ -98,6 +102,15 @@ def test_a_clock_that_is_off_moves_the_target_by_its_own_motion() -> None:
     told = sizes(target, utc_s, clock_error_s=0.5)["clock"]
     assert told == pytest.approx(0.5 * sky_rate_deg_s(before), rel=1e-9)
     assert 0.0 < told < moved_deg + 0.5
+
+
+def test_a_series_is_trusted_less_beyond_its_fit() -> None:
+    saturn = Celestial(SeriesBody(Body.SATURN), VIEW)
+    limits = [
+        doubts(saturn, parse_utc(instant))[0].angle_deg * 3600.0
+        for instant in ("2049-11-12T13:14:15Z", "2053-11-12T13:14:15Z")
+    ]
+    assert limits == pytest.approx([5.0, 120.0])
 
 
 def test_the_sun_is_as_good_as_its_series_and_a_beacon_needs_no_trust() -> None:

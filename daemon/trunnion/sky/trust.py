@@ -8,7 +8,7 @@ from math import cos, hypot, pi, radians, sqrt, tan
 from typing import NamedTuple
 
 from trunnion.sky.angle_table import AngleTable
-from trunnion.sky.bodies import SERIES_LIMIT_ARCSEC, SeriesBody
+from trunnion.sky.bodies import SeriesBody, series_limit_arcsec
 from trunnion.sky.celestial import Celestial
 from trunnion.sky.earth_fixed import EARTH_RATE_RAD_S
 from trunnion.sky.elements import Satellite
@@ -66,8 +66,8 @@ def _of_the_target(target: Target, look: Look, utc_s: float) -> Iterator[Doubt]:
         angle_deg = DEGREE * error_km / look.range_km
         yield Doubt("age of the orbit elements", angle_deg, COMMON_PRACTICE)
     elif isinstance(target, Celestial) and isinstance(target.place, SeriesBody):
-        limit_deg = SERIES_LIMIT_ARCSEC[target.place.body] / 3600.0
-        yield Doubt("built-in series", limit_deg, "largest difference from JPL DE421, 2000–2050")
+        limit_arcsec = series_limit_arcsec(target.place.body, utc_s)
+        yield Doubt("built-in series", limit_arcsec / 3600.0, "largest difference from JPL DE421")
     elif isinstance(target, EphemerisCraft | AngleTable):
         yield Doubt("the file's own accuracy", 0.0, "not told in the file")
 
