@@ -3,7 +3,7 @@
 from pathlib import Path
 from typing import Annotated
 
-from pydantic import BeforeValidator, WithJsonSchema, field_validator
+from pydantic import BeforeValidator, Field, WithJsonSchema, field_validator
 
 from trunnion.files.control_path import DEFAULT_CONTROL_SOCKET
 from trunnion.files.fields import FilePath
@@ -35,6 +35,11 @@ class FilesSection(Section):
     good to 1 second of arc for the Sun, 15 for the Moon and 95 for Saturn."""
     records: FilePath = Path("records.sqlite3")
     """The database in which every contact leaves its summary and its samples."""
+    records_keep_days: Annotated[float, Field(ge=1)] | None = None
+    """Days for which contacts and events stay on record; forever where there is none."""
+    records_most_mib: Annotated[int, Field(ge=16, le=1_048_576)] = 512
+    """Size of the records in MiB beyond which the oldest samples go; the summaries of their
+    contacts stay."""
     latch: FilePath = Path("emergency-stop.latch")
     """The file that remembers an emergency stop over a restart."""
     control_socket: FilePath = Path(DEFAULT_CONTROL_SOCKET)

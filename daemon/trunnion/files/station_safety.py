@@ -84,6 +84,9 @@ class SafetySection(Section):
     slip_deg: Annotated[float, Field(gt=0, le=30)] = 1.0
     """Degrees by which a joint that was ordered to rest may move; after more, somebody or something
     else moves it, and an emergency stop is latched."""
+    recovery_rate_deg_s: Annotated[float, Field(gt=0, le=5)] = 0.5
+    """Degrees per second, at most, at which a mount that was found outside its limits comes back by
+    `trunnion recover`."""
     wind_stow_gust_m_s: WindSpeed | None = None
     """Gusts in metres a second above which the mount goes to stow; the strongest three seconds of
     the last ten minutes count. Needs a `wind` section; a wind that is not known counts as one
@@ -98,6 +101,9 @@ class SafetySection(Section):
     clock_max_error_s: Annotated[float, Field(gt=0, lt=16)] | None = None
     """Seconds by which the system's clock may be wrong, by the kernel's own account, before the
     mount is halted; a clock that was never synchronised halts it as well."""
+    clock_max_step_s: Annotated[float, Field(gt=0, le=60)] = 0.5
+    """Seconds by which the system's clock may be set at once while the daemon runs; beyond that the
+    mount is halted for two seconds."""
     element_max_age_days: PositiveFloat = 7.0
     """Days from the epoch of orbit elements after which nothing is tracked by them."""
     stow_on_exit: bool = False

@@ -37,6 +37,7 @@ from trunnion.service.notify import Notifier, Watchdog, watchdog_timeout_s
 from trunnion.service.plan_keeper import PlanKeeper
 from trunnion.service.power_cut import PowerCut
 from trunnion.service.recorder import Recorder
+from trunnion.service.records.retention import retention_of
 from trunnion.service.records.values import EventKind
 from trunnion.service.records.writer import RecordWriter
 from trunnion.service.recovery_leave import RecoveryLeave
@@ -126,7 +127,9 @@ class Daemon:
             held.callback(server.close)
             self._senses = senses_of(station, clock)
             held.callback(self._senses.close)
-            records = self._records = RecordWriter(station.files.records, clock)
+            records = self._records = RecordWriter(
+                station.files.records, clock, retention_of(station)
+            )
             held.callback(records.close)
             self._link = ThreadedLink(driver, clock, poll_s=0.5 / station.cadence.tick_hz)
             held.callback(self._link.close)

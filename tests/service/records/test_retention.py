@@ -5,8 +5,9 @@ from pathlib import Path
 import pytest
 
 from tests.service.records.story import UTC_S, sample, start
+from tests.service.stations import station_with
 from trunnion.service.records.queries import Records
-from trunnion.service.records.retention import Retention
+from trunnion.service.records.retention import Retention, retention_of
 from trunnion.service.records.store import RecordStore
 from trunnion.service.records.values import Event, EventKind
 
@@ -14,6 +15,11 @@ from trunnion.service.records.values import Event, EventKind
 @pytest.fixture
 def path(tmp_path: Path) -> Path:
     return tmp_path / "records.sqlite3"
+
+
+def test_the_station_file_says_how_much_is_kept(tmp_path: Path) -> None:
+    keys = {"records_keep_days: null": "records_keep_days: 37.5", "most_mib: 512": "most_mib: 17"}
+    assert retention_of(station_with(tmp_path, keys)) == Retention(37.5, 17 * 2**20)
 
 
 def test_what_is_older_than_it_may_be_goes_a_little_at_a_time(path: Path) -> None:

@@ -2,10 +2,15 @@
 
 import sqlite3
 from dataclasses import dataclass
+from typing import TYPE_CHECKING
+
+if TYPE_CHECKING:
+    from trunnion.files.station import StationFile
 
 _SAMPLES_AT_ONCE = 10_000
 _EVENTS_AT_ONCE = 1_000
 _DAY_S = 86_400.0
+_MIB = 1024 * 1024
 
 
 @dataclass(frozen=True, slots=True)
@@ -17,7 +22,12 @@ class Retention:
     """
 
     longest_days: float | None = None
-    largest_bytes: int = 512 * 1024 * 1024
+    largest_bytes: int = 512 * _MIB
+
+
+def retention_of(station: "StationFile") -> Retention:
+    """What the station file asks for."""
+    return Retention(station.files.records_keep_days, station.files.records_most_mib * _MIB)
 
 
 def forget_some(connection: sqlite3.Connection, retention: Retention, now_utc_s: float) -> None:
