@@ -61,12 +61,14 @@ def test_a_change_of_phase_a_trouble_and_an_intervention_are_told_once() -> None
     recorder.note(turn_at(1.4, phase=Phase.WAITING, interventions=(LATE,)))
     recorder.note(turn_at(1.5, phase=Phase.WAITING))
     recorder.note(turn_at(1.6, phase=Phase.WAITING, interventions=(LATE,)))
+    told = f"waiting evening, asked for 171.3°/41.9°: {LATE.sentence}"
     assert book.entries == [
         (EventKind.STATE, "slewing"),
         (EventKind.TROUBLE, "no clear way"),
         (EventKind.STATE, "waiting"),
-        (EventKind.INTERVENTION, LATE.sentence),
-        (EventKind.INTERVENTION, LATE.sentence),
+        (EventKind.INTERVENTION, told),
+        (EventKind.INTERVENTION, f"over after 0.2 s: {told}"),
+        (EventKind.INTERVENTION, told),
     ]
 
 

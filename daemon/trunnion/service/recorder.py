@@ -2,11 +2,12 @@
 
 import logging
 from collections.abc import Mapping
-from typing import Protocol
+from typing import NamedTuple, Protocol
 
 from trunnion.pilot.phase import Phase
-from trunnion.safety.verdict import Intervention, Move, Rule
+from trunnion.safety.verdict import Move, Rule
 from trunnion.service.contact_log import Flown, contact_on
+from trunnion.service.explanation import explained
 from trunnion.service.records.values import ContactStart, EventKind, Outcome, Sample
 from trunnion.service.score import Score
 from trunnion.service.turn import Turn
@@ -35,6 +36,13 @@ class Book(Protocol):
         ...
 
 
+class _Begun(NamedTuple):
+    """An intervention, and when it began."""
+
+    mono_s: float
+    sentence: str
+
+
 class Recorder:
     """Observes the turns, and listens to the contacts in them."""
 
@@ -42,7 +50,7 @@ class Recorder:
         self._records = records
         self._phase: Phase | None = None
         self._trouble: str | None = None
-        self._in_force: dict[Rule, Intervention] = {}
+        self._in_force: dict[Rule, _Begun] = {}
 
     def note(self, turn: Turn) -> None:
         """Take in one turn."""
@@ -86,15 +94,16 @@ class Recorder:
         self._phase, self._trouble = phase, trouble
 
     def _note_interventions(self, turn: Turn) -> None:
-        now = {each.rule: each for each in turn.verdict.interventions}
-        for rule, intervention in now.items():
-            if rule not in self._in_force:
-                _log.warning("%s", intervention.sentence)
-                self._records.event(turn.utc_s, EventKind.INTERVENTION, intervention.sentence)
-        for rule, intervention in self._in_force.items():
-            if rule not in now:
-                _log.info("over: %s", intervention.sentence)
-        self._in_force = now
+        acting = {each.rule: each for each in turn.verdict.interventions}
+        for rule in (each for each in acting if each not in self._in_force):
+            begun = self._in_force[rule] = _Begun(turn.mono_s, explained(turn, acting[rule]))
+            _log.warning("%s", begun.sentence)
+            self._records.event(turn.utc_s, EventKind.INTERVENTION, begun.sentence)
+        for rule in [each for each in self._in_force if each not in acting]:
+            begun = self._in_force.pop(rule)
+            over = f"over after {turn.mono_s - begun.mono_s:.1f} s: {begun.sentence}"
+            _log.info("%s", over)
+            self._records.event(turn.utc_s, EventKind.INTERVENTION, over)
 
 
 def summary_of(score: Score) -> dict[str, object]:

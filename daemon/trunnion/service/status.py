@@ -13,6 +13,7 @@ from trunnion.safety.world import World
 from trunnion.service.cadence import Beat
 from trunnion.service.correction_request import plain_correction
 from trunnion.service.corrections import CorrectionInForce
+from trunnion.service.explanation import explanations
 from trunnion.service.link.status import LinkStatus
 from trunnion.service.recorder import summary_of
 from trunnion.service.score import Score
@@ -51,7 +52,7 @@ def describe(
         "contact": _contact(turn, score) if turn else None,
         "correction": plain_correction(health.correction),
         "mount": _mount(turn) if turn else None,
-        "interventions": [each.sentence for each in turn.verdict.interventions] if turn else [],
+        "interventions": explanations(turn) if turn else [],
         "surroundings": _surroundings(turn.world) if turn else None,
         "transmit": _transmit(health.transmit),
         "link": _link(health.link),
