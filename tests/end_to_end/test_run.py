@@ -179,6 +179,12 @@ def test_transmitting_is_permitted_on_target_and_not_after_a_stop(
     stopped = station.wait_for(lambda status: not status["transmit"]["is_permitted"])
     assert "a cow" in stopped["transmit"]["reason"]
     assert permit.read_text() == "forbidden\n"
+    daemons[-1].send_signal(signal.SIGTERM)
+    daemons[-1].wait(timeout=20)
+    shown = station.command("records", "show", "1", str(station.file), "--json")
+    told = [each["what"] for each in json.loads(shown.stdout)["events"]]
+    assert "transmitting is permitted" in told
+    assert any(each.startswith("transmitting is forbidden: ") for each in told)
 
 
 def test_a_port_that_is_not_there_is_told_and_tried_again(

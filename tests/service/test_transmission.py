@@ -62,6 +62,25 @@ def test_it_expires_without_turns_and_goes_at_once_off_target(
     assert (tmp_path / "permit").read_text() == "forbidden\n"
 
 
+def test_that_it_comes_and_goes_is_told_once_each(tmp_path: Path) -> None:
+    station = station_with(tmp_path, NAMED)
+    limits = safety_limits_of(station, mount_of(station), clearance_of(station))
+    told: list[str] = []
+    transmission = transmission_of(station, limits, 0.37, told.append)
+    for mono_s in (0.0, 2.6, 2.7):
+        tell(transmission, BEGIN_S + mono_s)
+    assert told == ["transmitting is permitted"]
+    tell(transmission, BEGIN_S + 2.8, error_deg=0.4)
+    tell(transmission, BEGIN_S + 2.9, error_deg=0.5)
+    off = "transmitting is forbidden: the beam is 0.40° off, 0.37° are allowed"
+    assert told == ["transmitting is permitted", off]
+    for mono_s in (3.0, 5.6):
+        tell(transmission, BEGIN_S + mono_s)
+    transmission.end()
+    transmission.end()
+    assert told[2:] == ["transmitting is permitted", "transmitting is forbidden: the program ends"]
+
+
 def test_the_end_takes_it_back(transmission: Transmission, tmp_path: Path) -> None:
     tell(transmission, BEGIN_S)
     tell(transmission, BEGIN_S + 2.6)

@@ -142,7 +142,9 @@ class Daemon:
             held.callback(self._watch.close)
             recorder = Recorder(records)
             self._contacts = ContactLog(beam_of(station), recorder)
-            self._transmission = transmission_of(station, limits, beam_of(station).tolerance_deg)
+            self._transmission = transmission_of(
+                station, limits, beam_of(station).tolerance_deg, self._tell_permission
+            )
             held.callback(self._transmission.end)
             heartbeat = _Heartbeat(station, notifier)
             self._departures = DepartureWatch(beam_of(station).tolerance_deg)
@@ -262,6 +264,10 @@ class Daemon:
     def _tell_stop(self, sentence: str) -> None:
         _log.critical("%s", sentence)
         self._record(EventKind.STOP, sentence)
+
+    def _tell_permission(self, sentence: str) -> None:
+        _log.info("%s", sentence)
+        self._record(EventKind.TRANSMIT, sentence)
 
     def _tell_trouble(self, sentence: str) -> None:
         _log.warning("%s", sentence)

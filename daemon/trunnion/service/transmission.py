@@ -1,5 +1,7 @@
 """The permission to transmit: judged every turn, told in the status and by a file."""
 
+from collections.abc import Callable
+
 from trunnion.files.station import StationFile
 from trunnion.safety.limits import SafetyLimits
 from trunnion.safety.transmit import VALIDITY_S, TransmitJudge, TransmitPermit
@@ -7,15 +9,19 @@ from trunnion.service.permit_file import PermitFile
 from trunnion.service.turn import Turn
 
 _NOT_YET = TransmitPermit(None, "no turn was done yet")
+_ENDED = TransmitPermit(None, "the program ends")
 _EXPIRED = TransmitPermit(None, "the permission was not renewed in time")
 
 
 class Transmission:
     """Observes the turns; keeps the permission of the last one."""
 
-    def __init__(self, judge: TransmitJudge, file: PermitFile | None) -> None:
+    def __init__(
+        self, judge: TransmitJudge, file: PermitFile | None, tell: Callable[[str], None]
+    ) -> None:
         self._judge = judge
         self._file = file
+        self._tell = tell
         self._permit = _NOT_YET
 
     @property
@@ -32,21 +38,35 @@ class Transmission:
     def note(self, turn: Turn) -> None:
         """Take in one turn."""
         error_deg = turn.decision.error_deg
-        self._permit = self._judge.judge(turn.mono_s, error_deg, turn.reading, turn.verdict)
+        self._take(self._judge.judge(turn.mono_s, error_deg, turn.reading, turn.verdict))
         if self._file is not None:
             self._file.tell(turn.mono_s, is_permitted=self._permit.is_good_at(turn.mono_s))
 
     def end(self) -> None:
         """Take any permission back."""
-        self._permit = _NOT_YET
+        self._take(_ENDED)
         if self._file is not None:
             self._file.forbid()
 
+    def _take(self, permit: TransmitPermit) -> None:
+        had_one, has_one = (each.until_s is not None for each in (self._permit, permit))
+        self._permit = permit
+        if has_one and not had_one:
+            self._tell("transmitting is permitted")
+        elif had_one and not has_one:
+            self._tell(f"transmitting is forbidden: {permit.reason}")
+
 
 def transmission_of(
-    station: StationFile, limits: SafetyLimits, tolerance_deg: float
+    station: StationFile,
+    limits: SafetyLimits,
+    tolerance_deg: float,
+    tell: Callable[[str], None] = lambda _: None,
 ) -> Transmission:
-    """What the station file asks for; a file that it names says "forbidden" from now on."""
+    """What the station file asks for; a file that it names says "forbidden" from now on.
+
+    `tell` is told whenever the permission comes or goes.
+    """
     judge = TransmitJudge(limits, tolerance_deg, station.safety.transmit_settle_s)
     path = station.files.transmit_permit
-    return Transmission(judge, None if path is None else PermitFile(path, VALIDITY_S))
+    return Transmission(judge, None if path is None else PermitFile(path, VALIDITY_S), tell)

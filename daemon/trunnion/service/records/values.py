@@ -28,6 +28,7 @@ class EventKind(Enum):
     RESET = "reset"
     REQUEST = "request"
     TROUBLE = "trouble"
+    TRANSMIT = "transmit"
 
 
 class ContactStart(NamedTuple):
