@@ -42,6 +42,7 @@ from trunnion.service.records.values import EventKind
 from trunnion.service.records.writer import RecordWriter
 from trunnion.service.recovery_leave import RecoveryLeave
 from trunnion.service.senses import senses_of
+from trunnion.service.sole_daemon import sole_daemon
 from trunnion.service.standing_wish import StandingWish
 from trunnion.service.status import Health, describe
 from trunnion.service.stop_file import StopFile
@@ -83,7 +84,7 @@ class Daemon:
     """One antenna, from construction until `run` returns.
 
     Construction takes the control socket, so that two daemons never have one mount, and opens the
-    link. Raises FileProblems, SocketInUse and SocketUnusable before anything moves.
+    link. Raises FileProblems, SocketInUse, SocketUnusable and MountInUse before anything moves.
     """
 
     def __init__(self, paths: Paths, clock: Clock, notifier: Notifier) -> None:
@@ -125,6 +126,7 @@ class Daemon:
                 station.files.control_socket, handlers, self.emergency_stop, clock
             )
             held.callback(server.close)
+            held.enter_context(sole_daemon(station.files.latch))
             self._senses = senses_of(station, clock)
             held.callback(self._senses.close)
             records = self._records = RecordWriter(
