@@ -13,7 +13,7 @@ from pathlib import Path
 
 import pytest
 
-from tests.end_to_end.station import Station
+from tests.end_to_end.station import TRUNNION, Station
 from trunnion.service.control.client import ControlClient
 from trunnion.service.control.errors import RequestFailed
 from trunnion.service.records.queries import Records
@@ -162,6 +162,91 @@ def test_a_storm_of_signals_ends_in_a_stop_that_can_be_reset(
     ask(station, "reset")
     ask(station, "resume")
     station.wait_for_phase("tracking")
+
+
+def test_a_flood_of_stops_and_resets_ends_in_the_stop_that_came_last(
+    station: Station, daemon: subprocess.Popen[str]
+) -> None:
+    is_over = threading.Event()
+    crowd = [
+        threading.Thread(target=press, args=(station, is_over, SEED + number))
+        for number in range(6)
+    ]
+    for each in crowd:
+        each.start()
+    time.sleep(4.0)
+    is_over.set()
+    for each in crowd:
+        each.join()
+    assert stop(station) == "stopped"
+    place = station.wait_for_phase("halted")["mount"]["reading_deg"]
+    assert (station.folder / "emergency-stop.latch").exists()
+    with pytest.raises(RequestFailed, match="emergency stop is in force"):
+        ask(station, "resume")
+    assert station.wait_for_phase("halted")["mount"]["reading_deg"] == pytest.approx(place, abs=0.1)
+    ask(station, "reset")
+    station.wait_for_phase("holding")
+    assert not (station.folder / "emergency-stop.latch").exists()
+    assert daemon.poll() is None
+    assert "mistake of ours" not in station.log()
+
+
+def press(station: Station, is_over: threading.Event, seed: int) -> None:
+    """Stop and reset in any order, as fast as answers come."""
+    chance = random.Random(seed)
+    while not is_over.is_set():
+        if chance.random() < 0.5:
+            stop(station)
+        else:
+            ask(station, "reset")
+
+
+def test_a_station_file_that_is_weakened_while_stopped_lifts_nothing(
+    station: Station, daemon: subprocess.Popen[str]
+) -> None:
+    assert stop(station) == "stopped"
+    station.wait_for_phase("halted")
+    text = station.file.read_text()
+    for strict, weak in (
+        ("elevation_floor_deg: 5", "elevation_floor_deg: 0"),
+        ("deg: 1 ", "deg: 25 "),
+    ):
+        assert strict in text
+        text = text.replace(strict, weak, 1)
+    station.file.write_text(text)
+    ask(station, "reload")
+    station.wait_for(lambda status: not status["is_planning"])
+    stopped = station.wait_for_phase("halted")
+    assert "abuse" in stopped["emergency_stop"]["cause"]
+    daemon.kill()
+    daemon.wait()
+    again = station.run()
+    try:
+        stopped = station.wait_for_phase("halted")
+        assert "abuse" in stopped["emergency_stop"]["cause"]
+        assert stopped["mount"]["order_deg"] is None
+    finally:
+        again.kill()
+        again.wait()
+
+
+def test_a_second_station_file_of_the_same_mount_moves_nothing(
+    station: Station, daemon: subprocess.Popen[str]
+) -> None:
+    other = station.folder / "other.yaml"
+    text = station.file.read_text()
+    assert "control_socket: control.sock" in text
+    other.write_text(text.replace("control_socket: control.sock", "control_socket: other.sock"))
+    second = subprocess.Popen([*TRUNNION, "run", str(other)], stderr=subprocess.PIPE, text=True)
+    try:
+        _, told = second.communicate(timeout=20.0)
+    finally:
+        second.kill()
+        second.wait()
+    assert second.returncode == 1
+    assert "another daemon" in told
+    assert station.wait_for_phase("tracking")["emergency_stop"] is None
+    assert daemon.poll() is None
 
 
 def test_killed_again_and_again_it_leaves_readable_records_and_takes_the_contact_up(
