@@ -16,6 +16,7 @@ from trunnion.sky.instants import parse_utc
 
 PLACE = Joints(41.3, 61.7)
 GOOD = "{id: good, target: beacon, from: 2026-12-01T00:24:00Z, until: 2026-12-01T00:28:00Z}"
+ON = "{id: on, target: beacon, from: 2026-12-01T00:01:00Z, until: 2026-12-01T00:09:00Z}"
 ODD = "{id: odd, target: QUILON-1, from: 2026-12-01T00:50:00Z, until: 2026-12-01T00:51:00Z}"
 
 
@@ -62,8 +63,9 @@ class Rig:
         write_plan(self.folder, *contacts)
         self.keeper.plan_anew()
         self.keeper.see_to_it(PLACE)
-        self.desk.work()
-        self.keeper.see_to_it(PLACE)
+        while self.desk.is_busy:
+            self.desk.work()
+            self.keeper.see_to_it(PLACE)
 
 
 @pytest.fixture
@@ -80,6 +82,35 @@ def test_before_the_first_plan_there_is_none_and_then_it_is_made_from_where_the_
     assert rig.keeper.assignments is None
     (order,) = rig.desk.asked
     assert (order.place, order.now_s) == (PLACE, parse_utc("2026-12-01T00:03:17Z"))
+
+
+def test_after_a_start_the_contact_that_is_on_is_planned_first_and_then_the_rest(rig: Rig) -> None:
+    write_plan(rig.folder, ON, GOOD, ODD)
+    rig.keeper.see_to_it(PLACE)
+    rig.desk.work()
+    rig.keeper.see_to_it(PLACE)
+    assert rig.keeper.assignments is not None
+    assert [each.contact for each in rig.keeper.assignments] == ["on"]
+    assert (rig.keeper.is_whole, rig.keeper.is_planning, rig.told) == (False, True, [])
+    rig.desk.work()
+    rig.keeper.see_to_it(PLACE)
+    assert [each.contact for each in rig.keeper.assignments] == ["on", "good"]
+    assert (rig.keeper.is_whole, rig.keeper.is_planning, len(rig.told)) == (True, False, 1)
+    rig.keeper.plan_anew()
+    rig.keeper.see_to_it(PLACE)
+    assert rig.desk.asked[-1].begun_by_s is None
+
+
+def test_where_nothing_is_on_the_mount_waits_for_the_whole_plan(rig: Rig) -> None:
+    write_plan(rig.folder, GOOD)
+    rig.keeper.see_to_it(PLACE)
+    rig.desk.work()
+    rig.keeper.see_to_it(PLACE)
+    assert rig.keeper.assignments is None
+    rig.desk.work()
+    rig.keeper.see_to_it(PLACE)
+    assert rig.keeper.assignments is not None
+    assert [each.contact for each in rig.keeper.assignments] == ["good"]
 
 
 def test_a_plan_is_asked_for_once(rig: Rig) -> None:

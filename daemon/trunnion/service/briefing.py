@@ -89,7 +89,9 @@ def brief(order: BriefingOrder, strength: float = 1.0) -> Briefing:
         raise FileProblems(problems)
     drafts = [
         (contact, _as_corrected(wanted, order.correction))
-        for contact, wanted in (_draft(each, station, targets) for each in plan.contacts)
+        for contact, wanted in (
+            _draft(each, station, targets) for each in plan.contacts if order.wants(each.from_s)
+        )
     ]
     mount = flown_mount_of(station).with_reserve(strength, strength)
     programme = plan_day(

@@ -18,7 +18,7 @@ class BriefingOrder(NamedTuple):
     """What to prepare: which files, from where the mount stands, from when on.
 
     Without a plan path the station's own; without a place the mount's stow position; an operator's
-    correction where one is in force.
+    correction where one is in force. With `begun_by_s` the contacts that begin later are left out.
     """
 
     station: Path
@@ -26,6 +26,11 @@ class BriefingOrder(NamedTuple):
     now_s: float
     place: Joints | None = None
     correction: CorrectionInForce | None = None
+    begun_by_s: float | None = None
+
+    def wants(self, from_s: float) -> bool:
+        """Whether a contact that may begin at this second is to be prepared."""
+        return self.begun_by_s is None or from_s <= self.begun_by_s
 
 
 def brief_elsewhere(order: BriefingOrder) -> "Briefing":

@@ -1,6 +1,7 @@
 """The plan in force: made in a child process, kept until a better one is there.
 
-A plan that cannot be read does not replace the one that is being flown.
+A plan that cannot be read does not replace the one that is being flown. After a start the contact
+that is on is planned first: the rest of a day takes seconds, which the contact would lose.
 """
 
 from collections.abc import Callable
@@ -16,6 +17,10 @@ from trunnion.track.path import Assignment
 
 if TYPE_CHECKING:
     from trunnion.service.briefing import Briefing
+
+
+SOON_S = 60.0
+"""A contact that begins so soon counts as on after a start."""
 
 
 class MakesPlans(Protocol):
@@ -59,6 +64,7 @@ class PlanKeeper:
         self._tell = tell
         self._planner = planner or Planner[BriefingOrder, "Briefing"](brief_elsewhere)
         self._is_wanted = True
+        self._is_hurried, self._is_whole = True, False
         self._assignments: tuple[Assignment, ...] | None = None
         self._trouble: str | None = None
 
@@ -66,6 +72,11 @@ class PlanKeeper:
     def assignments(self) -> tuple[Assignment, ...] | None:
         """Who has the mount when; None before the first plan was made."""
         return self._assignments
+
+    @property
+    def is_whole(self) -> bool:
+        """Whether these are all of the plan's, or at first those alone that are on."""
+        return self._is_whole
 
     @property
     def trouble(self) -> str | None:
@@ -84,24 +95,34 @@ class PlanKeeper:
     def see_to_it(self, place: Joints, correction: CorrectionInForce | None = None) -> None:
         """Have a plan made from where the mount stands, if one is wanted; take up what is made."""
         if self._is_wanted:
-            self._is_wanted = False
-            now_s = self._clock.utc_s()
-            self._planner.ask(BriefingOrder(self._station, self._plan, now_s, place, correction))
+            self._ask(place, correction)
         outcome = self._planner.collect()
         if outcome is None:
             return
-        if outcome.result is not None:
-            self._take_up(outcome.result)
-        else:
+        was_hurried, self._is_hurried = self._is_hurried, False
+        if outcome.result is None:
             self._trouble = f"the plan was not taken up: {outcome.error}"
             self._tell(self._trouble)
+        elif was_hurried:
+            self._assignments = outcome.result.assignments or None
+            self._ask(place, correction)
+        else:
+            self._take_up(outcome.result)
 
     def close(self) -> None:
         """Drop what is being made."""
         self._planner.close()
 
+    def _ask(self, place: Joints, correction: CorrectionInForce | None) -> None:
+        self._is_wanted = False
+        now_s = self._clock.utc_s()
+        begun_by_s = now_s + SOON_S if self._is_hurried else None
+        self._planner.ask(
+            BriefingOrder(self._station, self._plan, now_s, place, correction, begun_by_s)
+        )
+
     def _take_up(self, briefing: "Briefing") -> None:
-        self._assignments = briefing.assignments
+        self._assignments, self._is_whole = briefing.assignments, True
         self._trouble = None
         for each in briefing.contacts:
             if each.trouble is not None:
