@@ -160,7 +160,7 @@ def test_a_file_stops_and_keeps_it_stopped_until_it_is_gone(
 def test_a_broken_station_file_is_told_without_a_traceback(station: Station) -> None:
     station.file.write_text(station.file.read_text().replace("tick_hz", "tick_h"))
     done = station.command("run", str(station.file))
-    assert done.returncode == 1
+    assert done.returncode == 2
     assert "did you mean 'tick_hz'" in done.stderr
     assert "Traceback" not in done.stderr
 

@@ -8,6 +8,8 @@ from pathlib import Path
 
 import pytest
 
+from trunnion.cli.errors import MISUSED
+
 SYSTEMD = Path(__file__).parents[2] / "systemd"
 UNIT = "trunnion@.service"
 INSTALLED = "/opt/trunnion/bin/trunnion"
@@ -60,6 +62,8 @@ def test_it_is_watched_and_comes_back() -> None:
     service = parser["Service"]
     assert service["Type"] == "notify"
     assert service["Restart"] == "on-failure"
+    assert service["RestartPreventExitStatus"] == str(MISUSED)
+    assert service["RestartSec"] == "1s"
     assert service["WatchdogSec"] == "15s"
     assert (service["User"], service["SupplementaryGroups"]) == ("trunnion", "dialout")
     assert parser["Unit"]["StartLimitIntervalSec"] == "0"

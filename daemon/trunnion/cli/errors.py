@@ -12,7 +12,11 @@ from trunnion.sky.errors import SkyError
 from trunnion_drivers.interface.errors import DriverError
 
 FAILED = 1
-"""The exit code of a command that could not do what was asked; 2 is a mistake in the asking."""
+"""The exit code of a command that could not do what was asked."""
+
+MISUSED = 2
+"""The exit code of a mistake in the asking; a daemon whose station file cannot be used is one too,
+as no restart would mend it."""
 
 
 @contextmanager

@@ -4,7 +4,12 @@ import signal
 import sys
 from typing import TYPE_CHECKING
 
+import typer
+
 from trunnion.cli.arguments import OptionalPlan, Station
+from trunnion.cli.errors import MISUSED
+from trunnion.cli.output import say
+from trunnion.files.problems import FileProblems
 
 if TYPE_CHECKING:
     from types import FrameType
@@ -19,7 +24,7 @@ def run(station: Station, *, plan: OptionalPlan = None) -> None:
     """Follow the pass plan, until told to end (SIGTERM, SIGINT); SIGHUP reads the plan again.
 
     Moving machinery: see that nobody is near the antenna, and that the hardware emergency stop
-    works. SIGUSR1 is an emergency stop.
+    works. SIGUSR1 is an emergency stop. The exit code is 2 when the station file cannot be used.
     """
     from trunnion.service.clock import SystemClock
     from trunnion.service.daemon import Daemon, Paths
@@ -28,7 +33,11 @@ def run(station: Station, *, plan: OptionalPlan = None) -> None:
 
     configure()
     sys.setswitchinterval(SWITCH_INTERVAL_S)
-    daemon = Daemon(Paths(station, plan), SystemClock(), Notifier.from_environment())
+    try:
+        daemon = Daemon(Paths(station, plan), SystemClock(), Notifier.from_environment())
+    except FileProblems as problems:
+        say(str(problems))
+        raise typer.Exit(MISUSED) from None
     _listen_to_signals(daemon)
     daemon.run()
 
