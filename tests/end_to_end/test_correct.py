@@ -1,4 +1,4 @@
-"""The real daemon, corrected in the middle of a contact: it goes over, shows it, takes it back."""
+"""The real daemon, corrected in mid-contact: flown, shown, kept when killed, taken back."""
 
 from pathlib import Path
 from typing import Any
@@ -23,6 +23,11 @@ def test_a_correction_is_flown_shown_and_taken_back(tmp_path: Path) -> None:
         assert told.returncode == 0, told.stderr
         status = station.wait_for(lambda status: points_at(81.7, status))
         assert status["correction"]["elevation_deg"] == pytest.approx(-1.4)
+        assert status["correction"]["contact"] == "the-contact"
+        process.kill()
+        process.wait()
+        process = station.run()
+        status = station.wait_for(lambda status: points_at(81.7, status))
         assert status["correction"]["contact"] == "the-contact"
         assert station.command("correct", str(station.file), "--clear").returncode == 0
         status = station.wait_for(lambda status: points_at(83.1, status))

@@ -160,7 +160,7 @@ def test_a_correction_is_given_put_on_record_and_cleared(rig: Rig) -> None:
     }
     told = "told to correct time +1.75 s, elevation -0.3° until cleared"
     assert rig.around.events == [(EventKind.REQUEST, told)]
-    assert rig.ask("correct", clear=True) == {"correction": None}
+    assert rig.ask("correct", clear=True) == {"correction": None, "trouble": None}
     assert rig.corrections.in_force is None
     assert len(rig.around.events) == 2
 

@@ -9,7 +9,8 @@ from tests.service.stations import write_station
 from trunnion.service.briefing import brief
 from trunnion.service.briefing_order import BriefingOrder
 from trunnion.service.clock import VirtualClock
-from trunnion.service.corrections import CorrectionInForce, Corrections, NothingToCorrect
+from trunnion.service.corrections import Corrections, NothingToCorrect
+from trunnion.service.standing_correction import CorrectionInForce, StandingCorrection
 from trunnion.sky.fixed import FixedDirection
 from trunnion.sky.instants import parse_utc
 from trunnion.track.correction import Correction
@@ -78,6 +79,84 @@ def test_after_the_last_contact_there_is_nothing_to_correct(rig: Rig) -> None:
     with pytest.raises(NothingToCorrect):
         rig.corrections.give(BIAS, is_kept=False)
     assert rig.plans == 0
+
+
+def started_anew(folder: Path, rig: Rig, *, is_plan_whole: bool = True) -> Corrections:
+    """The corrections of a new process, with what is on disk."""
+    standing = StandingCorrection(folder / "correction")
+    return Corrections(
+        rig.clock, lambda: rig.assignments, rig._plan, standing, lambda: is_plan_whole
+    )
+
+
+def test_a_restart_goes_on_with_it_until_its_contact_ends(tmp_path: Path, rig: Rig) -> None:
+    given = started_anew(tmp_path, rig).give(BIAS, is_kept=False)
+    rig.clock.sleep(6.5)
+    again = started_anew(tmp_path, rig)
+    assert (again.in_force, again.trouble) == (given, None)
+    rig.clock.sleep(1.0)
+    assert again.end_with_the_contact() == "one"
+    assert started_anew(tmp_path, rig).in_force is None
+
+
+def test_the_contact_of_that_name_on_another_day_is_another_one(tmp_path: Path, rig: Rig) -> None:
+    started_anew(tmp_path, rig).give(BIAS, is_kept=False)
+    rig.clock.sleep(86_400.0)
+    rig.assignments = [assignment("one", 86_300.0, 86_500.0)]
+    assert started_anew(tmp_path, rig).in_force is None
+
+
+def test_a_contact_in_parts_keeps_it_to_the_end_of_the_last(tmp_path: Path, rig: Rig) -> None:
+    rig.assignments.append(assignment("one", 95.0, 120.0))
+    started_anew(tmp_path, rig).give(BIAS, is_kept=False)
+    rig.clock.sleep(100.0)
+    assert started_anew(tmp_path, rig).in_force == CorrectionInForce(BIAS, "one")
+
+
+def test_until_the_whole_plan_is_known_none_is_ended(tmp_path: Path, rig: Rig) -> None:
+    rig.clock.sleep(8.0)
+    given = started_anew(tmp_path, rig).give(BIAS, is_kept=False)
+    rig.assignments = []
+    again = started_anew(tmp_path, rig, is_plan_whole=False)
+    assert again.end_with_the_contact() is None
+    assert again.in_force == given
+
+
+def test_a_kept_one_outlasts_restarts_and_a_cleared_one_does_not(tmp_path: Path, rig: Rig) -> None:
+    first = started_anew(tmp_path, rig)
+    first.give(BIAS, is_kept=True)
+    rig.clock.sleep(1e6)
+    second = started_anew(tmp_path, rig)
+    assert second.in_force == CorrectionInForce(BIAS, None)
+    second.clear()
+    assert started_anew(tmp_path, rig).in_force is None
+
+
+@pytest.mark.parametrize(
+    "text",
+    [
+        "",
+        "null",
+        "[1, 2]",
+        '{"contact": "one", "until_utc_s": 9e9}',
+        '{"contact": 7, "until_utc_s": 9e9, "correction": {"azimuth_deg": 0.3}}',
+        '{"contact": "one", "until_utc_s": null, "correction": {"azimuth_deg": 0.3}}',
+        '{"contact": "one", "until_utc_s": 9e9, "correction": {"azimuth_deg": 77.0}}',
+        '{"contact": "one", "until_utc_s": 9e9, "correction": {"zenith_deg": 0.3}}',
+    ],
+)
+def test_what_is_no_correction_on_disk_corrects_nothing(
+    tmp_path: Path, rig: Rig, text: str
+) -> None:
+    (tmp_path / "correction").write_text(text)
+    assert started_anew(tmp_path, rig).in_force is None
+
+
+def test_a_disk_that_cannot_keep_it_is_told_and_it_holds(tmp_path: Path, rig: Rig) -> None:
+    (tmp_path / "correction.new").mkdir()
+    corrections = started_anew(tmp_path, rig)
+    assert corrections.give(BIAS, is_kept=False) == corrections.in_force
+    assert "a restart would forget the correction" in str(corrections.trouble)
 
 
 @pytest.mark.parametrize("contact", ["quillon-2-north", None])

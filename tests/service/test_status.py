@@ -14,9 +14,9 @@ from trunnion.pilot.phase import Wish
 from trunnion.safety.emergency import EmergencyStop
 from trunnion.safety.transmit import TransmitPermit
 from trunnion.service.cadence import Beat
-from trunnion.service.corrections import CorrectionInForce
 from trunnion.service.link.status import LinkState, LinkStatus
 from trunnion.service.score import Score
+from trunnion.service.standing_correction import CorrectionInForce
 from trunnion.service.status import Health, describe
 from trunnion.sky.instants import format_utc
 from trunnion.track.correction import Correction

@@ -82,7 +82,10 @@ def ask(
 ) -> Mapping[str, object]:
     """Have the daemon do something, and return its answer."""
     with _client(daemon) as client:
-        return client.request(command, **arguments)
+        answer = client.request(command, **arguments)
+    if trouble := answer.get("trouble"):
+        say(f"Done, but: {trouble}")
+    return answer
 
 
 def _ask(daemon: Path, command: str, done: str) -> None:

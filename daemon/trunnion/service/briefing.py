@@ -14,8 +14,8 @@ from trunnion.files.station import StationFile, load_station
 from trunnion.service.antenna import beam_of, flown_mount_of, objective_of
 from trunnion.service.briefing_order import BriefingOrder
 from trunnion.service.clearance import clearance_of
-from trunnion.service.corrections import CorrectionInForce
 from trunnion.service.errors import ServiceError
+from trunnion.service.standing_correction import CorrectionInForce
 from trunnion.service.targets import TargetBook
 from trunnion.service.viewpoint import viewpoint_of
 from trunnion.sky.elements import Satellite

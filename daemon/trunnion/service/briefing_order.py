@@ -8,7 +8,7 @@ from pathlib import Path
 from typing import TYPE_CHECKING, NamedTuple
 
 from trunnion.mount.joints import Joints
-from trunnion.service.corrections import CorrectionInForce
+from trunnion.service.standing_correction import CorrectionInForce
 
 if TYPE_CHECKING:
     from trunnion.service.briefing import Briefing

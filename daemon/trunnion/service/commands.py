@@ -76,10 +76,10 @@ class Commands:
         if clears(arguments):
             self._corrections.clear()
             self._around.record(EventKind.REQUEST, "told to correct nothing any more")
-            return {"correction": None}
+            return {"correction": None, "trouble": self._corrections.trouble}
         given = self._corrections.give(correction_in(arguments), is_kept=is_kept_in(arguments))
         self._around.record(EventKind.REQUEST, f"told to correct {told(given)}")
-        return {"correction": plain_correction(given)}
+        return {"correction": plain_correction(given), "trouble": self._corrections.trouble}
 
     def _reset(self, _: Answer) -> Answer:
         """Lift the stop, and wait: the wish to hold still is there before the stop is gone."""

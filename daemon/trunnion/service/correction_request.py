@@ -4,7 +4,7 @@ from collections.abc import Mapping
 from dataclasses import asdict
 
 from trunnion.service.control.protocol import BadArguments
-from trunnion.service.corrections import CorrectionInForce
+from trunnion.service.standing_correction import CorrectionInForce
 from trunnion.track.correction import Correction
 
 _VALUES = ("time_bias_s", "azimuth_deg", "elevation_deg", "along_deg", "across_deg")

@@ -25,6 +25,7 @@ from trunnion.service.clock import Clock
 from trunnion.service.commands import Commands, Surroundings
 from trunnion.service.contact_log import ContactLog
 from trunnion.service.control.server import ControlServer
+from trunnion.service.correction_request import told
 from trunnion.service.corrections import Corrections
 from trunnion.service.departure_watch import DepartureWatch
 from trunnion.service.drivers import build_driver
@@ -43,6 +44,7 @@ from trunnion.service.records.writer import RecordWriter
 from trunnion.service.recovery_leave import RecoveryLeave
 from trunnion.service.senses import senses_of
 from trunnion.service.sole_daemon import sole_daemon
+from trunnion.service.standing_correction import StandingCorrection
 from trunnion.service.standing_wish import StandingWish
 from trunnion.service.status import Health, describe
 from trunnion.service.stop_file import StopFile
@@ -118,7 +120,11 @@ class Daemon:
             self._plans = PlanKeeper(paths.station, paths.plan, clock, self._tell_trouble)
             held.callback(self._plans.close)
             self._corrections = Corrections(
-                clock, lambda: self._plans.assignments, self._plans.plan_anew
+                clock,
+                lambda: self._plans.assignments,
+                self._plans.plan_anew,
+                StandingCorrection(station.files.latch.with_name(CORRECTION_FILE)),
+                lambda: self._plans.is_whole,
             )
             commands = Commands(self._wish, self._desk, around, self._leave, self._corrections)
             handlers = commands.handlers()
@@ -133,6 +139,8 @@ class Daemon:
                 station.files.records, clock, retention_of(station)
             )
             held.callback(records.close)
+            if still := self._corrections.in_force:
+                self._record(EventKind.STATE, f"corrected since before this start: {told(still)}")
             self._link = ThreadedLink(driver, clock, poll_s=0.5 / station.cadence.tick_hz)
             held.callback(self._link.close)
             self._desk.attach(self._link)
@@ -281,6 +289,7 @@ class Daemon:
 
 
 WISH_FILE = "standing-wish"
+CORRECTION_FILE = "standing-correction"
 
 
 def _watched(paths: Paths, station: StationFile) -> tuple[Path, ...]:

@@ -11,8 +11,8 @@ from typing import TYPE_CHECKING, Protocol
 from trunnion.mount.joints import Joints
 from trunnion.service.briefing_order import BriefingOrder, brief_elsewhere
 from trunnion.service.clock import Clock
-from trunnion.service.corrections import CorrectionInForce
 from trunnion.service.planner import Outcome, Planner
+from trunnion.service.standing_correction import CorrectionInForce
 from trunnion.track.path import Assignment
 
 if TYPE_CHECKING:

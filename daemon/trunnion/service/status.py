@@ -12,11 +12,11 @@ from trunnion.safety.verdict import Move
 from trunnion.safety.world import World
 from trunnion.service.cadence import Beat
 from trunnion.service.correction_request import plain_correction
-from trunnion.service.corrections import CorrectionInForce
 from trunnion.service.explanation import explanations
 from trunnion.service.link.status import LinkStatus
 from trunnion.service.recorder import summary_of
 from trunnion.service.score import Score
+from trunnion.service.standing_correction import CorrectionInForce
 from trunnion.service.turn import Turn
 from trunnion.sky.instants import format_utc
 
