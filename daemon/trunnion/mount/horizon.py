@@ -1,7 +1,9 @@
 """The horizon mask: how high the obstacles round the station stand."""
 
 from bisect import bisect_left, bisect_right
+from collections.abc import Iterator
 from dataclasses import dataclass, field
+from itertools import pairwise
 
 
 @dataclass(frozen=True, slots=True)
@@ -37,6 +39,11 @@ class HorizonMask:
         (before_deg, low), (after_deg, high) = self._around[at - 1], self._around[at]
         share = (azimuth_deg - before_deg) / (after_deg - before_deg)
         return low + share * (high - low)
+
+    def spans(self) -> Iterator[tuple[float, float, float]]:
+        """Azimuths from one point to the next (-360 to 720), and the higher end's elevation."""
+        for (begin_deg, one_deg), (end_deg, other_deg) in pairwise(self._around):
+            yield begin_deg, end_deg, max(one_deg, other_deg)
 
     def highest_deg(self, from_deg: float, to_deg: float) -> float:
         """Highest elevation of the horizon from one azimuth clockwise to another."""
