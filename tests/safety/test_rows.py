@@ -19,8 +19,16 @@ from trunnion.safety.policy import POLICY, Policy
 from trunnion.safety.verdict import Action, Halt, Intervention, Rule, Verdict
 from trunnion.safety.world import World
 
-WATCHFUL = replace(LIMITS, clock_max_error_s=0.3, wind_stow_gust_m_s=17.0, heartbeat_max_age_s=5.0)
-FINE = CALM._replace(clock_error_s=0.1, wind_gust_m_s=3.7, heartbeat_age_s=0.4, utc_s=2000.0)
+WATCHFUL = replace(
+    LIMITS,
+    clock_max_error_s=0.3,
+    wind_stow_gust_m_s=17.0,
+    heartbeat_max_age_s=5.0,
+    sun_keep_out_deg=4.3,
+)
+FINE = CALM._replace(
+    clock_error_s=0.1, wind_gust_m_s=3.7, heartbeat_age_s=0.4, utc_s=2000.0, sun=(83.1, 37.7)
+)
 HERE = Motion(201.7, 41.3)
 
 Table = Mapping[Rule, Policy]
@@ -179,6 +187,9 @@ SCENES: dict[Rule, Callable[[Table], Verdict]] = {
     Rule.FLOOR: demanded(Motion(201.7, 5.2)),
     Rule.MASK: demanded(Motion(90.1, 8.7)),
     Rule.KEEP_OUT: demanded(Motion(143.9, 20.3)),
+    Rule.SUN: demanded(Motion(83.9, 37.3)),
+    Rule.SUN_IN_BEAM: around({"sun": (202.3, 40.1)}),
+    Rule.SUN_UNKNOWN: around({"sun": None}),
     Rule.STOPPING: runs_to_the_floor,
 }
 

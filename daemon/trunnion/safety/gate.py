@@ -17,11 +17,12 @@ from trunnion.safety.lasting import Lasting
 from trunnion.safety.limits import SafetyLimits
 from trunnion.safety.obedience import Obedience
 from trunnion.safety.orders import Examined, Mounted, examine
-from trunnion.safety.places import find_at
+from trunnion.safety.places import find_at, has_room
 from trunnion.safety.policy import POLICY, Policy
 from trunnion.safety.recovery import examine_return
 from trunnion.safety.rest import Rest
 from trunnion.safety.stillness import Stillness
+from trunnion.safety.sunshine import Sunshine
 from trunnion.safety.surroundings import find_around
 from trunnion.safety.verdict import Action, Halt, Intervention, Move, Rule, Verdict
 from trunnion.safety.world import World
@@ -43,6 +44,7 @@ class Gate:
         self._obedience = Obedience(limits)
         self._rest = Rest(limits)
         self._stillness = Stillness(limits)
+        self._sunshine = Sunshine(limits)
         self._clock = ClockWatch(limits)
         self._lasting = Lasting(policy)
         self._ordered: Motion | None = None
@@ -59,7 +61,7 @@ class Gate:
         dt_s = self._elapsed_s(mono_s)
         self._see_to_the_stop(world)
         hazards = list(self._find(mono_s, reading, world, is_motion_asked=demand is not None))
-        examined = self._examine(demand, dt_s, hazards, may_recover=world.may_recover)
+        examined = self._examine(demand, dt_s, hazards, world)
         hazards += examined.hazards
         self._ordered_s = mono_s
         return self._verdict(examined.motion, self._lasting.acting_at(mono_s, hazards))
@@ -87,6 +89,7 @@ class Gate:
         if self._latch is not None:
             yield Hazard(Rule.EMERGENCY_STOP, f"emergency stop: {self._latch}")
         yield from find_around(world, self._limits, self._lasting.acting)
+        yield from self._sunshine.find(world)
         yield from self._clock.find(mono_s, world.utc_s)
         yield from self._belief.find(mono_s, reading)
         self._is_still = self._ordered is not None or self._stands_still()
@@ -128,19 +131,24 @@ class Gate:
         )
 
     def _examine(
-        self, demand: Motion | None, dt_s: float, hazards: list[Hazard], *, may_recover: bool
+        self, demand: Motion | None, dt_s: float, hazards: list[Hazard], world: World
     ) -> Examined:
         reading, measured = self._belief.reading, self._belief.measured
-        if reading is None or measured is None or not self._is_still:
+        if reading is None or measured is None:
             return Examined(None)
-        if demand is None or self._is_halting(hazards):
-            return Examined(None)
-        now = Mounted(self._ordered or Motion(*reading.joints), reading, measured)
-        forgiven_deg = 0.0 if may_recover else self._limits.encoder_error_deg
-        outside = find_at(reading.joints, self._limits, forgiven_deg)
+        place, limits = reading.joints, self._sunshine.limits_in(world)
+        is_roomy = has_room(place, limits)
+        forgiven_deg = 0.0 if world.may_recover else limits.encoder_error_deg
+        outside = None if is_roomy else find_at(place, limits, forgiven_deg)
+        sunlit = _in_the_beam(outside)
+        if demand is None or not self._is_still or self._is_halting(hazards):
+            return Examined(None, sunlit)
+        now = Mounted(self._ordered or Motion(*place), reading, measured)
         if outside is None:
-            return examine(demand, now, dt_s, self._limits)
-        return examine_return(demand, now, dt_s, self._limits, outside, may_recover=may_recover)
+            return examine(demand, now, dt_s, limits, has_room=is_roomy)
+        may_return = world.may_recover or bool(sunlit)
+        examined = examine_return(demand, now, dt_s, limits, outside, may_recover=may_return)
+        return examined._replace(hazards=(*sunlit, *examined.hazards))
 
     def _is_halting(self, hazards: Iterable[Hazard]) -> bool:
         """Whether the mount is halted anyhow, before its demand has been looked at."""
@@ -177,6 +185,13 @@ class Gate:
         action, until = self._policy[hazard.rule].action, self._policy[hazard.rule].until
         sentence = f"{hazard.finding} ({hazard.rule.value}): {_DONE[action]} {until}"
         return Intervention(hazard.rule, action, sentence)
+
+
+def _in_the_beam(outside: Hazard | None) -> tuple[Hazard, ...]:
+    """The Sun is what moves: a mount in its circle may leave without anybody's leave."""
+    if outside is None or outside.rule is not Rule.SUN:
+        return ()
+    return (Hazard(Rule.SUN_IN_BEAM, f"the beam is {outside.finding}"),)
 
 
 _DONE = {

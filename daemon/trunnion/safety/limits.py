@@ -34,6 +34,7 @@ class SafetyLimits:
     wind_stow_gust_m_s: float | None = None
     wind_stow_mean_m_s: float | None = None
     heartbeat_max_age_s: float | None = None
+    sun_keep_out_deg: float | None = None
     braking: Mount = field(init=False, repr=False, compare=False)
 
     def __post_init__(self) -> None:

@@ -8,7 +8,13 @@ from trunnion.mount.motion import approach
 from trunnion.mount.mount import JointLimits
 from trunnion.safety.hazard import Hazard
 from trunnion.safety.limits import SafetyLimits
-from trunnion.safety.places import find_at, find_on_the_way, find_while_stopping, stopping_place
+from trunnion.safety.places import (
+    ROOM_DEG,
+    find_at,
+    find_on_the_way,
+    find_while_stopping,
+    stopping_place,
+)
 from trunnion.safety.verdict import Rule
 
 NOTICEABLE_DEG_S = 0.1
@@ -35,11 +41,18 @@ class Mounted(NamedTuple):
     measured: Motion
 
 
-def examine(demand: Motion, now: Mounted, dt_s: float, limits: SafetyLimits) -> Examined:
-    """Bring a demand within rates and accelerations, and refuse or brake what leads outside."""
+def examine(
+    demand: Motion, now: Mounted, dt_s: float, limits: SafetyLimits, *, has_room: bool = False
+) -> Examined:
+    """Bring a demand within rates and accelerations, and refuse or brake what leads outside.
+
+    `has_room` says that all is clear within `ROOM_DEG` of the reading.
+    """
     if not isfinite(sum(demand)):
         return Examined(None, (Hazard(Rule.NOT_FINITE, f"asked for {tuple(demand)}"),))
     motion = approach(now.base, demand, limits.mount, dt_s)
+    if has_room and motion == demand and _stays_near(motion, now, limits):
+        return Examined(motion)
     if motion == demand:
         forbidden = find_on_the_way(now.reading.joints, motion.joints, limits)
         found: tuple[Hazard, ...] = ()
@@ -54,6 +67,32 @@ def examine(demand: Motion, now: Mounted, dt_s: float, limits: SafetyLimits) -> 
     if beyond is None:
         return Examined(motion, found)
     return _brake(now, dt_s, (*found, _too_fast(beyond, demand)), limits)
+
+
+def _stays_near(motion: Motion, now: Mounted, limits: SafetyLimits) -> bool:
+    """Whether the order and all of its stopping distance is well within the reading's room."""
+    first_deg = _need_deg(
+        motion.first_deg - now.reading.first_deg,
+        max(abs(motion.first_rate_deg_s), abs(now.measured.first_rate_deg_s)),
+        limits.braking.first,
+        limits,
+    )
+    second_deg = _need_deg(
+        motion.second_deg - now.reading.second_deg,
+        max(abs(motion.second_rate_deg_s), abs(now.measured.second_rate_deg_s)),
+        limits.braking.second,
+        limits,
+    )
+    return first_deg + second_deg < ROOM_DEG
+
+
+def _need_deg(
+    away_deg: float, rate_deg_s: float, braking: JointLimits, limits: SafetyLimits
+) -> float:
+    """No joint gets further from where it was read: the order, a turn at its rate, braking."""
+    return abs(away_deg) + rate_deg_s * (
+        limits.turn_s + rate_deg_s / (2.0 * braking.acceleration_deg_s2)
+    )
 
 
 def _find_beyond(motion: Motion, measured: Motion, limits: SafetyLimits) -> Hazard | None:

@@ -1,16 +1,23 @@
 """Where the mount may be: travel of both joints, and the sky its beam may look at."""
 
-from math import ceil, inf
+from collections.abc import Callable
+from math import hypot, inf
 
-from trunnion.mount.clearance import Sector
+from trunnion.mount.clearance import Circle, Sector
 from trunnion.mount.joints import Joints, Motion
 from trunnion.mount.mount import JointBox, JointLimits
 from trunnion.safety.hazard import Hazard
 from trunnion.safety.limits import SafetyLimits
 from trunnion.safety.verdict import Rule
 
-SPACING_DEG = 0.25
-"""The way is looked at in steps of this size: no obstacle is surveyed more finely."""
+FINEST_DEG = 0.02
+"""Where something is near, the way is looked at in steps of this size: less than any mast."""
+
+LEAVING_DEG = 0.25
+"""A way that begins where it may not, by the encoder's error or the like, has left after this."""
+
+ROOM_DEG = 1.0
+"""A place with this much room round it needs no closer look."""
 
 ROUNDING_DEG = 1e-9
 
@@ -18,7 +25,10 @@ ROUNDING_DEG = 1e-9
 def find_at(
     place: Joints, limits: SafetyLimits, allowance_deg: float = ROUNDING_DEG
 ) -> Hazard | None:
-    """What forbids this place, if anything; `allowance_deg` forgives that much below or outside."""
+    """What forbids this place, if anything; `allowance_deg` forgives that much below or outside.
+
+    Inside a circle nothing is forgiven: it moves, and would be forgiven again and again.
+    """
     mount = limits.mount
     first_deg, second_deg = place
     first, second = mount.first, mount.second
@@ -36,17 +46,35 @@ def find_at(
     return _find_in_sky(azimuth_deg, elevation_deg, limits, allowance_deg)
 
 
+def has_room(place: Joints, limits: SafetyLimits) -> bool:
+    """Whether nothing at all is forbidden within `ROOM_DEG` of this place, by either joint."""
+    mount = limits.mount
+    first_deg, second_deg = place
+    first, second = mount.first, mount.second
+    return (
+        first.lower_deg + ROOM_DEG <= first_deg <= first.upper_deg - ROOM_DEG
+        and second.lower_deg + ROOM_DEG <= second_deg <= second.upper_deg - ROOM_DEG
+        and _is_free_around(place, ROOM_DEG, limits)
+    )
+
+
 def find_on_the_way(begin: Joints, end: Joints, limits: SafetyLimits) -> Hazard | None:
-    """What forbids the straight way between two places, its end included and its begin left out."""
+    """What forbids the straight way between two places, its end included and its begin left out.
+
+    Of a begin that is forbidden itself, its surroundings are left out with it.
+    """
+    found = find_at(end, limits)
+    if found is not None:
+        return found
     first_deg, second_deg = end.first_deg - begin.first_deg, end.second_deg - begin.second_deg
-    steps = ceil(max(abs(first_deg), abs(second_deg)) / SPACING_DEG)
-    for step in range(1, steps):
-        share = step / steps
-        place = Joints(begin.first_deg + share * first_deg, begin.second_deg + share * second_deg)
-        found = find_at(place, limits)
-        if found is not None:
-            return found
-    return find_at(end, limits)
+
+    def way(share: float) -> Joints:
+        return Joints(begin.first_deg + share * first_deg, begin.second_deg + share * second_deg)
+
+    if find_at(begin, limits) is None:
+        return _find_between(way, 0.0, 1.0, limits, ROUNDING_DEG)
+    leaving = LEAVING_DEG / max(abs(first_deg), abs(second_deg), LEAVING_DEG)
+    return find_at(way(leaving), limits) or _find_between(way, leaving, 1.0, limits, ROUNDING_DEG)
 
 
 def find_while_stopping(
@@ -56,17 +84,60 @@ def find_while_stopping(
 
     Each joint brakes by itself, so that the way is bent.
     """
+    found = find_at(stopping_place(motion, limits), limits, allowance_deg)
+    if found is not None:
+        return found
+    found = find_at(motion.joints, limits, allowance_deg)
+    if found is not None:
+        return found
     first, second = limits.braking.first, limits.braking.second
-    first_deg_s, second_deg_s = abs(motion.first_rate_deg_s), abs(motion.second_rate_deg_s)
     longest_s = max(
-        first_deg_s / first.acceleration_deg_s2, second_deg_s / second.acceleration_deg_s2
+        abs(motion.first_rate_deg_s) / first.acceleration_deg_s2,
+        abs(motion.second_rate_deg_s) / second.acceleration_deg_s2,
     )
-    steps = ceil(max(first_deg_s, second_deg_s) * longest_s / SPACING_DEG)
-    for step in range(steps if steps > 1 else 0):
-        found = find_at(_braked(motion, limits, longest_s * step / steps), limits, allowance_deg)
-        if found is not None:
-            return found
-    return find_at(stopping_place(motion, limits), limits, allowance_deg)
+
+    def way(share: float) -> Joints:
+        return _braked(motion, limits, longest_s * share)
+
+    return _find_between(way, 0.0, 1.0, limits, allowance_deg)
+
+
+def _find_between(
+    way: Callable[[float], Joints],
+    begin: float,
+    end: float,
+    limits: SafetyLimits,
+    allowance_deg: float,
+) -> Hazard | None:
+    """What forbids a stretch of a way whose ends are clear: by halves, until each is free.
+
+    Along the way neither joint turns back, so that all of the stretch is as near to one end as the
+    other end is.
+    """
+    one, other = way(begin), way(end)
+    reach_deg = hypot(other.first_deg - one.first_deg, other.second_deg - one.second_deg)
+    if reach_deg <= FINEST_DEG or _is_free_around(one, reach_deg, limits):
+        return None
+    middle = 0.5 * (begin + end)
+    return (
+        find_at(way(middle), limits, allowance_deg)
+        or _find_between(way, begin, middle, limits, allowance_deg)
+        or _find_between(way, middle, end, limits, allowance_deg)
+    )
+
+
+def _is_free_around(place: Joints, reach_deg: float, limits: SafetyLimits) -> bool:
+    """Whether sky and joint angles are free as far round; the travel is not looked at.
+
+    Turning the joints by a and b moves the boresight by no more than the root of a² + b².
+    """
+    first_deg, second_deg = place
+    if limits.mount.forbidden:
+        one = Joints(first_deg - reach_deg, second_deg - reach_deg)
+        other = Joints(first_deg + reach_deg, second_deg + reach_deg)
+        if any(box.meets(one, other) for box in limits.mount.forbidden):
+            return False
+    return limits.clearance.is_free_around(*limits.mount.hinges.boresight(place), reach_deg)
 
 
 def stopping_place(motion: Motion, limits: SafetyLimits) -> Joints:
@@ -103,6 +174,7 @@ def depth_deg(place: Joints, limits: SafetyLimits) -> float:
         place.second_deg - mount.second.upper_deg,
         clearance.lowest_deg(azimuth_deg) - elevation_deg,
         0.0 if sector is None else _depth_in_sector_deg(azimuth_deg, elevation_deg, sector),
+        *(circle.depth_deg(azimuth_deg, elevation_deg) for circle in clearance.circles),
         *(_depth_in_box_deg(place, box) for box in mount.forbidden),
     )
 
@@ -148,4 +220,14 @@ def _find_in_sky(
     if sector is not None:
         finding = f"azimuth {azimuth_deg:.1f}°, elevation {elevation_deg:.1f}° is in {sector.name}"
         return Hazard(Rule.KEEP_OUT, finding)
+    for circle in clearance.circles:
+        inside_deg = circle.depth_deg(azimuth_deg, elevation_deg)
+        if inside_deg > min(allowance_deg, ROUNDING_DEG):
+            return _in_circle(circle, inside_deg)
     return None
+
+
+def _in_circle(circle: Circle, inside_deg: float) -> Hazard:
+    away_deg = circle.radius_deg - inside_deg
+    finding = f"{away_deg:.2f}° from {circle.name}, {circle.radius_deg:g}° have to be kept"
+    return Hazard(Rule.SUN, finding)

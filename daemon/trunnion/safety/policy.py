@@ -194,6 +194,26 @@ POLICY: dict[Rule, Policy] = {
     Rule.FLOOR: _refuse("The beam was asked to go below the elevation floor.", _CHECK_PLAN),
     Rule.MASK: _refuse("The beam was asked to go below the horizon mask.", _CHECK_PLAN),
     Rule.KEEP_OUT: _refuse("The mount was asked to enter a keep-out.", _CHECK_PLAN),
+    Rule.SUN: _refuse(
+        "The beam was asked to go too near the Sun.",
+        "Nothing to do at the mount. A contact goes on by itself once its target has left the "
+        "circle that sun_keep_out_deg draws round the Sun.",
+    ),
+    Rule.SUN_IN_BEAM: _stow(
+        "until the Sun has been out of the beam for a while",
+        "The Sun has moved so near to the beam that it may heat feed and structure. The contact is "
+        "broken off; the mount leaves the circle round the Sun slowly and goes to stow.",
+        "Nothing, if the mount moves away. If it does not, the Sun stands over the way to stow, or "
+        "over stow itself: send the mount elsewhere by hand, or shade the feed.",
+        calm_s=60.0,
+    ),
+    Rule.SUN_UNKNOWN: _halt(
+        "until it is known where the Sun stands",
+        "This station stays clear of the Sun, and nobody can tell where the Sun stands, because "
+        "the computer's clock cannot be trusted.",
+        "Check the time service and the network. The Sun moves a degree in four minutes: do not "
+        "leave the antenna pointing near it.",
+    ),
     Rule.STOPPING: _slow(
         "until there is room to stop",
         "The mount moves too fast to stop before a limit that lies ahead.",

@@ -26,9 +26,7 @@ def examine_return(
     may_recover: bool,
 ) -> Examined:
     """Let a slow step inwards leave where there is leave for it, and nothing else."""
-    refused = Examined(
-        None, (Hazard(Rule.OUTSIDE, f"the mount is outside its limits: {outside.finding}"),)
-    )
+    refused = Examined(None, (_refusal(outside),))
     if not may_recover or not isfinite(sum(demand)):
         return refused
     step = approach(now.base, demand, _slow(limits), dt_s)
@@ -37,6 +35,12 @@ def examine_return(
     is_inwards = after_deg < min(depth_deg(now.base.joints, limits), seen_deg)
     is_inwards = is_inwards or step.joints == now.base.joints
     return Examined(step) if is_inwards else refused
+
+
+def _refusal(outside: Hazard) -> Hazard:
+    if outside.rule is Rule.SUN:
+        return Hazard(Rule.SUN, f"no way nearer to the Sun: {outside.finding}")
+    return Hazard(Rule.OUTSIDE, f"the mount is outside its limits: {outside.finding}")
 
 
 def _slow(limits: SafetyLimits) -> Mount:

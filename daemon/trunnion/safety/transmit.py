@@ -1,10 +1,11 @@
 """Permission to transmit: what it takes to have it, and for how long it is good."""
 
+from math import inf
 from typing import NamedTuple
 
-from trunnion.mount.joints import Reading
+from trunnion.mount.joints import Joints, Reading
 from trunnion.safety.limits import SafetyLimits
-from trunnion.safety.verdict import Action, Verdict
+from trunnion.safety.verdict import Action, Halt, Order, Verdict
 
 SETTLED_S = 1.0
 """The beam must have been on target for so long without a break, by default."""
@@ -65,8 +66,24 @@ class TransmitJudge:
             return f"the beam is {error_deg:.2f}° off, {self._tolerance_deg:g}° are allowed"
         if reading is None or not mono_s - reading.taken_s <= self._limits.reading_max_age_s:
             return "nobody knows where the mount is"
-        _, elevation_deg = self._limits.mount.hinges.boresight(reading.joints)
+        elevation_deg = self._elevation_deg(reading.joints)
         lowest_deg = self._limits.transmit_floor_deg
         if not elevation_deg >= lowest_deg:
             return f"elevation {elevation_deg:.2f}°, the transmit floor is {lowest_deg:g}°"
+        if not self._led_to_deg(verdict.order) >= lowest_deg:
+            return f"on the way below the transmit floor of {lowest_deg:g}°"
         return None
+
+    def _elevation_deg(self, place: Joints) -> float:
+        return self._limits.mount.hinges.boresight(place)[1]
+
+    def _led_to_deg(self, order: Order) -> float:
+        """Where an order has led the beam by the next turn: nobody looks before."""
+        if isinstance(order, Halt):
+            return inf
+        now, turn_s = order.motion, self._limits.turn_s
+        first_deg = now.first_deg + now.first_rate_deg_s * turn_s
+        second_deg = now.second_deg + now.second_rate_deg_s * turn_s
+        return min(
+            self._elevation_deg(now.joints), self._elevation_deg(Joints(first_deg, second_deg))
+        )

@@ -62,6 +62,9 @@ class Rule(Enum):
     FLOOR = "elevation floor"
     MASK = "horizon mask"
     KEEP_OUT = "keep-out"
+    SUN = "circle round the Sun"
+    SUN_IN_BEAM = "Sun in the beam"
+    SUN_UNKNOWN = "Sun unknown"
     STOPPING = "stopping distance"
 
 

@@ -13,6 +13,7 @@ class World(NamedTuple):
     system admits, infinite when it is not synchronised; winds in metres a second;
     `heartbeat_age_s` how long ago the outside heartbeat was last heard. `may_recover` is the
     operator's explicit leave to move a mount that was found outside its limits back inside, slowly.
+    `sun` is the Sun's azimuth and elevation (deg), by day and by night.
     """
 
     emergency: EmergencyStop | None
@@ -25,3 +26,4 @@ class World(NamedTuple):
     heartbeat_age_s: float | None = None
     may_recover: bool = False
     utc_s: float | None = None
+    sun: tuple[float, float] | None = None
