@@ -52,6 +52,19 @@ def test_being_slowed_down_is_no_hazard() -> None:
     assert judged(permitted(), 72.1, verdict=SLOWED).until_s is not None
 
 
+def test_the_beam_must_not_sink_below_the_floor_before_the_next_look() -> None:
+    # a turn is 0.1 s long: from 11.4° it sinks by 0.69° or 0.71°, and 10.7° are allowed
+    sinking = [Verdict(Move(Motion(201.7, 11.4, 0.0, rate_deg_s))) for rate_deg_s in (-6.9, -7.1)]
+    gently, steeply = (
+        judged(permitted(), 72.1, elevation_deg=11.6, verdict=each) for each in sinking
+    )
+    assert gently.until_s is not None
+    assert steeply == TransmitPermit(None, "on the way below the transmit floor of 10.7°")
+    lower = Verdict(Move(Motion(201.7, 10.6)))
+    assert judged(permitted(), 72.1, elevation_deg=11.6, verdict=lower).until_s is None
+    assert judged(permitted(), 72.1, verdict=Verdict(Halt())).until_s is not None
+
+
 @pytest.mark.parametrize(
     ("change", "reason"),
     [
