@@ -26,8 +26,9 @@ def run(station: Station, *, plan: OptionalPlan = None) -> None:
     Moving machinery: see that nobody is near the antenna, and that the hardware emergency stop
     works. SIGUSR1 is an emergency stop. The exit code is 2 when the station file cannot be used.
     """
+    from trunnion.service.assembly import Paths
     from trunnion.service.clock import SystemClock
-    from trunnion.service.daemon import Daemon, Paths
+    from trunnion.service.daemon import Daemon
     from trunnion.service.log import configure
     from trunnion.service.notify import Notifier
 

@@ -1,8 +1,9 @@
 """The daemon's end of the control socket: a lane for requests and a lane for stops."""
 
-from collections.abc import Callable, Mapping
-from contextlib import ExitStack
+from collections.abc import Callable, Iterator, Mapping
+from contextlib import ExitStack, closing, contextmanager
 from pathlib import Path
+from socket import socket
 
 from trunnion.service.clock import Clock
 from trunnion.service.control.conversation import Handler, RequestConversation
@@ -11,13 +12,29 @@ from trunnion.service.control.lane import Lane
 from trunnion.service.control.stop_conversation import StopConversation
 
 
-class ControlServer:
-    """Listens from construction until closed.
+@contextmanager
+def serving(
+    listeners: tuple[socket, socket],
+    handlers: Mapping[str, Handler],
+    stop: Callable[[str], None],
+    clock: Clock,
+) -> Iterator[None]:
+    """Serve both listening sockets, that of the requests and that of the stops, until left.
 
     `handlers` fulfil the commands, one at a time, in the thread of the request lane. `stop` takes
     in an emergency stop with its cause, in the thread of the stop lane, which waits for nothing
-    else. Raises SocketInUse and SocketUnusable.
+    else.
     """
+    requests, stops = listeners
+    with (
+        closing(Lane("stop", stops, lambda peer: StopConversation(stop, peer), clock)),
+        closing(Lane("control", requests, lambda peer: RequestConversation(handlers, peer), clock)),
+    ):
+        yield
+
+
+class ControlServer:
+    """Listens and serves from construction until closed. Raises SocketInUse and SocketUnusable."""
 
     def __init__(
         self,
@@ -27,13 +44,8 @@ class ControlServer:
         clock: Clock,
     ) -> None:
         with ExitStack() as held:
-            requests, stops = held.enter_context(listening(path))
-            stop_lane = Lane("stop", stops, lambda peer: StopConversation(stop, peer), clock)
-            held.callback(stop_lane.close)
-            request_lane = Lane(
-                "control", requests, lambda peer: RequestConversation(handlers, peer), clock
-            )
-            held.callback(request_lane.close)
+            listeners = held.enter_context(listening(path))
+            held.enter_context(serving(listeners, handlers, stop, clock))
             self._held = held.pop_all()
 
     def close(self) -> None:
