@@ -1,5 +1,12 @@
 """What a nested result looks like to people."""
 
+from pathlib import Path
+
+import pytest
+from typer.testing import CliRunner
+
+from tests.service.stations import write_station
+from trunnion.cli.main import build_app
 from trunnion.cli.output import flattened
 
 
@@ -19,3 +26,13 @@ def test_units_stand_in_brackets_and_numbers_have_three_places() -> None:
         ("is planning", "no"),
         ("phase", "tracking"),
     ]
+
+
+@pytest.mark.parametrize(("columns", "least", "most"), [("72", 50, 72), (None, 73, 160)])
+def test_a_table_that_is_piped_is_as_wide_as_columns_says(
+    tmp_path: Path, columns: str | None, least: int, most: int
+) -> None:
+    command = ["check", str(write_station(tmp_path)), "--now", "2026-12-01T00:00Z"]
+    printed = CliRunner().invoke(build_app(), command, env={"COLUMNS": columns}).stdout
+    rule = next(line for line in printed.splitlines() if line.startswith("─"))
+    assert least <= len(rule) <= most

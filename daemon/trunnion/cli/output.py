@@ -1,6 +1,7 @@
 """What a command says: tables for people, JSON alone on standard output, the rest on stderr."""
 
 import json
+import os
 import sys
 from collections.abc import Callable, Iterable, Iterator, Mapping, Sequence
 from contextlib import contextmanager
@@ -24,7 +25,10 @@ def print_text(text: str) -> None:
 
 
 def print_table(title: str, columns: Sequence[str], rows: Iterable[Sequence[str]]) -> None:
-    """Print rows under their columns; a column whose name ends in a unit in brackets is numeric."""
+    """Print rows under their columns; a column whose name ends in a unit in brackets is numeric.
+
+    As wide as the terminal; elsewhere as wide as `COLUMNS` says, or wide enough for most.
+    """
     from rich.box import SIMPLE_HEAD
     from rich.console import Console
     from rich.table import Table
@@ -36,7 +40,8 @@ def print_table(title: str, columns: Sequence[str], rows: Iterable[Sequence[str]
         table.add_column(Text(column), justify=justify, overflow="fold")
     for row in rows:
         table.add_row(*map(Text, row))
-    width = None if sys.stdout.isatty() else _WIDTH_WITHOUT_TERMINAL
+    is_width_known = sys.stdout.isatty() or "COLUMNS" in os.environ
+    width = None if is_width_known else _WIDTH_WITHOUT_TERMINAL
     console = Console(file=sys.stdout, width=width)
     console.print(Text(title, "bold"), soft_wrap=True)
     console.print(table)
