@@ -54,8 +54,12 @@ def test_a_circle_is_not_clear_and_grows_with_the_margin() -> None:
         (357.9, 30.3, 0.3, False),  # the roof, across north
         (0.2, 33.3, 1.9, True),
         (5.2, 30.3, 0.3, True),
-        (226.0, 46.2, 1.0, False),  # near the Sun
-        (226.0, 48.3, 1.0, True),
+        (225.6, 41.9, 1.0, False),  # beside the Sun, below it, above it
+        (225.0, 41.9, 1.0, True),
+        (233.7, 35.7, 1.0, False),
+        (233.7, 35.5, 1.0, True),
+        (233.7, 48.1, 1.0, False),
+        (233.7, 48.3, 1.0, True),
         (93.1, 12.6, 1.0, False),  # a step of the mask
         (95.1, 12.6, 0.9, True),
         (10.0, 50.0, 41.0, False),  # round the zenith

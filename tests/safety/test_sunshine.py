@@ -135,7 +135,7 @@ def test_while_it_is_not_known_the_circle_stays_where_it_was() -> None:
     assert Sunshine(LIMITS).limits_in(DAY) is LIMITS
 
 
-@pytest.mark.parametrize(("elevation_deg", "is_drawn"), [(UP_DEG, True), (UP_DEG - 0.01, False)])
+@pytest.mark.parametrize(("elevation_deg", "is_drawn"), [(-1.0, True), (-1.01, False)])
 def test_below_the_horizon_it_does_not_matter(elevation_deg: float, *, is_drawn: bool) -> None:
     assert bool(lit(SUNNY, 211.7, elevation_deg).clearance.circles) == is_drawn
     night = CALM._replace(sun=(211.7, elevation_deg))

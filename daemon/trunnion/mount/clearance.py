@@ -80,7 +80,7 @@ class Clearance:
     """Elevation floor (deg), horizon mask if there is one, keep-out sectors, keep-out circles.
 
     `skyline_deg` has, for each whole degree of azimuth up to the next one, edges included, an
-    elevation above which nothing stands; `free_above_deg` is the highest of them.
+    elevation above which nothing stands but circles; above `free_above_deg` nothing is at all.
     """
 
     floor_deg: float
@@ -95,12 +95,13 @@ class Clearance:
         if self.mask is not None:
             for begin_deg, end_deg, highest_deg in self.mask.spans():
                 _raise(skyline_deg, begin_deg, end_deg, highest_deg)
-        for box in (*self.keep_outs, *(circle.around() for circle in self.circles)):
+        for box in self.keep_outs:
             width_deg = (box.to_azimuth_deg - box.from_azimuth_deg) % 360.0 or 360.0
             end_deg = box.from_azimuth_deg + width_deg
             _raise(skyline_deg, box.from_azimuth_deg, end_deg, box.upper_elevation_deg)
         object.__setattr__(self, "skyline_deg", tuple(skyline_deg))
-        object.__setattr__(self, "free_above_deg", max(skyline_deg))
+        circled_deg = (circle.elevation_deg + circle.radius_deg for circle in self.circles)
+        object.__setattr__(self, "free_above_deg", max(*skyline_deg, *circled_deg))
 
     def with_margin(self, margin_deg: float) -> "Clearance":
         """The same, with floor, mask and keep-outs that much larger on every side."""
@@ -147,6 +148,9 @@ class Clearance:
             return True
         if lowest_deg <= self.floor_deg:
             return False
+        for circle in self.circles:
+            if circle.depth_deg(azimuth_deg, elevation_deg) >= -radius_deg:
+                return False
         aside_deg = azimuth_reach_deg(elevation_deg, radius_deg)
         if aside_deg >= 180.0:
             return False
