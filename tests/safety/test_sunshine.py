@@ -18,9 +18,8 @@ from trunnion.mount.sphere import separation_deg
 from trunnion.safety.gate import Gate
 from trunnion.safety.limits import SafetyLimits
 from trunnion.safety.places import find_at, stopping_place
-from trunnion.safety.sunshine import UP_DEG, Sunshine, lit
+from trunnion.safety.sunshine import LEEWAY_DEG, UP_DEG, Sunshine, lit
 from trunnion.safety.verdict import Halt, Move, Rule
-from trunnion.safety.way_in import find_way_in
 
 RADIUS_DEG = 4.3
 SUNNY = replace(LIMITS, sun_keep_out_deg=RADIUS_DEG)
@@ -70,17 +69,17 @@ def test_the_sun_moving_over_a_tracking_mount_sends_it_to_stow_and_lets_it_out()
     verdict = flown.turn(here, over)
     assert Rule.SUN_IN_BEAM in rules(verdict)
     assert verdict.wants_stow
-    limits = lit(SUNNY, *over.sun or (nan, nan))
-    goal = find_way_in(flown.place, limits)
-    assert goal is not None
+    goal = here
     for _ in range(60):
-        verdict = flown.turn(Motion(*goal), over)
-    assert find_at(flown.place, limits) is None
+        goal = Motion(*(verdict.way_out or goal.joints))
+        verdict = flown.turn(goal, over)
+    assert separation_deg(*flown.place, 211.4, 41.3) > RADIUS_DEG + LEEWAY_DEG
+    assert verdict.way_out is None
     assert isinstance(verdict.order, Move)
     assert verdict.wants_stow  # until the Sun has been out of the beam for a minute
-    verdict = flown.turn(Motion(*goal), over, dt_s=61.0)
-    flown.turn(Motion(*goal), over)
-    assert not flown.turn(Motion(*goal), over).wants_stow
+    flown.turn(goal, over, dt_s=61.0)
+    flown.turn(goal, over)
+    assert not flown.turn(goal, over).wants_stow
 
 
 def test_at_rest_in_the_circle_it_is_told_of_too() -> None:
@@ -96,6 +95,30 @@ def test_from_inside_no_way_leads_nearer_to_the_sun() -> None:
     assert verdict.order == Halt()
     assert "no way nearer to the Sun" in verdict.interventions[-1].sentence
     assert flown.place == Joints(208.7, 41.3)
+
+
+def test_the_way_out_is_the_nearest_and_only_for_the_sun() -> None:
+    verdict = bench(Joints(211.7, 37.5)).turn(None, DAY)
+    assert verdict.way_out == pytest.approx((211.7, 36.5))
+    assert bench(Joints(170.3, 41.3)).turn(Motion(268.4, 41.3), DAY).way_out is None
+    low = Bench(place=Joints(201.7, 4.9), gate=Gate(SUNNY))
+    assert low.turn(None, DAY).way_out is None
+    unread = Gate(SUNNY).judge(71.3, None, None, DAY)
+    assert unread.way_out is None
+
+
+def test_from_its_middle_every_mount_gets_out() -> None:
+    for hinges_of in (Hinges.x_y_north_south(), Hinges.hour_angle_declination(47.3)):
+        mount = replace(LIMITS.mount, hinges=hinges_of, second=JointLimits(-88.0, 91.0, 4.7, 2.1))
+        limits = replace(SUNNY, mount=mount, clearance=Clearance(-5.0, None))
+        place = Joints(-31.7, 21.3)
+        day = CALM._replace(sun=hinges_of.boresight(Joints(-32.9, 20.7)))
+        flown = Bench(place=place, gate=Gate(limits))
+        way_out = None
+        for _ in range(150):
+            verdict = flown.turn(None if way_out is None else Motion(*way_out), day)
+            way_out = verdict.way_out or way_out
+        assert find_at(flown.place, lit(limits, *day.sun or (nan, nan))) is None
 
 
 def test_it_leaves_slowly() -> None:

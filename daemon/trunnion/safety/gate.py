@@ -9,7 +9,7 @@ policy.
 
 from collections.abc import Iterable, Iterator, Mapping
 
-from trunnion.mount.joints import Motion, Reading
+from trunnion.mount.joints import Joints, Motion, Reading
 from trunnion.safety.belief import Belief
 from trunnion.safety.clock_watch import ClockWatch
 from trunnion.safety.hazard import Hazard
@@ -175,7 +175,14 @@ class Gate:
             wants_stow=self._is_to_stow(hazard.rule for hazard in acting),
             latch=self._latch,
             must_cut_power=any(hazard.rule is Rule.SLIPPED for hazard in acting),
+            way_out=self._way_out(acting),
         )
+
+    def _way_out(self, acting: tuple[Hazard, ...]) -> Joints | None:
+        reading = self._belief.reading
+        if reading is None or not any(each.rule is Rule.SUN_IN_BEAM for each in acting):
+            return None
+        return self._sunshine.way_out(reading.joints)
 
     def _cause(self, acting: tuple[Hazard, ...]) -> str:
         latching = (each for each in acting if self._policy[each.rule].action is Action.LATCH)

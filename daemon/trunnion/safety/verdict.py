@@ -3,7 +3,7 @@
 from enum import Enum, IntEnum
 from typing import NamedTuple
 
-from trunnion.mount.joints import Motion
+from trunnion.mount.joints import Joints, Motion
 
 
 class Move(NamedTuple):
@@ -81,7 +81,8 @@ class Verdict(NamedTuple):
 
     `wants_stow` asks the pilot for the way to stow; `latch` is the cause of an emergency stop that
     has to be kept from now on, and is told again until it is; `must_cut_power` asks for the power
-    of the motors to be removed, because a mount that was halted does not come to rest.
+    of the motors to be removed, because a mount that was halted does not come to rest;
+    `way_out` is where a mount should go first that the Sun has moved over, without anybody's leave.
     """
 
     order: Order
@@ -89,3 +90,4 @@ class Verdict(NamedTuple):
     wants_stow: bool = False
     latch: str | None = None
     must_cut_power: bool = False
+    way_out: Joints | None = None
