@@ -111,6 +111,15 @@ def test_a_reset_is_refused_while_the_cause_is_there(
     assert rig.desk.latched is not None
 
 
+def test_a_reset_is_refused_where_a_restart_would_move_the_mount(rig: Rig, tmp_path: Path) -> None:
+    rig.wish = StandingWish(tmp_path / "gone" / "wish")
+    rig.desk.stop("the cow")
+    with pytest.raises(StopNotLifted, match="a restart would follow plan"):
+        rig.ask("reset")
+    assert rig.desk.latched is not None
+    assert rig.wish.wish is Wish.HOLD
+
+
 def test_a_reset_is_refused_while_the_file_that_asked_for_the_stop_is_there(rig: Rig) -> None:
     rig.desk.stop("the file asks for it")
     rig.around.stop_file = "the file still asks for it"

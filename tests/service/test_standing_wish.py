@@ -28,5 +28,23 @@ def test_a_disk_that_fails_is_told_and_the_wish_is_taken_up(tmp_path: Path) -> N
     standing = StandingWish(tmp_path / "no such folder" / "wish")
     trouble = standing.set(Wish.STOW)
     assert standing.wish is Wish.STOW
-    assert trouble is not None
-    assert "no such folder" in trouble
+    assert trouble == standing.trouble
+    assert "a restart would follow plan: cannot write" in str(trouble)
+    assert "no such folder" in str(trouble)
+
+
+def test_a_draft_left_behind_means_hold_until_a_wish_is_kept(tmp_path: Path) -> None:
+    StandingWish(tmp_path / "wish").set(Wish.FOLLOW_PLAN)
+    (tmp_path / "wish.new").touch()
+    standing = StandingWish(tmp_path / "wish")
+    assert standing.wish is Wish.HOLD
+    standing.set(Wish.FOLLOW_PLAN)
+    assert StandingWish(tmp_path / "wish").wish is Wish.FOLLOW_PLAN
+
+
+def test_what_a_restart_would_do_anyhow_is_no_trouble(tmp_path: Path) -> None:
+    (tmp_path / "wish.new").mkdir()
+    standing = StandingWish(tmp_path / "wish")
+    assert standing.set(Wish.HOLD) is None
+    assert "a restart would hold: cannot write" in str(standing.set(Wish.STOW))
+    assert standing.wish is Wish.STOW

@@ -92,15 +92,31 @@ def test_a_stop_tells_its_cause_and_since_when(station: StationFile) -> None:
     assert told["wish"] == "hold"
 
 
+def test_a_stop_by_a_damaged_latch_knows_no_time(station: StationFile) -> None:
+    stopped = HEALTH._replace(stop=EmergencyStop("damaged", 0.0))
+    told = describe(station, turn_at(11.5), None, stopped)
+    assert told["emergency_stop"] == {"cause": "damaged", "since": None}
+
+
 def test_every_trouble_is_told(station: StationFile) -> None:
     troubled = HEALTH._replace(
         plan_trouble="no plan",
         records_trouble="disk full",
         transmit_trouble="no file",
         sensors_trouble="no wind",
+        wish_trouble="wish lost",
+        correction_trouble="correction lost",
     )
     told = describe(station, turn_at(11.5, trouble="no way"), None, troubled)
-    assert told["trouble"] == ["no way", "no plan", "disk full", "no file", "no wind"]
+    assert told["trouble"] == [
+        "no way",
+        "no plan",
+        "disk full",
+        "no file",
+        "no wind",
+        "wish lost",
+        "correction lost",
+    ]
 
 
 def test_permission_correction_and_link_are_told(station: StationFile) -> None:

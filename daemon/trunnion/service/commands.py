@@ -82,9 +82,9 @@ class Commands:
         return {"correction": plain_correction(given), "trouble": self._corrections.trouble}
 
     def _reset(self, _: Answer) -> Answer:
-        """Lift the stop, and wait: the wish to hold still is there before the stop is gone."""
+        """Lift the stop, and wait: the wish to hold still is kept before the stop is gone."""
         trouble = self._wish.set(Wish.HOLD)
-        self._desk.reset(self._still_there())
+        self._desk.reset(self._still_there() or trouble)
         self._around.record(EventKind.RESET, "emergency stop lifted; nothing moves until told to")
         return {"wish": self._wish.wish.value, "trouble": trouble}
 

@@ -29,4 +29,6 @@ def health_of(parts: Parts) -> Health:
         transmit_trouble=turning.transmission.trouble,
         sensors_trouble=turning.senses.trouble,
         correction=planning.corrections.in_force,
+        wish_trouble=keeping.wish.trouble,
+        correction_trouble=planning.corrections.trouble,
     )

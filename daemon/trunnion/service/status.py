@@ -37,6 +37,8 @@ class Health(NamedTuple):
     transmit_trouble: str | None
     sensors_trouble: str | None
     correction: CorrectionInForce | None = None
+    wish_trouble: str | None = None
+    correction_trouble: str | None = None
 
 
 def describe(
@@ -63,7 +65,16 @@ def describe(
 
 
 def _stop(stop: EmergencyStop | None) -> dict[str, object] | None:
-    return None if stop is None else {"cause": stop.cause, "since": format_utc(stop.utc_s)}
+    return (
+        None
+        if stop is None
+        else {
+            "cause": stop.cause,
+            "since": format_utc(stop.utc_s)
+            if stop.utc_s > 0.0
+            else None,  # a damaged latch knows none
+        }
+    )
 
 
 def _contact(turn: Turn, score: Score | None) -> dict[str, object] | None:
@@ -137,5 +148,7 @@ def _troubles(turn: Turn | None, health: Health) -> list[str]:
         health.records_trouble,
         health.transmit_trouble,
         health.sensors_trouble,
+        health.wish_trouble,
+        health.correction_trouble,
     )
     return [each for each in possible if each]
