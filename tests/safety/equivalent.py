@@ -6,6 +6,7 @@ _NO_STEP = (
     "in its first turn the gate does not know yet that the mount rests, and moves nothing; "
     "and the monotonic clock never goes back"
 )
+_CLOSER = "nothing is missed by a closer look than was needed, it only takes longer"
 _GUARD = "it only keeps a division from being one by zero; anything tiny serves"
 
 EQUIVALENT: dict[str, str] = {
@@ -14,6 +15,10 @@ EQUIVALENT: dict[str, str] = {
     "obedience: self._readings = 0: greater": _NEVER_READ,
     "obedience: self._readings = 0: less": _NEVER_READ,
     "obedience: if run_deg < 0.0:: 0 LtE": "a run of no length has both ends at one place",
+    "orders: return first_deg + second_deg < ROOM_DEG: 0 LtE": (
+        "at the very edge of the room that was looked at nothing is forbidden either"
+    ),
+    "orders: limits.turn_s + rate_deg_s / (2.0 * braking.acceleration_deg_s2): less": _CLOSER,
     "orders: TINY_S = 1e-6: greater": _GUARD,
     "orders: TINY_S = 1e-6: less": _GUARD,
     f"{_STEP}greater": _NO_STEP,

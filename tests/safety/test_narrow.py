@@ -6,7 +6,7 @@ from hypothesis import given
 from hypothesis import strategies as st
 
 from tests.mount.mounts import MOUNT, hinges
-from tests.safety.bench_mount import LIMITS
+from tests.safety.bench_mount import LIMITS, MAST
 from trunnion.mount.clearance import Clearance, Sector
 from trunnion.mount.hinges import Hinges
 from trunnion.mount.horizon import HorizonMask
@@ -19,6 +19,7 @@ from trunnion.safety.places import (
     find_at,
     find_on_the_way,
     find_while_stopping,
+    has_room,
 )
 
 WIDE = replace(MOUNT, first=JointLimits(-400.0, 400.0, 6.3, 2.9))
@@ -128,3 +129,46 @@ def test_what_stands_in_the_way_of_stopping_is_found_by_every_mount(
     limits = limits_with(turned, sector)
     if depth_deg(later, limits) > FINEST_DEG:
         assert find_while_stopping(motion, limits) is not None
+
+
+def test_what_stands_behind_is_not_in_the_way() -> None:
+    limits = replace(LIMITS, clearance=POLE)
+    assert find_on_the_way(Joints(144.18, 20.3), Joints(149.1, 20.4), limits) is None
+    assert find_while_stopping(Motion(144.18, 20.3, 4.9, 0.0), limits) is None
+
+
+def test_what_stands_near_the_begin_of_a_stop_is_in_the_way() -> None:
+    limits = replace(LIMITS, clearance=POLE)
+    assert find_while_stopping(Motion(143.9, 20.3, 5.9, 0.0), limits) is not None
+
+
+def test_a_way_that_begins_where_it_may_not_has_a_quarter_of_a_degree_to_leave() -> None:
+    """The mast ends at 146.9."""
+    for begin_deg, is_free in ((146.67, True), (146.63, False)):
+        found = find_on_the_way(Joints(begin_deg, 20.3), Joints(149.1, 20.3), LIMITS)
+        assert (found is None) == is_free
+    through = Clearance(5.3, None, (MAST, Sector("the pole", 149.0, 149.03, 1.1, 27.9)))
+    limits = replace(LIMITS, clearance=through)
+    assert find_on_the_way(Joints(146.7, 20.3), Joints(149.1, 20.3), limits) is not None
+    assert find_on_the_way(Joints(146.7, 20.3), Joints(148.9, 20.3), limits) is None
+
+
+def test_a_degree_of_room_on_every_side() -> None:
+    for place in (
+        Joints(-270.0, 41.3),
+        Joints(267.0, 41.3),
+        Joints(201.7, 90.0),
+        Joints(201.7, 41.3),
+    ):
+        assert has_room(place, LIMITS)
+    limits = replace(LIMITS, clearance=Clearance(-3.0, None))
+    assert has_room(Joints(201.7, 2.5), limits)
+    for place in (
+        Joints(-270.01, 41.3),
+        Joints(267.01, 41.3),
+        Joints(201.7, 90.01),
+        Joints(201.7, 2.49),
+    ):
+        assert not has_room(place, limits)
+    assert not has_room(Joints(144.1, 28.89), LIMITS)
+    assert has_room(Joints(144.1, 28.91), LIMITS)

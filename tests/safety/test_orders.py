@@ -1,8 +1,11 @@
 """Demands brought within the limits, refused, or braked."""
 
+from dataclasses import replace
+
 import pytest
 
 from tests.safety.bench_mount import LIMITS
+from trunnion.mount.clearance import Clearance, Sector
 from trunnion.mount.joints import Motion, Reading
 from trunnion.mount.motion import approach
 from trunnion.safety.orders import Mounted, examine
@@ -144,3 +147,42 @@ def test_the_first_joint_may_be_a_little_faster_too(rate_deg_s: float, needs_roo
     measured = Motion(264.45, 41.3, rate_deg_s, 0.0)
     examined = examine(demand, mounted(base, (264.45, 41.3), measured), 0.1, LIMITS)
     assert bool(examined.hazards) == needs_room
+
+
+@pytest.mark.parametrize(
+    ("rate_deg_s", "is_braked"), [(-1.52, False), (-1.55, True), (-2.7, True), (-4.0, True)]
+)
+def test_room_round_the_reading_is_not_room_to_stop_from_any_speed(
+    rate_deg_s: float, *, is_braked: bool
+) -> None:
+    """The floor is 1.01 deg below: 0.69 or 0.72 to stop, and twice 0.15 before it does."""
+    limits = replace(LIMITS, clearance=Clearance(5.3, None))
+    base = Motion(201.7, 6.31, 0.0, rate_deg_s)
+    demand = Motion(201.7, 6.31 + 0.1 * rate_deg_s, 0.0, rate_deg_s)
+    examined = examine(demand, mounted(base), 0.1, limits, has_room=True)
+    assert (examined == (demand, ())) != is_braked
+
+
+@pytest.mark.parametrize(("second_deg", "is_near"), [(41.3, True), (40.6, False)])
+def test_an_order_far_from_the_reading_has_no_room(second_deg: float, *, is_near: bool) -> None:
+    """Rates may be small and the order still be beyond what is near the reading."""
+    pole = Sector("the pole", 202.3, 202.6, 40.1, 40.9)
+    limits = replace(LIMITS, clearance=Clearance(5.3, None, (pole,)))
+    base = Motion(202.45, second_deg)
+    examined = examine(base, mounted(base, (201.7, 41.3)), 0.1, limits, has_room=True)
+    assert (examined == (base, ())) == is_near
+
+
+def test_a_mount_faster_than_its_orders_needs_more_room() -> None:
+    limits = replace(LIMITS, clearance=Clearance(5.3, None))
+    base = Motion(201.7, 6.35)
+    measured = Motion(201.7, 6.35, 0.0, -2.3)
+    examined = examine(base, mounted(base, measured=measured), 0.1, limits, has_room=True)
+    assert examined != (base, ())
+
+
+def test_however_hard_a_joint_brakes_it_needs_the_room_from_where_it_is() -> None:
+    """The mask stands at 6.309, and rest would be at 6.29."""
+    base, demand = Motion(201.7, 7.69, 0.0, -2.2), Motion(201.7, 7.48, 0.0, -2.0)
+    examined = examine(demand, mounted(base, measured=demand), 0.1, LIMITS)
+    assert [hazard.rule for hazard in examined.hazards] == [Rule.STOPPING]
