@@ -10,8 +10,8 @@ from trunnion.mount.joints import Joints
 from trunnion.service.briefing import Briefing, brief
 from trunnion.service.briefing_order import BriefingOrder
 from trunnion.service.clock import VirtualClock
-from trunnion.service.plan_keeper import PlanKeeper
-from trunnion.service.planner import Outcome
+from trunnion.service.plan_keeper import AGAIN_AFTER_S, PlanKeeper
+from trunnion.service.planner import Outcome, PlannerDied
 from trunnion.sky.instants import parse_utc
 
 PLACE = Joints(41.3, 61.7)
@@ -55,9 +55,9 @@ class Rig:
     told: list[str] = field(default_factory=list)
 
     def __post_init__(self) -> None:
-        clock = VirtualClock(parse_utc("2026-12-01T00:03:17Z"))
+        self.clock = VirtualClock(parse_utc("2026-12-01T00:03:17Z"))
         station = write_station(self.folder)
-        self.keeper = PlanKeeper(station, None, clock, self.told.append, self.desk)
+        self.keeper = PlanKeeper(station, None, self.clock, self.told.append, self.desk)
 
     def plan(self, *contacts: str) -> None:
         write_plan(self.folder, *contacts)
@@ -144,6 +144,35 @@ def test_a_contact_that_cannot_be_served_is_told_and_the_others_are_taken_up(rig
     assert [each.contact for each in rig.keeper.assignments] == ["good"]
     (sentence,) = rig.told
     assert sentence.startswith("contact odd cannot be served: expected a known target")
+
+
+def test_a_planner_that_died_is_asked_again_after_a_while_and_told_once_each(rig: Rig) -> None:
+    rig.keeper.see_to_it(PLACE)
+    rig.desk.waiting = Outcome(None, PlannerDied("expected an answer, got EOFError()"))
+    for _ in range(3):
+        rig.keeper.see_to_it(PLACE)
+    assert (len(rig.desk.asked), len(rig.told)) == (1, 1)
+    rig.clock.sleep(AGAIN_AFTER_S - 0.1)
+    rig.keeper.see_to_it(PLACE)
+    assert len(rig.desk.asked) == 1
+    rig.clock.sleep(0.2)
+    for _ in range(3):
+        rig.keeper.see_to_it(PLACE)
+    assert len(rig.desk.asked) == 2
+    rig.plan(GOOD)
+    assert rig.keeper.trouble is None
+    rig.clock.sleep(10.0 * AGAIN_AFTER_S)
+    asked = len(rig.desk.asked)
+    rig.keeper.see_to_it(PLACE)
+    assert len(rig.desk.asked) == asked
+
+
+def test_a_plan_that_cannot_be_read_is_not_read_again_and_again(rig: Rig) -> None:
+    rig.plan("{id: bad, target: sun, form: 2026}")
+    asked = len(rig.desk.asked)
+    rig.clock.sleep(10.0 * AGAIN_AFTER_S)
+    rig.keeper.see_to_it(PLACE)
+    assert len(rig.desk.asked) == asked
 
 
 def test_closing_drops_what_is_being_made(rig: Rig) -> None:

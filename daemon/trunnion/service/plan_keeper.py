@@ -5,13 +5,14 @@ that is on is planned first: the rest of a day takes seconds, which the contact 
 """
 
 from collections.abc import Callable
+from math import inf
 from pathlib import Path
 from typing import TYPE_CHECKING, Protocol
 
 from trunnion.mount.joints import Joints
 from trunnion.service.briefing_order import BriefingOrder, brief_elsewhere
 from trunnion.service.clock import Clock
-from trunnion.service.planner import Outcome, Planner
+from trunnion.service.planner import Outcome, Planner, PlannerDied
 from trunnion.service.standing_correction import CorrectionInForce
 from trunnion.track.path import Assignment
 
@@ -21,6 +22,9 @@ if TYPE_CHECKING:
 
 SOON_S = 60.0
 """A contact that begins so soon counts as on after a start."""
+
+AGAIN_AFTER_S = 15.0
+"""After a planner that died, by want of memory for one, the plan is asked for again."""
 
 
 class MakesPlans(Protocol):
@@ -67,6 +71,7 @@ class PlanKeeper:
         self._is_hurried, self._is_whole = True, False
         self._assignments: tuple[Assignment, ...] | None = None
         self._trouble: str | None = None
+        self._again_s = inf
 
     @property
     def assignments(self) -> tuple[Assignment, ...] | None:
@@ -94,7 +99,7 @@ class PlanKeeper:
 
     def see_to_it(self, place: Joints, correction: CorrectionInForce | None = None) -> None:
         """Have a plan made from where the mount stands, if one is wanted; take up what is made."""
-        if self._is_wanted:
+        if self._is_wanted or self._clock.monotonic_s() >= self._again_s:
             self._ask(place, correction)
         outcome = self._planner.collect()
         if outcome is None:
@@ -103,6 +108,8 @@ class PlanKeeper:
         if outcome.result is None:
             self._trouble = f"the plan was not taken up: {outcome.error}"
             self._tell(self._trouble)
+            if isinstance(outcome.error, PlannerDied):
+                self._again_s = self._clock.monotonic_s() + AGAIN_AFTER_S
         elif was_hurried:
             self._assignments = outcome.result.assignments or None
             self._ask(place, correction)
@@ -114,7 +121,7 @@ class PlanKeeper:
         self._planner.close()
 
     def _ask(self, place: Joints, correction: CorrectionInForce | None) -> None:
-        self._is_wanted = False
+        self._is_wanted, self._again_s = False, inf
         now_s = self._clock.utc_s()
         begun_by_s = now_s + SOON_S if self._is_hurried else None
         self._planner.ask(
