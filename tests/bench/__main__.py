@@ -1,7 +1,9 @@
 """The benchmark: `python -m tests.bench` or `python tests/bench`; exits with 1 for a figure missed.
 
 Each module `bench_*.py` beside this one has a function `rows()`, which measures both sides of each
-of its figures in the same run. Words on the command line choose modules whose names contain them.
+of its figures in the same run. Words on the command line choose modules whose names contain them;
+modules whose names end with `_long` take half an hour and more and run only for such a word as
+`long`.
 """
 
 import sys
@@ -10,6 +12,7 @@ from importlib import import_module
 from pathlib import Path
 
 ROOT = Path(__file__).parents[2]
+LONG = "_long"
 if not __package__:
     sys.path.insert(0, str(ROOT))
 
@@ -43,7 +46,14 @@ def main(words: list[str]) -> int:
 def modules(words: list[str]) -> list[str]:
     """The names of the modules to measure, in order."""
     found = sorted(path.stem for path in Path(__file__).parent.glob("bench_*.py"))
-    return [name for name in found if not words or any(word in name for word in words)]
+    brief = [name for name in found if not name.endswith(LONG)]
+    long = [name for name in found if name.endswith(LONG)]
+    if not words:
+        return brief
+    chosen = [name for name in brief if any(word in name for word in words)]
+    return chosen + [
+        name for name in long if any("long" in word and word in name for word in words)
+    ]
 
 
 def measured(name: str) -> Iterator[Row]:

@@ -76,11 +76,11 @@ def stopped_after_s(rig: Rig, number: int) -> float:
     return rig.stops.get(timeout=2.0) - begin_s
 
 
-def stale_ticks() -> Row:
+def stale_ticks(lasts_s: float = TRACKING_S) -> Row:
     """Ticks at 10 Hz that found no reading newer than that of the tick before."""
-    ticks, stale = on_rig(count_stale)
+    ticks, stale = on_rig(lambda rig: count_stale(rig, lasts_s))
     return Row(
-        f"ticks without a fresh reading, 10 Hz, {BAUD_RATE} baud, {TRACKING_S:g} s",
+        f"ticks without a fresh reading, 10 Hz, {BAUD_RATE} baud, {lasts_s:g} s",
         f"{stale} of {ticks}",
         "none",
         float(stale),
@@ -89,10 +89,10 @@ def stale_ticks() -> Row:
     )
 
 
-def count_stale(rig: Rig) -> tuple[int, int]:
+def count_stale(rig: Rig, lasts_s: float) -> tuple[int, int]:
     """How many ticks there were, and how many of them stale."""
     deadline_s, last_s, ticks, stale = time.monotonic(), 0.0, 0, 0
-    end_s = deadline_s + TRACKING_S
+    end_s = deadline_s + lasts_s
     while deadline_s < end_s:
         reading = rig.link.newest()
         taken_s = reading.taken_s if reading else 0.0

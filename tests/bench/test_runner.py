@@ -24,6 +24,11 @@ def test_words_choose_modules() -> None:
     assert modules(["no such"]) == []
 
 
+def test_what_takes_half_an_hour_runs_by_its_own_word_alone() -> None:
+    assert "bench_drivers_long" not in {*modules([]), *modules(["drivers"])}
+    assert modules(["drivers_long"]) == ["bench_drivers_long"]
+
+
 def test_a_module_that_fails_is_a_figure_missed() -> None:
     (row,) = measured("bench_that_is_not_there")
     assert not row.holds
