@@ -8,8 +8,9 @@ from tests.drivers.benches import DIALECTS
 from tests.drivers.mounts import FACTS, HandClock
 from trunnion_drivers.dialect.driver import DialectDriver
 from trunnion_drivers.dialect.load import load_dialect
+from trunnion_drivers.dialect.speech import spoken
 from trunnion_drivers.interface.errors import BadSettings
-from trunnion_drivers.interface.values import JointFacts, MountFacts
+from trunnion_drivers.interface.values import DriverMotion, JointFacts, MountFacts
 
 GOOD = """\
 format: 1
@@ -100,6 +101,31 @@ def test_a_field_too_narrow_for_the_travel_is_told(tmp_path: Path) -> None:
         DialectDriver.from_settings(settings, wide, HandClock())
     one_turn = MountFacts(JointFacts(0, 359, 5, 3), FACTS.second, 17.3, 61.9, tmp_path)
     DialectDriver.from_settings(settings, one_turn, HandClock())
+
+
+def test_decimal_digits_in_bytes_hold_the_travel_from_their_zero(tmp_path: Path) -> None:
+    path = tmp_path / "decimal.yaml"
+    text = """\
+format: 1
+name: Dunlin
+coding: binary
+begin: "10"
+end: "16"
+first: {units_per_deg: 100, zero_deg: -270}
+second: {units_per_deg: 10}
+commands:
+  read: [{send: "41", reply: "61 {first:bcd6} {second:dec4+30}"}]
+  move: [{send: "42 {first:bcd6} {second:dec4+30}"}]
+  halt: [{send: "43"}]
+"""
+    path.write_text(text)
+    settings = {"url": "/dev/null", "dialect": str(path)}
+    DialectDriver.from_settings(settings, FACTS, HandClock())
+    (said,) = spoken(load_dialect(path), DriverMotion(-263.71, 61.9, 0.0, 0.0))
+    assert said.sent == bytes.fromhex("10 42 00 06 29 30 36 31 39 16")
+    path.write_text(text.replace(", zero_deg: -270", ""))
+    with pytest.raises(BadSettings, match=r"commands\.move.*-26370 is not a number of 6"):
+        DialectDriver.from_settings(settings, FACTS, HandClock())
 
 
 @pytest.mark.parametrize(

@@ -8,7 +8,7 @@ from typing import NamedTuple
 
 from trunnion_drivers.dialect.checksum import ChecksumKind
 from trunnion_drivers.dialect.notation import Coding, Field, Part, parts_of
-from trunnion_drivers.dialect.numbers import Bytes, Digits, NumberFormat
+from trunnion_drivers.dialect.numbers import Digits, NumberFormat, binary
 
 CHECKSUM = "checksum"
 
@@ -116,7 +116,7 @@ def _format(field: Field, frame: Frame) -> NumberFormat:
             raise ValueError("expected a section `checksum`, since a message has a {checksum}")
         written_as = written_as or frame.checksum_as
     if frame.coding is Coding.BINARY:
-        return Bytes(written_as)
+        return binary(written_as)
     return Digits(written_as)
 
 

@@ -115,7 +115,8 @@ class Bytes(NumberFormat):
 
     def __init__(self, name: str) -> None:
         if name not in _STRUCT:
-            raise ValueError(f"expected one of {', '.join(_STRUCT)}, got {name!r}")
+            known = ", ".join(_STRUCT)
+            raise ValueError(f"expected one of {known}, bcd6, or dec4+30, got {name!r}")
         self._struct = struct.Struct(_STRUCT[name])
         self._is_whole = name[0] in "ui"
         self._name = name
@@ -131,3 +132,58 @@ class Bytes(NumberFormat):
     def decode(self, written: bytes) -> float:
         """Read bytes."""
         return float(self._struct.unpack(written)[0])
+
+
+class PackedDecimal(NumberFormat):
+    """Binary-coded decimal: `bcd6` holds six digits, two in a byte, the higher one first."""
+
+    def __init__(self, name: str) -> None:
+        self._digits = int(name.removeprefix("bcd"))
+        self.pattern = b"[%s]{%d}" % (_PACKED, self._digits // 2)
+
+    def encode(self, number: float) -> bytes:
+        """Write the number in halves of bytes."""
+        return bytes.fromhex(_decimal(number, self._digits))
+
+    def decode(self, written: bytes) -> float:
+        """Read halves of bytes."""
+        return float(written.hex())
+
+
+class OffsetDigits(NumberFormat):
+    """`dec4+30`: four bytes, one a digit, each the digit and 30 (hexadecimal), as in ASCII."""
+
+    def __init__(self, name: str) -> None:
+        digits, _, offset = name.removeprefix("dec").partition("+")
+        self._digits, self._offset = int(digits), int(offset or "0", 16)
+        if self._offset > 0xF6:
+            raise ValueError(f"expected an offset up to F6, got {name!r}")
+        low, high = self._offset, self._offset + 9
+        self.pattern = rb"[\x%02x-\x%02x]{%d}" % (low, high, self._digits)
+
+    def encode(self, number: float) -> bytes:
+        """Write a byte for each digit."""
+        return bytes(int(digit) + self._offset for digit in _decimal(number, self._digits))
+
+    def decode(self, written: bytes) -> float:
+        """Read a digit from each byte."""
+        return float("".join(str(byte - self._offset) for byte in written))
+
+
+_BCD = re.compile(r"bcd(?:2|4|6|8|10|12)")
+_DECIMAL = re.compile(r"dec[1-9](?:\+[0-9A-Fa-f]{2})?")
+_PACKED = b"".join(rb"\x%x0-\x%x9" % (tens, tens) for tens in range(10))
+
+
+def binary(name: str) -> NumberFormat:
+    """The format that a binary message names. Raises ValueError."""
+    if _BCD.fullmatch(name):
+        return PackedDecimal(name)
+    return OffsetDigits(name) if _DECIMAL.fullmatch(name) else Bytes(name)
+
+
+def _decimal(number: float, digits: int) -> str:
+    whole = round(number)
+    if not 0 <= whole < 10**digits:
+        raise DoesNotFit(f"{number:g} is not a number of {digits} decimal digits without a sign")
+    return f"{whole:0{digits}d}"
