@@ -167,6 +167,21 @@ def test_a_planner_that_died_is_asked_again_after_a_while_and_told_once_each(rig
     assert len(rig.desk.asked) == asked
 
 
+@pytest.mark.parametrize("step_s", [-3607.3, -0.9, 0.7, 86_411.9])
+def test_a_clock_that_was_set_has_it_planned_anew_once(rig: Rig, step_s: float) -> None:
+    rig.plan(GOOD)
+    asked = len(rig.desk.asked)
+    rig.clock.sleep(777.7)
+    rig.clock.step_utc(0.3)
+    rig.keeper.see_to_it(PLACE)
+    assert len(rig.desk.asked) == asked
+    rig.clock.step_utc(step_s)
+    for _ in range(3):
+        rig.keeper.see_to_it(PLACE)
+    assert len(rig.desk.asked) == asked + 1
+    assert rig.desk.asked[-1].now_s == rig.clock.utc_s()
+
+
 def test_a_plan_that_cannot_be_read_is_not_read_again_and_again(rig: Rig) -> None:
     rig.plan("{id: bad, target: sun, form: 2026}")
     asked = len(rig.desk.asked)

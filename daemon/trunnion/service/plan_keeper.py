@@ -23,6 +23,9 @@ if TYPE_CHECKING:
 SOON_S = 60.0
 """A contact that begins so soon counts as on after a start."""
 
+CLOCK_STEP_S = 0.5
+"""A clock that was set by more since has other contacts before and behind it."""
+
 AGAIN_AFTER_S = 15.0
 """After a planner that died, by want of memory for one, the plan is asked for again."""
 
@@ -72,6 +75,7 @@ class PlanKeeper:
         self._assignments: tuple[Assignment, ...] | None = None
         self._trouble: str | None = None
         self._again_s = inf
+        self._asked_offset_s: float | None = None
 
     @property
     def assignments(self) -> tuple[Assignment, ...] | None:
@@ -99,7 +103,7 @@ class PlanKeeper:
 
     def see_to_it(self, place: Joints, correction: CorrectionInForce | None = None) -> None:
         """Have a plan made from where the mount stands, if one is wanted; take up what is made."""
-        if self._is_wanted or self._clock.monotonic_s() >= self._again_s:
+        if self._is_wanted or self._is_due():
             self._ask(place, correction)
         outcome = self._planner.collect()
         if outcome is None:
@@ -120,8 +124,17 @@ class PlanKeeper:
         """Drop what is being made."""
         self._planner.close()
 
+    def _is_due(self) -> bool:
+        is_again = self._clock.monotonic_s() >= self._again_s
+        asked_s = self._asked_offset_s
+        return is_again or (asked_s is not None and abs(self._offset_s() - asked_s) > CLOCK_STEP_S)
+
+    def _offset_s(self) -> float:
+        return self._clock.utc_s() - self._clock.monotonic_s()
+
     def _ask(self, place: Joints, correction: CorrectionInForce | None) -> None:
         self._is_wanted, self._again_s = False, inf
+        self._asked_offset_s = self._offset_s()
         now_s = self._clock.utc_s()
         begun_by_s = now_s + SOON_S if self._is_hurried else None
         self._planner.ask(
