@@ -4,10 +4,10 @@ The joints do not arrive together, and how they are late depends on the mount; s
 clear only where every pair of angles between the two places is.
 """
 
-from math import asin, cos, degrees, radians, sin
+from math import asin, atan2, cos, degrees, radians, sin
 from typing import NamedTuple
 
-from trunnion.mount.clearance import Clearance, Sector
+from trunnion.mount.clearance import Circle, Clearance, Sector
 from trunnion.mount.joints import Joints
 from trunnion.mount.mount import Mount
 
@@ -54,7 +54,9 @@ def _is_patch_clear(patch: _Patch, clearance: Clearance) -> bool:
     mask = clearance.mask
     if mask is not None and patch.lower_deg < mask.highest_deg(patch.begin_deg, patch.end_deg):
         return False
-    return not any(_touches(patch, sector) for sector in clearance.keep_outs)
+    return not any(_touches(patch, sector) for sector in clearance.keep_outs) and not any(
+        _reaches(circle, patch) for circle in clearance.circles
+    )
 
 
 def _touches(patch: _Patch, sector: Sector) -> bool:
@@ -64,6 +66,29 @@ def _touches(patch: _Patch, sector: Sector) -> bool:
     is_begin_within = (patch.begin_deg - sector.from_azimuth_deg) % 360.0 <= width_deg
     span_deg = patch.end_deg - patch.begin_deg
     return is_begin_within or (sector.from_azimuth_deg - patch.begin_deg) % 360.0 <= span_deg
+
+
+def _reaches(circle: Circle, patch: _Patch) -> bool:
+    """Whether a circle reaches into a patch: from its middle to the patch's nearest place.
+
+    That is on the middle's own meridian, or on one of the two that end the patch.
+    """
+    span_deg = patch.end_deg - patch.begin_deg
+    if (circle.azimuth_deg - patch.begin_deg) % 360.0 <= span_deg:
+        nearest_deg = min(max(circle.elevation_deg, patch.lower_deg), patch.upper_deg)
+        return abs(circle.elevation_deg - nearest_deg) <= circle.radius_deg
+    return any(
+        circle.depth_deg(azimuth_deg, _nearest_deg(circle, azimuth_deg, patch)) >= 0.0
+        for azimuth_deg in (patch.begin_deg, patch.end_deg)
+    )
+
+
+def _nearest_deg(circle: Circle, azimuth_deg: float, patch: _Patch) -> float:
+    """The elevation on a meridian, within the patch, that is nearest to the circle's middle."""
+    elevation = radians(circle.elevation_deg)
+    ahead = cos(elevation) * cos(radians(azimuth_deg - circle.azimuth_deg))
+    foot_deg = degrees(atan2(sin(elevation), ahead))
+    return min(max(foot_deg, patch.lower_deg), patch.upper_deg)
 
 
 def _is_turned_box_clear(one: Joints, other: Joints, mount: Mount, clearance: Clearance) -> bool:

@@ -1,7 +1,7 @@
 """A clear way for the mount from one place to another: below nothing, through nothing.
 
 Straight there where that is clear; else one joint at a time, the first one while the second stands
-at a height from which the whole turn is clear.
+at a height from which the whole turn is clear; else the second one while the first stands aside.
 """
 
 from collections.abc import Iterator
@@ -9,11 +9,11 @@ from collections.abc import Iterator
 from trunnion.mount.clearance import Clearance
 from trunnion.mount.joints import Joints
 from trunnion.mount.motion import slew_time_s
-from trunnion.mount.mount import Mount
+from trunnion.mount.mount import JointLimits, Mount
 from trunnion.track.clear_box import is_box_clear
 
 VIA_STEP_DEG = 2.0
-"""Spacing of the heights at which a detour is tried."""
+"""Spacing of the heights, and of the places aside, at which a detour is tried."""
 
 
 class NoWay(ValueError):  # noqa: N818 - named for what was found
@@ -28,10 +28,15 @@ def transit(start: Joints, goal: Joints, mount: Mount, clearance: Clearance) -> 
     """
     if is_box_clear(start, goal, mount, clearance):
         return (goal,)
-    ways = [
-        way for way in _detours(start, goal, mount) if _is_way_clear(start, way, mount, clearance)
-    ]
-    if not ways:
+    for detours in (_over, _beside):
+        ways = [
+            way
+            for way in detours(start, goal, mount)
+            if _is_way_clear(start, way, mount, clearance)
+        ]
+        if ways:
+            break
+    else:
         raise NoWay(
             f"expected a clear way from {_place(start)} to {_place(goal)}, "
             "got none past floor, horizon mask and keep-outs"
@@ -51,20 +56,34 @@ def transit_time_s(start: Joints, waypoints: tuple[Joints, ...], mount: Mount) -
     return seconds
 
 
-def _detours(start: Joints, goal: Joints, mount: Mount) -> Iterator[tuple[Joints, ...]]:
-    lower_deg, upper_deg = mount.second.lower_deg, mount.second.upper_deg
-    heights = [start.second_deg, goal.second_deg, upper_deg]
-    height_deg = lower_deg
-    while height_deg < upper_deg:
-        heights.append(height_deg)
-        height_deg += VIA_STEP_DEG
-    for height_deg in heights:
+def _over(start: Joints, goal: Joints, mount: Mount) -> Iterator[tuple[Joints, ...]]:
+    """Ways on which the first joint turns while the second stands at one height."""
+    for height_deg in (start.second_deg, goal.second_deg, *_throughout(mount.second)):
         corners = (
             Joints(start.first_deg, height_deg),
             Joints(goal.first_deg, height_deg),
             goal,
         )
         yield tuple(_without_repeats(start, corners))
+
+
+def _beside(start: Joints, goal: Joints, mount: Mount) -> Iterator[tuple[Joints, ...]]:
+    """Ways on which the second joint turns while the first stands aside."""
+    for aside_deg in _throughout(mount.first):
+        corners = (
+            Joints(aside_deg, start.second_deg),
+            Joints(aside_deg, goal.second_deg),
+            goal,
+        )
+        yield tuple(_without_repeats(start, corners))
+
+
+def _throughout(joint: JointLimits) -> Iterator[float]:
+    yield joint.upper_deg
+    angle_deg = joint.lower_deg
+    while angle_deg < joint.upper_deg:
+        yield angle_deg
+        angle_deg += VIA_STEP_DEG
 
 
 def _without_repeats(start: Joints, corners: tuple[Joints, ...]) -> Iterator[Joints]:
