@@ -39,7 +39,7 @@ def test_a_station_with_sensors_senses(tmp_path: Path) -> None:
 
 def test_a_station_without_knows_its_clock_alone(tmp_path: Path) -> None:
     senses = senses_of(station_with(tmp_path, NO_WIND), SystemClock())
-    assert senses.now()[1:] == (None, None, None)
+    assert senses.now()[1:] == (None, None, None, None)
     assert (senses.now().clock_error_s is None) == (clock_error_s() is None)
     senses.close()
 

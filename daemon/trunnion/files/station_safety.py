@@ -72,6 +72,9 @@ class SafetySection(Section):
     """Seconds for which the beam must have been on target before transmitting is permitted."""
     keep_outs: tuple[KeepOutSection, ...] = ()
     """Boxes of the sky that the beam's centre never enters, nor crosses on its way."""
+    sun_keep_out_deg: Annotated[float, Field(gt=0, le=90)] | None = None
+    """Degrees that the beam's centre stays away from the Sun, by day; without it the Sun does not
+    matter."""
     reading_max_age_s: Annotated[float, Field(gt=0, le=10)] = 1.0
     """Seconds after which the mount's last reading is too old to move by: the mount is halted."""
     turn_max_lateness_s: Annotated[float, Field(gt=0, le=10)] = 0.5

@@ -15,7 +15,8 @@ class Situation(NamedTuple):
     `utc_s` and `mono_s` are the same instant on both clocks; `ordered` is the motion that really
     went to the mount in the turn before (None when it was halted or nothing was ordered);
     `assignments` are in order of time and do not overlap; `way_back` is the place inside to which a
-    mount may go that was found outside its limits, None without an operator's leave.
+    mount may go that was found outside its limits, None without an operator's leave
+    and while the Sun is out of the beam. `sun` is the Sun's azimuth and elevation (deg), if known.
     """
 
     utc_s: float
@@ -27,6 +28,7 @@ class Situation(NamedTuple):
     must_stow: bool = False
     is_stopped: bool = False
     way_back: Joints | None = None
+    sun: tuple[float, float] | None = None
 
 
 class Decision(NamedTuple):

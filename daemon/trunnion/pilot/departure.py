@@ -58,6 +58,7 @@ class Facts(NamedTuple):
     clearance: Clearance
     tolerance_deg: float
     timing: Timing = Timing()
+    sun_keep_out_deg: float | None = None
 
 
 def _way_s(start: Joints, goal: Joints, facts: Facts) -> float:

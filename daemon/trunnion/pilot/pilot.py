@@ -16,6 +16,7 @@ from trunnion.pilot.decision import Decision, Situation
 from trunnion.pilot.departure import Departure, Facts, Pause, plan_departure
 from trunnion.pilot.phase import Phase, Wish
 from trunnion.pilot.route import Route, is_at_rest_at
+from trunnion.pilot.sunlit import Sunlit
 from trunnion.sky.errors import SkyError
 from trunnion.sky.look import Look
 from trunnion.track.path import Assignment
@@ -65,6 +66,7 @@ class Pilot:
     """Decides, turn by turn, where the joints should be."""
 
     def __init__(self, facts: Facts) -> None:
+        self._sunlit = Sunlit(facts)
         self._facts = facts
         self._errand = _Errand(_Kind.HOLD)
         self._route: Route | None = None
@@ -76,6 +78,7 @@ class Pilot:
 
     def decide(self, now: Situation) -> Decision:
         """The demand of this turn, and how the contact that is on fares whatever is being done."""
+        self._facts = self._sunlit.facts(now.sun)
         scheduled = _scheduled(now)
         decision = self._decide(now, scheduled, self._elapsed_s(now.mono_s))
         if decision.look is not None or scheduled is None or scheduled.begin_s > now.utc_s:

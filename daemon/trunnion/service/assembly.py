@@ -137,7 +137,13 @@ def _turning(ground: _Ground, keeping: Keeping, planning: Planning) -> Turning:
     contacts = ContactLog(beam, recorder)
     manager = ServiceManagerReport(ground.notifier, station.safety.reading_max_age_s)
     observers = (transmission, contacts, recorder, manager, planning.departures)
-    pilot = Pilot(Facts(flown_mount_of(station), ground.limits.clearance, beam.tolerance_deg))
+    facts = Facts(
+        flown_mount_of(station),
+        ground.limits.clearance,
+        beam.tolerance_deg,
+        sun_keep_out_deg=ground.limits.sun_keep_out_deg,
+    )
+    pilot = Pilot(facts)
     control = ControlTurn(clock, link, pilot, Gate(ground.limits), observers)
     power = PowerCut(PowerJudge(ground.limits), link, teller.trouble)
     return Turning(link, senses, power, Pulse(), contacts, transmission, control)

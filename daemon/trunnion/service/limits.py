@@ -25,4 +25,5 @@ def safety_limits_of(station: StationFile, mount: Mount, clearance: Clearance) -
         wind_stow_gust_m_s=safety.wind_stow_gust_m_s,
         wind_stow_mean_m_s=safety.wind_stow_mean_m_s,
         heartbeat_max_age_s=safety.heartbeat_max_age_s,
+        sun_keep_out_deg=safety.sun_keep_out_deg,
     )

@@ -29,6 +29,7 @@ from trunnion.service.link.direct import DirectLink
 from trunnion.service.power_cut import PowerCut
 from trunnion.service.score import Score, combined
 from trunnion.service.senses import FAIR
+from trunnion.service.sun_watch import sun_watch_of
 from trunnion.service.surroundings import HARDWARE_STOP, world_of
 from trunnion.service.turn import ControlTurn, Observer, Orders, Turn
 from trunnion.track.path import Assignment
@@ -66,7 +67,14 @@ class Rehearsal:
         self._contacts = ContactLog(beam_of(station), self)
         self.mount, self.clearance = mount_of(station), clearance_of(station)
         tolerance_deg = beam_of(station).tolerance_deg
-        pilot = Pilot(Facts(flown_mount_of(station), self.clearance, tolerance_deg))
+        facts = Facts(
+            flown_mount_of(station),
+            self.clearance,
+            tolerance_deg,
+            sun_keep_out_deg=station.safety.sun_keep_out_deg,
+        )
+        self._sun = sun_watch_of(station, self._clock)
+        pilot = Pilot(facts)
         limits = safety_limits_of(station, self.mount, self.clearance)
         gate = Gate(limits)
         self._power = PowerCut(PowerJudge(limits), self._link, _tell_nobody)
@@ -110,7 +118,8 @@ class Rehearsal:
         status = self._link.status
         if status.stop_pressed:
             self._stop(HARDWARE_STOP)
-        return world_of(self._latched, status, lateness_s=0.0, sensed=FAIR)
+        sun = self._sun.direction(clock_error_s=0.0) if self._sun is not None else None
+        return world_of(self._latched, status, lateness_s=0.0, sensed=FAIR._replace(sun=sun))
 
     def _stop(self, cause: str) -> None:
         """Latch, as the daemon does; nobody resets it in a rehearsal."""

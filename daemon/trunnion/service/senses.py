@@ -1,4 +1,4 @@
-"""What the station senses beside its mount: wind, an outside heartbeat, how good its clock is."""
+"""What the station senses beside its mount: wind, a heartbeat, its clock's quality, the Sun."""
 
 from typing import NamedTuple, Protocol
 
@@ -6,6 +6,7 @@ from trunnion.files.station import StationFile
 from trunnion.service.clock import Clock
 from trunnion.service.clock_trust import clock_error_s
 from trunnion.service.heartbeat_file import HeartbeatFile
+from trunnion.service.sun_watch import SunWatch, sun_watch_of
 from trunnion.service.wind_gauge import Wind, WindGauge
 from trunnion.service.wind_watch import WindWatch
 from trunnion.service.winds import build_wind
@@ -18,6 +19,7 @@ class Sensed(NamedTuple):
     wind_gust_m_s: float | None = None
     wind_mean_m_s: float | None = None
     heartbeat_age_s: float | None = None
+    sun: tuple[float, float] | None = None
 
 
 FAIR = Sensed(clock_error_s=0.0, wind_gust_m_s=0.0, wind_mean_m_s=0.0, heartbeat_age_s=0.0)
@@ -44,7 +46,10 @@ class WindSource(Protocol):
 class Senses:
     """Asked once a turn; no method raises or waits."""
 
-    def __init__(self, wind: WindSource | None, heartbeat: HeartbeatFile | None) -> None:
+    def __init__(
+        self, wind: WindSource | None, heartbeat: HeartbeatFile | None, sun: SunWatch | None = None
+    ) -> None:
+        self._sun = sun
         self._wind = wind
         self._heartbeat = heartbeat
 
@@ -56,11 +61,13 @@ class Senses:
     def now(self) -> Sensed:
         """What is sensed at this instant."""
         wind = self._wind.wind() if self._wind is not None else None
+        error_s = clock_error_s()
         return Sensed(
-            clock_error_s(),
+            error_s,
             wind.gust_m_s if wind is not None else None,
             wind.mean_m_s if wind is not None else None,
             self._heartbeat.age_s() if self._heartbeat is not None else None,
+            self._sun.direction(error_s) if self._sun is not None else None,
         )
 
     def close(self) -> None:
@@ -70,9 +77,10 @@ class Senses:
 
 
 def senses_of(station: StationFile, clock: Clock) -> Senses:
-    """The station's sensors, which are read from now on. Raises FileProblems."""
+    """The station's sensors, which are read from now on. Raises FileProblems, SkyError."""
     source, path = build_wind(station, clock), station.files.heartbeat
-    wind = None
+    wind, sun = None, sun_watch_of(station, clock)
     if source is not None:
         wind = WindWatch(WindGauge(source, clock, station.safety.wind_max_age_s))
-    return Senses(wind, None if path is None else HeartbeatFile(path, clock))
+    heartbeat = None if path is None else HeartbeatFile(path, clock)
+    return Senses(wind, heartbeat, sun)

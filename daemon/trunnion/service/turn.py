@@ -64,6 +64,7 @@ class ControlTurn:
         self._observers = observers
         self._ordered: Motion | None = None
         self._must_stow = False
+        self._way_out: Joints | None = None
 
     def run(self, orders: Orders, look_around: Callable[[], World]) -> Turn:
         """Do one turn now."""
@@ -80,13 +81,15 @@ class ControlTurn:
                 Wish.HOLD if orders.assignments is None else orders.wish,
                 self._must_stow,
                 world.emergency is not None,
-                orders.way_back,
+                orders.way_back or self._way_out,
+                world.sun,
             )
         )
         verdict = self._gate.judge(mono_s, decision.demand, reading, world)
         self._link.submit(verdict.order)
         self._ordered = verdict.order.motion if isinstance(verdict.order, Move) else None
         self._must_stow = verdict.wants_stow
+        self._way_out = verdict.way_out
         turn = Turn(utc_s, mono_s, reading, world, decision, verdict)
         for observer in self._observers:
             observer.note(turn)
