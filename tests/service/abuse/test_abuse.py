@@ -13,7 +13,7 @@ from pathlib import Path
 
 import pytest
 
-from tests.end_to_end.station import TRUNNION, Station
+from tests.end_to_end.station import Station
 from trunnion.service.control.client import ControlClient
 from trunnion.service.control.errors import RequestFailed
 from trunnion.service.records.queries import Records
@@ -174,7 +174,7 @@ def test_a_flood_of_stops_and_resets_ends_in_the_stop_that_came_last(
     ]
     for each in crowd:
         each.start()
-    time.sleep(4.0)
+    time.sleep(2.0)
     is_over.set()
     for each in crowd:
         each.join()
@@ -228,25 +228,6 @@ def test_a_station_file_that_is_weakened_while_stopped_lifts_nothing(
     finally:
         again.kill()
         again.wait()
-
-
-def test_a_second_station_file_of_the_same_mount_moves_nothing(
-    station: Station, daemon: subprocess.Popen[str]
-) -> None:
-    other = station.folder / "other.yaml"
-    text = station.file.read_text()
-    assert "control_socket: control.sock" in text
-    other.write_text(text.replace("control_socket: control.sock", "control_socket: other.sock"))
-    second = subprocess.Popen([*TRUNNION, "run", str(other)], stderr=subprocess.PIPE, text=True)
-    try:
-        _, told = second.communicate(timeout=20.0)
-    finally:
-        second.kill()
-        second.wait()
-    assert second.returncode == 1
-    assert "another daemon" in told
-    assert station.wait_for_phase("tracking")["emergency_stop"] is None
-    assert daemon.poll() is None
 
 
 def test_killed_again_and_again_it_leaves_readable_records_and_takes_the_contact_up(
