@@ -63,6 +63,16 @@ def test_check_finds_a_driver_that_cannot_be_built(station: Path) -> None:
     assert "did you mean 'simulator'" in done.stderr
 
 
+def test_check_warns_of_a_sun_that_will_stand_over_stow(station: Path) -> None:
+    text = station.read_text().replace("stow_deg: [0, 88]", "stow_deg: [0, 72]")
+    station.write_text(text.replace("sun_keep_out_deg: null", "sun_keep_out_deg: 5"))
+    done = trunnion("check", station, *MORNING)
+    assert done.exit_code == 0
+    assert "warning: the Sun comes within 5° of the stow position" in " ".join(done.stdout.split())
+    told = json.loads(trunnion("check", station, *MORNING, "--json").stdout)
+    assert len(told["warnings"]) == 1
+
+
 def test_a_time_that_is_none_is_wrong_usage(station: Path) -> None:
     done = trunnion("check", station, "--now", "tomorrow")
     assert done.exit_code == 2

@@ -1,14 +1,17 @@
 """Notes of the sky on a plan: an operator's warnings, each provoked by a station or a plan."""
 
+import re
 import shutil
+from math import cos, radians
 from pathlib import Path
 
 import pytest
 
 from trunnion.files.draft import draft_plan
+from trunnion.files.station import load_station
 from trunnion.service.briefing import brief
 from trunnion.service.briefing_order import BriefingOrder
-from trunnion.service.sky_notes import sky_notes
+from trunnion.service.sky_notes import sky_notes, sun_over_stow
 from trunnion.service.targets import TargetBook
 from trunnion.service.viewpoint import viewpoint_of
 from trunnion.sky.events import in_shadow
@@ -75,3 +78,38 @@ def test_who_looks_is_told_of_the_shadow(folder: Path) -> None:
     ]
     (folder / "plan.yaml").write_text(draft_plan("QUILLON-1", dark[:1]))
     assert any(each.startswith("in the Earth's shadow from ") for each in notes(folder))
+
+
+def test_time_lost_to_the_circle_round_the_sun_is_told(folder: Path) -> None:
+    briefing = brief(BriefingOrder(folder / "station.yaml", None, NOW_S))
+    (by_day,) = (each for each in briefing.contacts if each.contact.target == "sun")
+    sun = Sun(viewpoint_of(briefing.station))
+    middle_s = 0.5 * (by_day.contact.from_s + by_day.contact.until_s)
+    there = sun.look(middle_s)
+    plan = f"fixed:{there.azimuth_deg:.3f},{there.elevation_deg:.3f}"
+    (folder / "plan.yaml").write_text(draft_plan(plan, [(middle_s - 3000.0, middle_s + 3000.0)]))
+    assert not any("circle" in each for each in notes(folder))
+    changed(folder / "station.yaml", "sun_keep_out_deg: null", "sun_keep_out_deg: 5")
+    (told,) = (each for each in notes(folder) if "circle" in each)
+    match = re.fullmatch(r"about (\d+) s are lost to the circle of 5° round the Sun, from .*", told)
+    assert match is not None
+    # ten degrees at 15.04 deg/h (the Sun's diurnal motion) times the cosine of its declination
+    assert int(match[1]) == pytest.approx(10.0 / (15.04 * cos(radians(21.8))) * 3600.0, rel=0.01)
+
+
+@pytest.mark.parametrize(
+    ("stow", "is_told"),
+    [
+        ("[0, 72]", True),  # due north at -42.137: declination 90 - 72 - 42.137 = -24.1
+        ("[0, 88]", False),  # -40.1
+        ("[0, 77]", False),  # -29.1, beyond 23.44 + 5
+        ("[0, 75.8]", True),  # -27.9
+        ("[180, 30]", False),  # near the pole
+    ],
+)
+def test_a_stow_that_the_sun_comes_near_is_told(folder: Path, stow: str, *, is_told: bool) -> None:
+    file = folder / "station.yaml"
+    changed(file, "stow_deg: [0, 88]", f"stow_deg: {stow}")
+    assert not list(sun_over_stow(load_station(file)))
+    changed(file, "sun_keep_out_deg: null", "sun_keep_out_deg: 5")
+    assert bool(list(sun_over_stow(load_station(file)))) == is_told

@@ -44,7 +44,7 @@ def check(
     from trunnion.service.clock import SystemClock
     from trunnion.service.drivers import build_driver
     from trunnion.service.plan_words import FASTER, is_worth_comparing, plan_words
-    from trunnion.service.sky_notes import sky_notes
+    from trunnion.service.sky_notes import sky_notes, sun_over_stow
     from trunnion.service.winds import build_wind
 
     if safety:
@@ -62,10 +62,13 @@ def check(
     faster = brief(order, FASTER) if is_worth_comparing(briefing) else None
     sky, ways = sky_notes(briefing), plan_words(briefing, faster)
     notes = {name: (*words, *sky.get(name, ())) for name, words in ways.items()}
+    warnings = tuple(sun_over_stow(briefing.station))
     if as_json:
-        print_json(_plain(briefing, notes))
+        print_json({**_plain(briefing, notes), "warnings": list(warnings)})
     else:
         _print(briefing, notes)
+        for sentence in warnings:
+            print_text(f"warning: {sentence}")
     if not all(each.is_served for each in briefing.contacts):
         raise typer.Exit(FAILED)
 

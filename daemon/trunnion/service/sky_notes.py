@@ -4,9 +4,12 @@ Nothing here keeps a contact from being flown; an operator wants to know of it b
 """
 
 from collections.abc import Iterator, Mapping
+from math import asin, degrees
 
 from trunnion.files.station import StationFile
 from trunnion.files.station_sky import RefractionModel
+from trunnion.mount.sphere import unit_vector
+from trunnion.service.antenna import mount_of
 from trunnion.service.briefing import Briefing
 from trunnion.service.targets import TargetBook
 from trunnion.service.viewpoint import viewpoint_of
@@ -17,6 +20,9 @@ from trunnion.sky.look import Target
 from trunnion.sky.sun import Sun
 from trunnion.sky.trust import doubts, expected_error_deg
 from trunnion.sky.viewpoint import Viewpoint
+
+ECLIPTIC_DEG = 23.44
+"""Obliquity of the ecliptic (IAU 2006, in this century)."""
 
 SUN_RADIUS_DEG = 0.27
 """Of its disc: it makes noise from half a beam and that much off the boresight (geometry)."""
@@ -59,12 +65,42 @@ def _trust(target: Target, span: Span, station: StationFile) -> Iterator[str]:
         )
 
 
+def sun_over_stow(station: StationFile) -> Iterator[str]:
+    """Whether the Sun's circle covers the stow position at some time of the year.
+
+    In a year the Sun comes to every declination as far from the equator as the ecliptic is.
+    """
+    kept_deg = station.safety.sun_keep_out_deg
+    if kept_deg is None:
+        return
+    mount = mount_of(station)
+    azimuth_deg, elevation_deg = mount.hinges.boresight(mount.stow)
+    pole = unit_vector(0.0, station.site.latitude_deg)
+    stow = unit_vector(azimuth_deg, elevation_deg)
+    declination_deg = degrees(asin(sum(a * b for a, b in zip(pole, stow, strict=True))))
+    if abs(declination_deg) <= ECLIPTIC_DEG + kept_deg and elevation_deg >= -kept_deg:
+        yield (
+            f"the Sun comes within {kept_deg:g}° of the stow position at some time of the year; "
+            "then the mount cannot stay there or go there: choose another stow position, "
+            f"of a declination beyond {ECLIPTIC_DEG + kept_deg:.1f}°"
+        )
+
+
 def _sun(target: Target, span: Span, view: Viewpoint, station: StationFile) -> Iterator[str]:
     if isinstance(target, Sun):
         return
     within_deg = 0.5 * station.antenna.half_power_beamwidth_deg + SUN_RADIUS_DEG
     for each in sun_near(target, view, span.begin_s, span.end_s, within_deg):
         yield f"the Sun is within {within_deg:.1f}° of the boresight {_from_until(each)}"
+    kept_deg = station.safety.sun_keep_out_deg
+    if kept_deg is None:
+        return
+    for each in sun_near(target, view, span.begin_s, span.end_s, kept_deg):
+        lost_s = each.end_s - each.begin_s
+        yield (
+            f"about {lost_s:.0f} s are lost to the circle of {kept_deg:g}° round the Sun, "
+            f"{_from_until(each)}"
+        )
 
 
 def _shadow(target: Target, span: Span, view: Viewpoint, station: StationFile) -> Iterator[str]:
