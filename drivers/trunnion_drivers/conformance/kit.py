@@ -21,11 +21,13 @@ from trunnion_drivers.conformance.watch import (
     error_deg,
     has_come_to_rest,
     is_still,
+    is_still_at_first,
     lasted_s,
     move_and_read,
     moved,
     part_way_s,
     replaced,
+    rest_until_braked,
     settle,
     still_s,
 )
@@ -170,4 +172,24 @@ class DriverConformance:
             rig.driver.cut_power()
             rig.clock.sleep(still_s(rig))
             assert not rig.is_powered()
+            assert rig.is_braked is None or rig.is_braked()
             assert has_come_to_rest(rig)
+
+    def test_a_brake_holds_what_rests_and_lets_go_first(self, rig: Rig) -> None:
+        come_home(rig)
+        assert rig.driver.capabilities.has_brake == (rig.is_braked is not None)
+        if rig.is_braked is not None:
+            assert not rig.is_braked()
+            rig.driver.move(moved(rig.home, 0, 4.7))
+            rig.clock.sleep(part_way_s(rig, 4.7))
+            rig.driver.halt()
+            rig.driver.read()
+            assert not rig.is_braked()
+            rest_until_braked(rig)
+            assert rig.is_braked()
+            assert is_still(rig)
+            rig.driver.move(rig.home)
+            assert is_still_at_first(rig)
+            settle(rig, rig.home)
+            assert not rig.is_braked()
+            assert error_deg(rig.driver.read(), rig.home) <= rig.accuracy_deg

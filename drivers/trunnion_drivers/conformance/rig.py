@@ -17,8 +17,8 @@ class Rig:
     motion of 5° in either joint and either sense is harmless.
 
     `pull` takes the link away and `plug` brings it back. `stop_input` presses (True) and releases
-    the hardware stop, `is_powered` tells whether the actuators have power: None where there is no
-    such thing, which the driver's capabilities must agree with.
+    the hardware stop, `is_powered` tells whether the actuators have power, `is_braked` whether the
+    brake holds: None where there is no such thing, which the driver's capabilities must agree with.
     """
 
     driver: Driver
@@ -32,3 +32,4 @@ class Rig:
     plug: Callable[[], None]
     stop_input: Callable[[bool], None] | None = None
     is_powered: Callable[[], bool] | None = None
+    is_braked: Callable[[], bool] | None = None

@@ -20,15 +20,17 @@ def come_home(rig: Rig) -> None:
 def settle(rig: Rig, goal: DriverMotion) -> None:
     """Order this goal again and again, as a daemon would, until the mount rests there.
 
-    It is given twice the time that its rates and accelerations ask for.
+    It is given twice the time that its rates and accelerations ask for, after its brake let go.
     """
+    begin_s = rig.clock.monotonic_s() + _letting_go_s(rig)
     reading = rig.driver.read()
-    until_s = rig.clock.monotonic_s() + 2.0 * _longest_slew_s(rig, reading, goal) + 5 * rig.lag_s
+    until_s = begin_s + 2.0 * _longest_slew_s(rig, reading, goal) + 5 * rig.lag_s
     arrivals = 0
     while arrivals < _ARRIVALS and rig.clock.monotonic_s() < until_s + 1.0:
         rig.driver.move(goal)
         rig.clock.sleep(_RENEWAL_S)
         is_there = error_deg(rig.driver.read(), goal) <= rig.accuracy_deg
+        is_there &= rig.clock.monotonic_s() > begin_s
         arrivals = arrivals + 1 if is_there else 0
 
 
@@ -65,6 +67,29 @@ def is_still(rig: Rig) -> bool:
     )
 
 
+def rest_until_braked(rig: Rig) -> None:
+    """Halt and read as a daemon does, until the brake holds or has had all the time it needs."""
+    timing = rig.driver.brake_timing
+    stopping_s = max(
+        j.rate_deg_s / j.acceleration_deg_s2 for j in (rig.facts.first, rig.facts.second)
+    )
+    until_s = rig.clock.monotonic_s() + 2.0 * (rig.lag_s + stopping_s + timing.still_s) + 1.0
+    while rig.is_braked and not rig.is_braked() and rig.clock.monotonic_s() < until_s:
+        rig.driver.halt()
+        rig.clock.sleep(_RENEWAL_S)
+        rig.driver.read()
+
+
+def is_still_at_first(rig: Rig) -> bool:
+    """Whether the mount stays where it is until its brake has had the time to let go."""
+    before = rig.driver.read()
+    rig.clock.sleep(0.5 * rig.driver.brake_timing.settle_s)
+    after = rig.driver.read()
+    return error_deg(after, DriverMotion(before.first_deg, before.second_deg, 0.0, 0.0)) <= (
+        2 * rig.accuracy_deg
+    )
+
+
 def has_come_to_rest(rig: Rig) -> bool:
     """Whether the mount is still once it had the time to stop from its highest rate."""
     joints = (rig.facts.first, rig.facts.second)
@@ -89,6 +114,10 @@ def part_way_s(rig: Rig, by_deg: float) -> float:
     joint = rig.facts.first
     quickest_s = max(by_deg / joint.rate_deg_s, 2.0 * sqrt(by_deg / joint.acceleration_deg_s2))
     return 0.4 * quickest_s
+
+
+def _letting_go_s(rig: Rig) -> float:
+    return rig.driver.brake_timing.settle_s if rig.driver.capabilities.has_brake else 0.0
 
 
 def _longest_slew_s(rig: Rig, reading: DriverReading, goal: DriverMotion) -> float:

@@ -9,7 +9,8 @@ from collections.abc import Mapping
 from math import isfinite
 from typing import Self
 
-from trunnion_drivers.interface.errors import Garbled, WrongState
+from trunnion_drivers.interface.brake import Brake, BrakeTiming
+from trunnion_drivers.interface.errors import Garbled, Refused, WrongState
 from trunnion_drivers.interface.values import (
     Capabilities,
     Clock,
@@ -24,12 +25,15 @@ class Driver(ABC):
 
     capabilities: Capabilities = Capabilities()
     """Told by the class, or by the instance where its settings decide."""
+    brake_timing: BrakeTiming = BrakeTiming()
+    """The times of the brake, where the capabilities tell of one."""
 
     def __init__(self, facts: MountFacts, clock: Clock) -> None:
         self._facts = facts
         self._clock = clock
         self._is_open = False
         self._stands_at: DriverReading | None = None
+        self._brake: Brake | None = None
 
     @classmethod
     @abstractmethod
@@ -49,6 +53,7 @@ class Driver(ABC):
         if not self._is_open:
             self._open()
             self._is_open, self._stands_at = True, None
+            self._brake = Brake(self.brake_timing) if self.capabilities.has_brake else None
 
     def close(self) -> None:
         """Close the link; idempotent, never raises for a link that is already gone."""
@@ -57,35 +62,51 @@ class Driver(ABC):
             self._close()
 
     def read(self) -> DriverReading:
-        """Ask the mount where it is. Raises LinkLost, NoReply, Garbled, WrongState."""
+        """Ask the mount where it is. Raises LinkLost, NoReply, Garbled, WrongState.
+
+        Of a mount that rests after a halt the brake is engaged here.
+        """
         self._must_be_open("read")
         reading = self._read()
         if not (isfinite(reading.first_deg) and isfinite(reading.second_deg)):
             raise Garbled(f"expected two finite joint angles, got {reading[1:3]}")
         self._stands_at = reading
-        return reading
+        return self._held_at_rest(reading)
 
     def move(self, motion: DriverMotion) -> None:
         """Send the joints there. Raises LinkLost, NoReply, Garbled, Refused, WrongState.
 
         Angles outside the travel are refused here too, whoever asks; but a joint that stands
-        outside may be sent anywhere between there and the travel.
+        outside may be sent anywhere between there and the travel. A brake is released first; what
+        is ordered before it has let go is not sent, the next order is.
         """
         self._must_be_open("move")
         self._must_be_within_travel(motion)
-        self._move(motion)
+        if self._has_let_go():
+            self._move(motion)
 
     def halt(self) -> None:
         """Bring both joints to rest at full deceleration; may be repeated."""
         self._must_be_open("halt")
+        if self._brake is not None:
+            self._brake.note_halt()
         self._halt()
 
     def cut_power(self) -> None:
-        """Remove power from the actuators, where the hardware has such an output."""
+        """Remove power from the actuators, where the hardware has such an output.
+
+        The brake is engaged behind it, whether the mount rests or not, and even if the power could
+        not be cut.
+        """
         if not self.capabilities.cuts_power:
             raise WrongState("this driver has no power-cut output")
         self._must_be_open("cut power")
-        self._cut_power()
+        try:
+            self._cut_power()
+        finally:
+            if self._brake is not None:
+                self._brake.note_halt()
+                self._engage(self._brake)
 
     def halt_at_once(self) -> bool:
         """Send the stop now, even while another call is under way in another thread.
@@ -119,6 +140,39 @@ class Driver(ABC):
 
     def _cut_power(self) -> None:
         raise WrongState("this driver says it can cut power, and does not")
+
+    def _engage_brake(self) -> None:
+        raise WrongState("this driver says it has a brake, and does not engage it")
+
+    def _release_brake(self) -> None:
+        raise WrongState("this driver says it has a brake, and does not release it")
+
+    def _has_let_go(self) -> bool:
+        """Whether no brake holds a motion back; one that does is released."""
+        brake = self._brake
+        if brake is None:
+            return True
+        brake.note_motion()
+        if brake.must_be_released:
+            self._release_brake()
+            brake.note_release(self._clock.monotonic_s())
+        return brake.has_let_go(self._clock.monotonic_s())
+
+    def _held_at_rest(self, reading: DriverReading) -> DriverReading:
+        """Engage the brake of a mount that rests; a refusal is told as a fault, and tried again."""
+        brake = self._brake
+        if brake is not None and brake.is_due(reading):
+            try:
+                self._engage(brake)
+            except Refused as error:
+                return reading._replace(fault=reading.fault or f"the brake is not engaged: {error}")
+        return reading
+
+    def _engage(self, brake: Brake) -> None:
+        """An order that failed may have been obeyed: whether it holds is not known then."""
+        brake.note_doubt()
+        self._engage_brake()
+        brake.note_engagement()
 
     def _must_be_open(self, call: str) -> None:
         if not self._is_open:

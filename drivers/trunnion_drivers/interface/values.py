@@ -71,5 +71,6 @@ class Capabilities:
 
     follows_rate: bool = False
     cuts_power: bool = False
+    has_brake: bool = False
     reports_stop_input: bool = False
     reports_limits: bool = False

@@ -37,7 +37,10 @@ class SimulatorDriver(SteeredDriver):
             cuts_power=True,
             reports_stop_input=True,
             reports_limits=True,
+            has_brake=settings.brake is not None,
         )
+        if settings.brake is not None:
+            self.brake_timing = settings.brake.timing()
         now_s = clock.monotonic_s()
         self._settings = settings
         self._machine = SimulatedMachine(settings, facts, now_s)
@@ -69,6 +72,16 @@ class SimulatorDriver(SteeredDriver):
         """Whether the motors have power."""
         self._now()
         return self._machine.is_powered
+
+    @property
+    def is_braked(self) -> bool:
+        """Whether the brake is engaged."""
+        return self._machine.is_braked
+
+    @property
+    def was_forced(self) -> bool:
+        """Whether a motor has ever worked against the brake."""
+        return self._machine.was_forced
 
     def _open(self) -> None:
         now_s, faults = self._now()
@@ -105,6 +118,14 @@ class SimulatorDriver(SteeredDriver):
     def _cut_power(self) -> None:
         if self._reaches_the_mount(is_motion=False):
             self._machine.cut_power(self._clock.monotonic_s(), is_cut=True)
+
+    def _engage_brake(self) -> None:
+        if self._reaches_the_mount(is_motion=False):
+            self._machine.brake(self._clock.monotonic_s(), is_engaged=True)
+
+    def _release_brake(self) -> None:
+        if self._reaches_the_mount(is_motion=True):
+            self._machine.brake(self._clock.monotonic_s(), is_engaged=False)
 
     def _reaches_the_mount(self, *, is_motion: bool) -> bool:
         _, faults = self._now()

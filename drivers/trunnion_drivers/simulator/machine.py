@@ -1,8 +1,9 @@
 """The whole simulated machine, steel with encoders, as the station file describes it.
 
 It models rate and acceleration limits, backlash, static friction, run-on, limit switches, hard
-stops, wind that bends the antenna, encoders, latency, a watchdog, and the faults of `faults.py`. It
-does not model vibration, temperature, brakes that slip, nor a motor whose torque runs out.
+stops, wind that bends the antenna, encoders, latency, a watchdog, a brake that holds at once and
+against any motor, and the faults of `faults.py`. It does not model vibration, temperature, brakes
+that slip, nor a motor whose torque runs out.
 """
 
 from typing import NamedTuple
@@ -12,7 +13,7 @@ from trunnion_drivers.interface.errors import BadSettings, SettingProblem
 from trunnion_drivers.interface.values import DriverMotion, JointFacts, MountFacts
 from trunnion_drivers.simulator.course import Bounds
 from trunnion_drivers.simulator.encoder import Encoder
-from trunnion_drivers.simulator.faults import HEALTHY, Faults
+from trunnion_drivers.simulator.faults import HEALTHY, Faults, JointFault
 from trunnion_drivers.simulator.joint import JointBuild, JointState
 from trunnion_drivers.simulator.mount import SimulatedMount
 from trunnion_drivers.simulator.sensor import Sensor, both_deg
@@ -48,12 +49,14 @@ class SimulatedMachine:
         self._sensors = _sensor(settings, 1), _sensor(settings, 2)
         self._faults = HEALTHY
         self._is_cut = False
+        self.is_braked = False
+        self.was_forced = False
 
     def suffer(self, mono_s: float, faults: Faults) -> None:
         """Let this be wrong from now on."""
         if faults is not self._faults:
             self._faults = faults
-            self._mount.suffer(mono_s, faults.joints)
+            self._mount.suffer(mono_s, self._joint_faults)
             self._set_power(mono_s)
             if faults.stop_pressed:
                 self._mount.halt(mono_s)
@@ -61,6 +64,7 @@ class SimulatedMachine:
     def command(self, mono_s: float, command: Command) -> None:
         """Tell the controller, which does not listen while its stop is pressed."""
         if not self._faults.stop_pressed:
+            self.was_forced |= self.is_braked
             self._mount.command(mono_s, command)
 
     def halt(self, mono_s: float) -> None:
@@ -71,6 +75,17 @@ class SimulatedMachine:
         """Take the power from the motors, or give it back."""
         self._is_cut = is_cut
         self._set_power(mono_s)
+
+    def brake(self, mono_s: float, *, is_engaged: bool) -> None:
+        """Engage or release the brake; powered motors that move are forced by it."""
+        is_moving = self.true_motion(mono_s)[2:] != (0.0, 0.0)
+        self.was_forced |= is_engaged and is_moving and self.is_powered
+        self.is_braked = is_engaged
+        self._mount.suffer(mono_s, self._joint_faults)
+
+    @property
+    def _joint_faults(self) -> tuple[JointFault, JointFault]:
+        return (JointFault.JAMMED, JointFault.JAMMED) if self.is_braked else self._faults.joints
 
     @property
     def is_powered(self) -> bool:

@@ -4,6 +4,7 @@ from typing import Annotated
 
 from pydantic import Field
 
+from trunnion_drivers.brake import BrakeSettings
 from trunnion_drivers.control.command import CommandMode
 from trunnion_drivers.control.settings import ControlSettings
 from trunnion_drivers.settings import Settings
@@ -53,13 +54,15 @@ class SimulatorSettings(MachineSettings):
     """The `driver:` section of a station whose mount is simulated.
 
     `command` is what the mount understands, and `control` tunes the laws that steer it. `memory`
-    names a file that keeps the angles while no daemon runs. On the link, `order_loss` and
+    names a file that keeps the angles while no daemon runs; with `brake` there is one, with its
+    times. On the link, `order_loss` and
     `reply_loss` are the shares of orders and answers that vanish. `faults` is a list of episodes.
     """
 
     command: Annotated[CommandMode, Field(strict=False)] = CommandMode.POSITION
     control: ControlSettings = ControlSettings()
     memory: Annotated[str, Field(min_length=1)] | None = None
+    brake: BrakeSettings | None = None
     order_loss: Share = 0.0
     reply_loss: Share = 0.0
     faults: tuple[EpisodeSettings, ...] = ()
