@@ -122,6 +122,14 @@ def test_until_the_whole_plan_is_known_none_is_ended(tmp_path: Path, rig: Rig) -
     assert again.in_force == given
 
 
+def test_while_the_plan_is_being_made_one_is_asked_to_come_again(tmp_path: Path, rig: Rig) -> None:
+    rig.assignments = []
+    corrections = started_anew(tmp_path, rig, is_plan_whole=False)
+    with pytest.raises(NothingToCorrect, match="still being made"):
+        corrections.give(BIAS, is_kept=False)
+    assert corrections.in_force is None
+
+
 def test_a_kept_one_outlasts_restarts_and_a_cleared_one_does_not(tmp_path: Path, rig: Rig) -> None:
     first = started_anew(tmp_path, rig)
     first.give(BIAS, is_kept=True)

@@ -30,7 +30,8 @@ class Log:
 
     def write(self, stop: EmergencyStop) -> str | None:
         self.said.append("write")
-        self.kept = stop
+        if self.disk_trouble is None:
+            self.kept = stop
         return self.disk_trouble
 
     def clear(self) -> str | None:
@@ -89,6 +90,14 @@ def test_a_disk_that_fails_leaves_it_latched_and_is_told() -> None:
     desk.stop("button")
     assert desk.latched is not None
     assert log.said[-1] == "the stop holds, but a restart would forget it: no space left"
+
+
+def test_a_disk_that_keeps_the_stop_but_not_its_cause_is_told_apart() -> None:
+    log = Log()
+    desk = desk_of(log)
+    log.disk_trouble, log.kept = "no space left", EmergencyStop("a damaged file", 0.0)
+    desk.stop("button")
+    assert log.said[-1] == "the stop holds, but a restart would forget its cause: no space left"
 
 
 def test_a_reset_lifts_it_on_disk_before_the_link_is_released() -> None:

@@ -86,6 +86,8 @@ class Corrections:
 
     def _next(self) -> Assignment:
         ahead = self._ahead()
+        if not ahead and not self._is_plan_whole():
+            raise NothingToCorrect("the plan is still being made: ask again in a few seconds")
         if not ahead:
             raise NothingToCorrect("no contact is on or ahead: keep it, or wait for a contact")
         return ahead[0]

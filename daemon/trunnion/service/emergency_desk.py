@@ -79,7 +79,8 @@ class EmergencyDesk:
             trouble = self._latch.write(self._stop)
         self._tell(f"emergency stop: {cause}")
         if trouble:
-            self._tell(f"the stop holds, but a restart would forget it: {trouble}")
+            lost = "it" if self._latch.read() is None else "its cause"
+            self._tell(f"the stop holds, but a restart would forget {lost}: {trouble}")
 
     def reset(self, still_there: str | None) -> None:
         """Lift the stop; orders no motion. Raises StopNotLifted while its cause is still there.

@@ -77,7 +77,7 @@ def test_a_stop_that_no_disk_keeps_holds_and_is_said(
     (station.folder / "emergency-stop.latch.new").mkdir()
     assert stop(station) == "stopped"
     station.wait_for_phase("halted")
-    assert "a restart would forget it" in station.log()
+    assert "a restart would forget its cause" in station.log()
     with pytest.raises(RequestFailed, match="the emergency stop stays"):
         ask(station, "reset")
     assert station.status()["phase"] == "halted"
