@@ -83,6 +83,15 @@ def test_a_mount_that_follows_a_path_is_not_braked_where_it_turns(clock: HandClo
     assert not driver.is_braked
 
 
+def test_without_a_halt_it_is_not_engaged(clock: HandClock) -> None:
+    driver = simulated(clock)
+    go(driver, clock, HOME, 1.0)
+    for _ in range(50):
+        clock.sleep(TICK_S)
+        driver.read()
+    assert not driver.is_braked
+
+
 def test_nothing_moves_before_it_has_let_go(clock: HandClock) -> None:
     driver = simulated(clock)
     rest(driver, clock, 3.0)

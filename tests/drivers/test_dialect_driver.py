@@ -13,6 +13,7 @@ from trunnion_drivers.conformance.rig import Rig
 from trunnion_drivers.dialect.driver import DialectDriver
 from trunnion_drivers.simulator.faults import HEALTHY, Faults
 
+BRAKE = {"settle_s": 0.3, "still_s": 0.5, "still_deg": 0.05}
 WIRES: dict[str, Callable[[Path], Callable[[], Endpoint]]] = {
     "pty": on_pty,
     "tcp": lambda _folder: on_tcp(),
@@ -27,8 +28,11 @@ class TestConformance(DriverConformance):
         steel, clock = machine(QUICK), SystemClock()
         with dialect_bench(dialect, steel, WIRES[wire](tmp_path)) as bench:
             driver = DialectDriver.from_settings(
-                {"url": bench.url, "dialect": str(dialect), "parity": "none"}, QUICK, clock
+                {"url": bench.url, "dialect": str(dialect), "parity": "none", "brake": BRAKE},
+                QUICK,
+                clock,
             )
+            has_brake = driver.capabilities.has_brake
             can_cut = driver.capabilities.cuts_power
             pressed = Faults(stop_pressed=True)
             yield Rig(
@@ -42,5 +46,6 @@ class TestConformance(DriverConformance):
                 plug=bench.plug,
                 stop_input=lambda on: steel.suffer(clock.monotonic_s(), pressed if on else HEALTHY),
                 is_powered=(lambda: steel.is_powered) if can_cut else None,
+                is_braked=(lambda: steel.is_braked) if has_brake else None,
             )
             driver.close()

@@ -67,6 +67,11 @@ def test_every_example_loads_and_holds_the_travel(path: Path) -> None:
         ),
         ('"S"', '"é"', "expected ASCII"),
         (
+            "  halt:",
+            '  engage_brake: [{send: "B"}]\n  halt:',
+            "commands.engage_brake: expected a command `release_brake` beside it",
+        ),
+        (
             "end:",
             "refusals: ['p{code:06.2f},{other:06.2f}']\nend:",
             "could be one of the refusals",

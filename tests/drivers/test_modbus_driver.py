@@ -33,6 +33,7 @@ POSITION: dict[str, Any] = {
     "halt": {"coil": 3},
     "go": 4,
     "power": 5,
+    "brake": {"coil": 6, "engaged_when": True, "settle_s": 0.3, "still_s": 0.5, "still_deg": 0.05},
     "watchdog": 230,
     "stop_input": {"input": 7},
     "limits": (8, 9),
@@ -73,6 +74,7 @@ class TestConformance(DriverConformance):
                 plug=bench.plug,
                 stop_input=press if capable.reports_stop_input else None,
                 is_powered=(lambda: steel.is_powered) if capable.cuts_power else None,
+                is_braked=(lambda: steel.is_braked) if capable.has_brake else None,
             )
             driver.close()
 

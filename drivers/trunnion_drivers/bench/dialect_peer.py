@@ -77,6 +77,8 @@ class DialectPeer:
             self._machine.halt(mono_s)
         elif verb is Verb.CUT_POWER:
             self._machine.cut_power(mono_s, is_cut=True)
+        elif verb in (Verb.ENGAGE_BRAKE, Verb.RELEASE_BRAKE):
+            self._machine.brake(mono_s, is_engaged=verb is Verb.ENGAGE_BRAKE)
         elif verb is Verb.START:
             self._machine.cut_power(mono_s, is_cut=False)
         elif verb is Verb.MOVE:

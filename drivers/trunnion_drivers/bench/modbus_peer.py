@@ -89,6 +89,8 @@ class MachineTables:
             self._machine.halt(self.mono_s)
         elif address == settings.power:
             self._machine.cut_power(self.mono_s, is_cut=not is_on)
+        elif settings.brake is not None and address == settings.brake.coil:
+            self._machine.brake(self.mono_s, is_engaged=is_on is settings.brake.engaged_when)
         elif address == settings.go and is_on:
             self._go()
 

@@ -20,6 +20,7 @@ def contradictions(dialect: Dialect) -> Iterator[Finding]:
     """All that does not go together, with the key that is to blame."""
     yield from _what_is_read(dialect)
     yield from _what_moves(dialect)
+    yield from _half_a_brake(dialect)
     yield from _unknown_fields(dialect)
     yield from _ambiguous_replies(dialect)
 
@@ -53,6 +54,13 @@ def _what_moves(dialect: Dialect) -> Iterator[Finding]:
     missing = [name for name in _NEEDED[dialect.command] if name not in sent]
     if missing:
         yield ("commands", "move"), f"expected messages with {_braced(missing)} in them"
+
+
+def _half_a_brake(dialect: Dialect) -> Iterator[Finding]:
+    brake = (Verb.ENGAGE_BRAKE, Verb.RELEASE_BRAKE)
+    for verb, other in (brake, brake[::-1]):
+        if dialect.steps(verb) and not dialect.steps(other):
+            yield ("commands", verb.value), f"expected a command `{other.value}` beside it"
 
 
 def _unknown_fields(dialect: Dialect) -> Iterator[Finding]:

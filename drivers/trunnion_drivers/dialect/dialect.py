@@ -18,6 +18,8 @@ class Verb(Enum):
     MOVE = "move"
     START = "start"
     CUT_POWER = "cut_power"
+    ENGAGE_BRAKE = "engage_brake"
+    RELEASE_BRAKE = "release_brake"
     FIRST_UP = "first_up"
     FIRST_DOWN = "first_down"
     FIRST_OFF = "first_off"

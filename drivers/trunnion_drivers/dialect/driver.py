@@ -45,7 +45,9 @@ class DialectDriver(SteeredDriver):
             cuts_power=self._has_power_line or bool(dialect.steps(Verb.CUT_POWER)),
             reports_stop_input=dialect.flags.has_stop or settings.stop_input is not StopLine.NONE,
             reports_limits=bool(dialect.flags.at_limit),
+            has_brake=bool(dialect.steps(Verb.ENGAGE_BRAKE)),
         )
+        self.brake_timing = settings.brake.timing()
 
     @classmethod
     def from_settings(cls, settings: Mapping[str, object], facts: MountFacts, clock: Clock) -> Self:
@@ -101,6 +103,12 @@ class DialectDriver(SteeredDriver):
         if self._has_power_line:
             self._port.set_power(is_on=False)
         self._say(utterances(self._dialect, Verb.CUT_POWER))
+
+    def _engage_brake(self) -> None:
+        self._say(utterances(self._dialect, Verb.ENGAGE_BRAKE))
+
+    def _release_brake(self) -> None:
+        self._say(utterances(self._dialect, Verb.RELEASE_BRAKE))
 
     def _say(self, said: Iterable[Utterance]) -> dict[str, float]:
         """Say one thing after the other; the values of all answers together."""

@@ -57,6 +57,7 @@ class CommandsSection(Settings):
     `read` may be empty where the controller reports by itself. `halt` brings both joints to rest.
     A mount that goes to positions, or moves at rates, needs `move`; one that is switched needs the
     six others. `start` is sent after the port is opened, `cut_power` takes the actuators' power.
+    A brake has both `engage_brake` and `release_brake`.
     """
 
     read: Steps = ()
@@ -64,6 +65,8 @@ class CommandsSection(Settings):
     move: Steps = ()
     start: Steps = ()
     cut_power: Steps = ()
+    engage_brake: Steps = ()
+    release_brake: Steps = ()
     first_up: Steps = ()
     first_down: Steps = ()
     first_off: Steps = ()

@@ -4,6 +4,7 @@ from typing import Annotated
 
 from pydantic import Field
 
+from trunnion_drivers.brake import BrakeSettings
 from trunnion_drivers.control.settings import ControlSettings
 from trunnion_drivers.serial_port.settings import LineSettings, PortSettings
 
@@ -13,11 +14,13 @@ _LINE = ("baud_rate", "data_bits", "parity", "stop_bits")
 class DialectSettings(PortSettings):
     """A port, and the file that says what is spoken over it; `control` tunes the laws.
 
+    `brake` has the times of the brake, where the dialect has its commands.
     Speed and shape of the characters are the dialect's unless they are given here.
     """
 
     dialect: Annotated[str, Field(min_length=1)]
     control: ControlSettings = ControlSettings()
+    brake: BrakeSettings = BrakeSettings()
 
     def port(self, line: LineSettings) -> PortSettings:
         """The port to open."""

@@ -55,7 +55,10 @@ class ModbusDriver(SteeredDriver):
             cuts_power=settings.power is not None,
             reports_stop_input=settings.stop_input is not None,
             reports_limits=bool(settings.limits),
+            has_brake=settings.brake is not None,
         )
+        if settings.brake is not None:
+            self.brake_timing = settings.brake.timing()
 
     @classmethod
     def from_settings(cls, settings: Mapping[str, object], facts: MountFacts, clock: Clock) -> Self:
@@ -123,6 +126,17 @@ class ModbusDriver(SteeredDriver):
     def _cut_power(self) -> None:
         if self._settings.power is not None:
             self._link.write_coil(self._settings.power, is_on=False)
+
+    def _engage_brake(self) -> None:
+        self._set_brake(is_engaged=True)
+
+    def _release_brake(self) -> None:
+        self._set_brake(is_engaged=False)
+
+    def _set_brake(self, *, is_engaged: bool) -> None:
+        brake = self._settings.brake
+        if brake is not None:
+            self._link.write_coil(brake.coil, is_on=is_engaged is brake.engaged_when)
 
     def _write(self, writes: Writes) -> None:
         for address, words in blocks(writes.registers):

@@ -6,6 +6,7 @@ from urllib.parse import urlsplit
 
 from pydantic import Field, field_validator, model_validator
 
+from trunnion_drivers.brake import BrakeSettings
 from trunnion_drivers.control.command import CommandMode
 from trunnion_drivers.control.settings import ControlSettings
 from trunnion_drivers.modbus.registers import RegisterType, WordOrder
@@ -75,12 +76,22 @@ class StopMap(Settings):
     pressed_when: bool = False
 
 
+class BrakeMap(BrakeSettings):
+    """The coil of the brake, its state while the brake holds, and its times.
+
+    A brake that is held off by current, as it should be, is engaged when its coil is false.
+    """
+
+    coil: Address
+    engaged_when: bool = False
+
+
 class ModbusSettings(LineSettings):
     """A server by its URL, `tcp://host:port` or a serial device, and its map.
 
     `go` is a coil written after every goal, `power` one that is true while the actuators have
-    power; `watchdog` a holding register that counts up with every order; `limits` the discrete
-    inputs that are true at a limit switch.
+    power; `brake` the coil of a brake; `watchdog` a holding register that counts up with every
+    order; `limits` the discrete inputs that are true at a limit switch.
     """
 
     url: Annotated[str, Field(min_length=1)]
@@ -95,6 +106,7 @@ class ModbusSettings(LineSettings):
     halt: HaltMap
     go: Address | None = None
     power: Address | None = None
+    brake: BrakeMap | None = None
     watchdog: Address | None = None
     stop_input: StopMap | None = None
     limits: Annotated[tuple[Address, ...], Field(max_length=16)] = ()
