@@ -10,12 +10,13 @@ import pytest
 from tests.drivers.benches import SystemClock, machine, on_pty, on_tcp
 from tests.drivers.mounts import FACTS, HOME, QUICK, HandClock
 from trunnion_drivers.bench.bench import Bench
+from trunnion_drivers.bench.endpoint import PtyEndpoint
 from trunnion_drivers.bench.modbus_frames import Rtu, Tcp
 from trunnion_drivers.bench.modbus_peer import ModbusPeer
 from trunnion_drivers.conformance.kit import DriverConformance
 from trunnion_drivers.conformance.rig import Rig
 from trunnion_drivers.dialect.yaml_lines import read_lined_yaml
-from trunnion_drivers.interface.errors import BadSettings
+from trunnion_drivers.interface.errors import BadSettings, LinkLost
 from trunnion_drivers.modbus.driver import ModbusDriver
 from trunnion_drivers.modbus.settings import ModbusSettings
 from trunnion_drivers.settings import checked
@@ -86,6 +87,7 @@ class TestConformance(DriverConformance):
         ({"halt": {}}, "either a coil or a register"),
         ({"first": {"read": 100}}, "expected write for command position"),
         ({"command": "on-off"}, "expected up and down"),
+        ({"url": "tcp://127.0.0.1:1502", "rs485": True}, "needs a serial device"),
         ({"url": "udp://x"}, "tcp://host:port"),
         ({"hlat": 3}, "did you mean 'halt'"),
         ({"first": {"read": 100, "write": 1, "type": "i16", "units_per_deg": 200.0}}, "too narrow"),
@@ -95,6 +97,16 @@ class TestConformance(DriverConformance):
 def test_what_is_wrong_with_a_map_is_told(change: dict[str, Any], reason: str) -> None:
     with pytest.raises(BadSettings, match=reason):
         ModbusDriver.from_settings({"url": "/dev/null", **POSITION, **change}, FACTS, HandClock())
+
+
+def test_a_device_that_cannot_switch_its_direction_is_told() -> None:
+    endpoint = PtyEndpoint()
+    settings = {"url": endpoint.url, "rs485": True, **POSITION}
+    driver = ModbusDriver.from_settings(settings, FACTS, HandClock())
+    with pytest.raises(LinkLost, match="RS485"):
+        driver.open()
+    assert not driver.is_open
+    endpoint.close()
 
 
 def test_the_map_in_the_handbook_is_one(tmp_path: Path) -> None:

@@ -7,6 +7,8 @@ from pathlib import Path
 from typing import Any
 
 import pytest
+import serial
+from serial.rs485 import RS485Settings
 
 from tests.drivers.benches import SystemClock
 from tests.drivers.mounts import HandClock
@@ -16,6 +18,7 @@ from trunnion_drivers.bench.endpoint import PtyEndpoint, TcpEndpoint
 from trunnion_drivers.interface.errors import BadSettings, Garbled, LinkLost, NoReply
 from trunnion_drivers.serial_port.any_port import AnyPort, port_for
 from trunnion_drivers.serial_port.exchange import Exchanges
+from trunnion_drivers.serial_port.port import SerialPort
 from trunnion_drivers.serial_port.settings import PortSettings
 from trunnion_drivers.settings import checked
 
@@ -102,6 +105,54 @@ def test_a_port_that_cannot_switch_its_direction_is_told() -> None:
     with pytest.raises(LinkLost, match="RS485"):
         port(endpoint.url, rs485=True).open()
     endpoint.close()
+
+
+class SwitchedPty(serial.Serial):
+    """A terminal whose kernel's driver switches the direction; it notes what it was asked for."""
+
+    def __init__(self, *args: Any, do_not_open: bool, **settings: Any) -> None:
+        assert do_not_open
+        self.asked: list[tuple[bool, RS485Settings]] = []
+        self.rts_levels: list[bool] = []
+        super().__init__(None, *args, **settings)
+
+    def _set_rs485_mode(self, asked: RS485Settings) -> None:
+        self.asked.append((self.fd is not None, asked))
+
+    def _update_rts_state(self) -> None:
+        self.rts_levels.append(self.rts)
+
+    def _update_dtr_state(self) -> None:
+        pass
+
+
+def test_the_kernel_switches_the_direction_from_the_first_byte_on() -> None:
+    endpoint, made = PtyEndpoint(), []
+
+    def make(url: str, **settings: Any) -> SwitchedPty:
+        made.append(SwitchedPty(**settings))
+        made[0].port = url
+        return made[0]
+
+    timed = {"rs485": True, "rs485_before_s": 0.002, "rs485_after_s": 0.003}
+    near = SerialPort(checked(PortSettings, {"url": endpoint.url, **timed}), SystemClock(), make)
+    near.open()
+    (is_open, asked), *_ = made[0].asked
+    assert is_open, "the direction is set on the open port, before anything is sent"
+    assert (asked.rts_level_for_tx, asked.rts_level_for_rx) == (True, False)
+    assert not asked.loopback, "what is sent must not come back"
+    assert (asked.delay_before_tx, asked.delay_before_rx) == (0.002, 0.003)
+    near.set_power(is_on=True)
+    near.send(b"x")
+    assert True not in made[0].rts_levels, "only the kernel's driver may switch the sender on"
+    near.close()
+    endpoint.close()
+
+
+def test_a_port_server_switches_its_own_direction() -> None:
+    for url in ("socket://127.0.0.1:4001", "rfc2217://127.0.0.1:4001"):
+        with pytest.raises(BadSettings, match="rs485 needs a port of this computer"):
+            port(url, rs485=True)
 
 
 def test_a_line_cannot_do_two_things() -> None:

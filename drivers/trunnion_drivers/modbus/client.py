@@ -10,6 +10,7 @@ from urllib.parse import urlsplit
 
 from pymodbus.client import ModbusSerialClient, ModbusTcpClient
 from pymodbus.exceptions import ConnectionException, ModbusException
+from serial.rs485 import RS485Settings
 
 from trunnion_drivers.interface.errors import Garbled, LinkLost, NoReply, Refused
 from trunnion_drivers.modbus.settings import ModbusSettings, Table
@@ -23,16 +24,27 @@ class ModbusLink:
     def __init__(self, settings: ModbusSettings) -> None:
         self._url = settings.url
         self._unit = settings.unit
+        self._is_rs485 = settings.rs485
         self._client: Any = _client(settings)
 
     def open(self) -> None:
         """Connect. Raises LinkLost."""
         if not self._client.connect():
             raise LinkLost(f"{self._url}: expected a Modbus server, and there is no connection")
+        if self._is_rs485:
+            self._switch_direction()
 
     def close(self) -> None:
         """Hang up."""
         self._client.close()
+
+    def _switch_direction(self) -> None:
+        try:
+            self._client.socket.rts = False
+            self._client.socket.rs485_mode = RS485Settings(loopback=False)
+        except (OSError, ValueError) as error:
+            self.close()
+            raise LinkLost(f"{self._url}: {error}") from error
 
     def registers(self, table: Table, address: int, count: int) -> list[int]:
         """Read registers. Raises LinkLost, NoReply, Garbled."""

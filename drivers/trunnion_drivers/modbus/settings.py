@@ -89,12 +89,14 @@ class BrakeMap(BrakeSettings):
 class ModbusSettings(LineSettings):
     """A server by its URL, `tcp://host:port` or a serial device, and its map.
 
+    `rs485` lets the kernel's driver switch the serial device's direction with RTS.
     `go` is a coil written after every goal, `power` one that is true while the actuators have
     power; `brake` the coil of a brake; `watchdog` a holding register that counts up with every
     order; `limits` the discrete inputs that are true at a limit switch.
     """
 
     url: Annotated[str, Field(min_length=1)]
+    rs485: bool = False
     unit: Annotated[int, Field(ge=1, le=247)] = 1
     reply_within_s: Annotated[float, Field(gt=0.0, le=10.0)] = 0.3
     command: Annotated[CommandMode, Field(strict=False)] = CommandMode.POSITION
@@ -130,6 +132,8 @@ class ModbusSettings(LineSettings):
                 raise ValueError(
                     f"{name}: expected {' and '.join(missing)} for command {self.command.value}"
                 )
+        if self.rs485 and self.is_tcp:
+            raise ValueError("rs485 needs a serial device")
         if abs(self.first.read - self.second.read) > _LONGEST_BLOCK:
             raise ValueError(f"expected both angles within {_LONGEST_BLOCK} registers")
         return self

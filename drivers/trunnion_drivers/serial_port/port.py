@@ -6,6 +6,7 @@ descriptor (RFC 2217) is asked in short slices.
 
 import select
 import termios
+from collections.abc import Callable
 from types import MappingProxyType
 from typing import Any
 
@@ -32,7 +33,13 @@ _PARITY = MappingProxyType(
 class SerialPort:
     """A port that is opened and closed again and again; every error of it is a LinkLost."""
 
-    def __init__(self, settings: PortSettings, clock: Clock) -> None:
+    def __init__(
+        self,
+        settings: PortSettings,
+        clock: Clock,
+        make: Callable[..., Any] = serial.serial_for_url,
+    ) -> None:
+        self._make = make
         self._settings = settings
         self._clock = clock
         self._port: serial.SerialBase | None = None
@@ -43,7 +50,7 @@ class SerialPort:
         settings = self._settings
         is_here = _has_descriptor(settings.url)
         try:
-            port = serial.serial_for_url(
+            port = self._make(
                 settings.url,
                 do_not_open=True,
                 baudrate=settings.baud_rate,
@@ -55,7 +62,8 @@ class SerialPort:
             )
             port.timeout = 0 if is_here else _SLICE_S
             if settings.rs485:
-                port.rs485_mode = RS485Settings()
+                port.rts = False
+                port.rs485_mode = _direction(settings)
             port.open()
         except (OSError, ValueError, termios.error) as error:
             raise LinkLost(in_words(settings.url, error)) from error
@@ -137,6 +145,16 @@ class SerialPort:
 
 def _has_descriptor(url: str) -> bool:
     return "://" not in url
+
+
+def _direction(settings: PortSettings) -> RS485Settings:
+    return RS485Settings(
+        rts_level_for_tx=True,
+        rts_level_for_rx=False,
+        loopback=False,
+        delay_before_tx=settings.rs485_before_s,
+        delay_before_rx=settings.rs485_after_s,
+    )
 
 
 def _watch(port: serial.SerialBase) -> select.poll:

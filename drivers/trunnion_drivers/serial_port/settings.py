@@ -47,12 +47,15 @@ class LineSettings(Settings):
 class PortSettings(LineSettings):
     """A port by its URL: a device, `socket://host:port`, or `rfc2217://host:port`.
 
-    `rs485` lets the adapter switch its direction with RTS. `stop_input` and `power_output` name
-    modem-control lines; a stop that is not held up counts as pressed.
+    `rs485` lets the kernel's driver switch the direction with RTS: up while it sends, down
+    `rs485_after_s` after the last bit, `rs485_before_s` before the first one. `stop_input`
+    and `power_output` name modem-control lines; a stop that is not held up counts as pressed.
     """
 
     url: Annotated[str, Field(min_length=1)]
     rs485: bool = False
+    rs485_before_s: Annotated[float, Field(ge=0.0, le=0.1)] = 0.0
+    rs485_after_s: Annotated[float, Field(ge=0.0, le=0.1)] = 0.0
     stop_input: Annotated[StopLine, Field(strict=False)] = StopLine.NONE
     power_output: Annotated[PowerLine, Field(strict=False)] = PowerLine.NONE
 
@@ -75,6 +78,12 @@ class PortSettings(LineSettings):
             raise ValueError(
                 "a socket:// has no modem-control lines for stop_input or power_output"
             )
+        return self
+
+    @model_validator(mode="after")
+    def _must_switch_here(self) -> Self:
+        if self.rs485 and "://" in self.url:
+            raise ValueError("rs485 needs a port of this computer; a port server has its own")
         return self
 
     @model_validator(mode="after")
