@@ -157,6 +157,25 @@ def test_a_file_stops_and_keeps_it_stopped_until_it_is_gone(
     station.wait_for_phase("holding")
 
 
+def test_no_reset_is_taken_while_the_button_is_pressed(
+    station: Station, daemons: list[subprocess.Popen[str]]
+) -> None:
+    pressed = "  faults: [{after_s: 0.0, for_s: 6.0, stop_pressed: true}]\n  memory: mount.json\n"
+    text = station.file.read_text()
+    assert "  memory: mount.json\n" in text
+    station.file.write_text(text.replace("  memory: mount.json\n", pressed))
+    daemons.append(station.run())
+    stopped = station.wait_for(lambda status: status["link"]["stop_pressed"])
+    assert stopped["phase"] == "halted"
+    assert "hardware stop input" in stopped["emergency_stop"]["cause"]
+    refused = station.command("reset", str(station.file))
+    assert (refused.returncode, "is pressed" in refused.stderr) == (1, True)
+    still = station.wait_for(lambda status: not status["link"]["stop_pressed"])
+    assert still["phase"] == "halted"
+    assert station.command("reset", str(station.file)).returncode == 0
+    station.wait_for_phase("holding")
+
+
 def test_a_broken_station_file_is_told_without_a_traceback(station: Station) -> None:
     station.file.write_text(station.file.read_text().replace("tick_hz", "tick_h"))
     done = station.command("run", str(station.file))
