@@ -24,7 +24,12 @@ class TestConformance(DriverConformance):
     @pytest.fixture(params=[("reedmace", "pty"), ("plover", "tcp")])
     def rig(self, request: pytest.FixtureRequest, tmp_path: Path) -> Iterator[Rig]:
         name, wire = request.param
-        dialect = DIALECTS / f"{name}.yaml"
+        dialect = tmp_path / f"{name}.yaml"
+        text = (DIALECTS / dialect.name).read_text()
+        for verb, send in (("engage", "B1"), ("release", "B0")):
+            said = f'[{{send: "{send}*{{checksum}}", reply: "b*{{checksum}}"}}]'
+            text = text.replace(f"{verb}_brake: []", f"{verb}_brake: {said}")
+        dialect.write_text(text)
         steel, clock = machine(QUICK), SystemClock()
         with dialect_bench(dialect, steel, WIRES[wire](tmp_path)) as bench:
             driver = DialectDriver.from_settings(
@@ -33,6 +38,7 @@ class TestConformance(DriverConformance):
                 clock,
             )
             has_brake = driver.capabilities.has_brake
+            assert has_brake == (name == "reedmace")
             can_cut = driver.capabilities.cuts_power
             pressed = Faults(stop_pressed=True)
             yield Rig(

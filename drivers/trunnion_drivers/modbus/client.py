@@ -44,7 +44,7 @@ class ModbusLink:
             self._client.socket.rs485_mode = RS485Settings(loopback=False)
         except (OSError, ValueError) as error:
             self.close()
-            raise LinkLost(f"{self._url}: {error}") from error
+            raise LinkLost(f"{self._url}: cannot switch its RS485 direction: {error}") from error
 
     def registers(self, table: Table, address: int, count: int) -> list[int]:
         """Read registers. Raises LinkLost, NoReply, Garbled."""
