@@ -18,6 +18,7 @@ from trunnion_drivers.dialect.load import load_dialect
 from trunnion_drivers.interface.driver import Driver
 from trunnion_drivers.interface.errors import Garbled, LinkLost, NoReply, Refused
 from trunnion_drivers.interface.values import DriverMotion, JointFacts, MountFacts
+from trunnion_drivers.simulator.faults import Faults, JointFault
 from trunnion_drivers.simulator.machine import SimulatedMachine
 
 ECHOING = """\
@@ -192,8 +193,50 @@ def test_one_that_refuses(bays: Bays) -> None:
     driver = bays.build(REEDMACE, QUICK, REEDMACE.replace('"G{first', '"J{first')).driver
     driver.open()
     with pytest.raises(Refused, match=r"\?01"):
-        driver.move(HOME)
+        go(driver, HOME, 1.0)
     driver.halt()
+
+
+def test_one_that_reports_in_another_unit_is_not_believed_to_be_elsewhere(bays: Bays) -> None:
+    """A text of another shape is no answer; one of the same shape shows in the travel."""
+    tenths = REEDMACE.replace(
+        "{first:+09.3f}{second:+09.3f}{flags", "{first:+09.1f}{second:+09.1f}{flags"
+    )
+    driver = bays.build(tenths, QUICK, REEDMACE).driver
+    driver.open()
+    with pytest.raises(Garbled, match="understood"):
+        driver.read()
+
+
+def test_one_that_starts_again_with_its_encoder_at_zero_is_read_as_it_says(bays: Bays) -> None:
+    """The driver hides no jump, so that the gate, which looks for them, sees it."""
+    driver, steel, _ = bays.build(REEDMACE, QUICK)
+    driver.open()
+    before = driver.read()
+    zeroed = Faults(offsets_deg=(-17.3, 0.0))
+    steel.suffer(SystemClock().monotonic_s(), zeroed)
+    driver.close()
+    driver.open()
+    after = driver.read()
+    assert (before.first_deg, after.first_deg) == pytest.approx((17.3, 0.0), abs=0.01)
+    assert after.second_deg == pytest.approx(before.second_deg, abs=0.01)
+    assert steel.true_motion(SystemClock().monotonic_s())[2:] == (0.0, 0.0)
+
+
+def test_one_that_runs_on_after_a_stop_is_read_while_it_does(bays: Bays) -> None:
+    driver, steel, _ = bays.build(REEDMACE, QUICK)
+    driver.open()
+    away = Faults(joints=(JointFault.UNSTOPPABLE, JointFault.NONE))
+    steel.suffer(SystemClock().monotonic_s(), away)
+    driver.halt()
+    first = driver.read()
+    time.sleep(0.3)
+    then = driver.read()
+    assert then.first_deg > first.first_deg + 1.0
+    driver.cut_power()
+    time.sleep(0.5)
+    assert not steel.is_powered
+    assert steel.true_motion(SystemClock().monotonic_s())[2:] == (0.0, 0.0)
 
 
 def test_a_wrong_device_on_the_port_is_no_mount(tmp_path: Path) -> None:
