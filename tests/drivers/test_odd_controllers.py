@@ -198,7 +198,7 @@ def test_one_that_refuses(bays: Bays) -> None:
 
 
 def test_one_that_reports_in_another_unit_is_not_believed_to_be_elsewhere(bays: Bays) -> None:
-    """A text of another shape is no answer; one of the same shape shows in the travel."""
+    """A text of another shape is no answer; one of the same shape only commissioning finds."""
     tenths = REEDMACE.replace(
         "{first:+09.3f}{second:+09.3f}{flags", "{first:+09.1f}{second:+09.1f}{flags"
     )
