@@ -77,10 +77,10 @@ class SimulatedJoint:
         carried = rate if self._play.carries(motor_deg, rate) else 0.0
         return JointState(motor_deg, rate, antenna_deg, carried)
 
-    def is_at_switch(self, mono_s: float) -> bool:
-        """Whether it has run onto one of its limit switches."""
+    def is_at_switch(self, state: JointState) -> bool:
+        """Whether it has run onto one of its limit switches there."""
         lowest, highest = self._build.switches_deg
-        return not lowest < self._motor(mono_s)[0] < highest
+        return not lowest < state.motor_deg < highest
 
     def go_to(self, mono_s: float, goal_deg: float, goal_rate_deg_s: float) -> None:
         """From this second on, make for a goal that moves evenly, and stay with it."""
@@ -104,8 +104,8 @@ class SimulatedJoint:
         self._take(resting_course(mono_s, self._motor(mono_s)[0]))
 
     def _start(self, mono_s: float) -> Leg:
-        self.at(mono_s)
-        return Leg(mono_s, *self._motor(mono_s))
+        motor_deg, rate_deg_s, _, _ = self.at(mono_s)
+        return Leg(mono_s, motor_deg, rate_deg_s)
 
     def _motor(self, mono_s: float) -> tuple[float, float]:
         angle_deg, rate_deg_s = self._course.at(mono_s)

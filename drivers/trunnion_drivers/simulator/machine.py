@@ -94,12 +94,13 @@ class SimulatedMachine:
 
     def look(self, mono_s: float) -> Look:
         """What the machine says of itself at this second."""
-        first_deg, second_deg = both_deg(self._sensors, self._joints(mono_s), self._faults)
+        joints = self._joints(mono_s)
+        first_deg, second_deg = both_deg(self._sensors, joints, self._faults)
         return Look(
             first_deg,
             second_deg,
             self._faults.stop_pressed,
-            self._mount.is_at_switch(mono_s),
+            self._mount.is_at_switch(joints),
             self._faults.words,
         )
 

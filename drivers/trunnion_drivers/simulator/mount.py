@@ -63,10 +63,10 @@ class SimulatedMount:
         first, second = self._joints
         return first.at(mono_s), second.at(mono_s)
 
-    def is_at_switch(self, mono_s: float) -> bool:
-        """Whether a joint has run onto one of its limit switches."""
-        self._advance(mono_s)
-        return any(joint.is_at_switch(mono_s) for joint in self._joints)
+    def is_at_switch(self, states: tuple[JointState, JointState]) -> bool:
+        """Whether a joint has run onto one of its limit switches there."""
+        first, second = self._joints
+        return first.is_at_switch(states[0]) or second.is_at_switch(states[1])
 
     def suffer(self, mono_s: float, faults: JointFaults) -> None:
         """Let the joints be broken like this from this second on."""
