@@ -23,6 +23,9 @@ from trunnion.service.clock import SystemClock as DaemonClock
 from trunnion.service.link.threaded import ThreadedLink
 from trunnion_drivers.bench.bench import Bench, Passed, Way
 from trunnion_drivers.dialect.driver import DialectDriver
+from trunnion_drivers.interface.driver import Driver
+from trunnion_drivers.interface.values import DriverMotion
+from trunnion_drivers.simulator.driver import SimulatorDriver
 
 TICK_S = 0.1
 STOPS = 500
@@ -31,6 +34,12 @@ ABSENCES_S = (0.3, 1.6, 2.9, 11.0, 12.1)
 LONGEST_STOP_S = 0.010
 LONGEST_RECONNECT_S = 2.0
 BAUD_RATE = 9600
+BITS_A_BYTE = 10
+ORDER_BYTES = 41
+LATENCY_S = 0.1
+LARGEST_ADDED_DEG = 0.01
+SETTLING_S, FOLLOWING_S = 5.0, 20.0
+LONGEST_LOOK_S = 0.001  # a look that was interrupted says nothing about the antenna
 STOP = b"H*62\r\n"
 
 Answer = TypeVar("Answer")
@@ -47,7 +56,7 @@ class Rig(NamedTuple):
 def rows() -> list[Row]:
     """Measure, threads giving way to each other as those of `run` do."""
     sys.setswitchinterval(SWITCH_INTERVAL_S)
-    return [stop(), stale_ticks(), reconnect()]
+    return [stop(), stale_ticks(), reconnect(), added_error()]
 
 
 def stop() -> Row:
@@ -127,6 +136,46 @@ def back_after_s(rig: Rig, away_s: float) -> float:
     while (reading := rig.link.newest()) is None or reading.taken_s < begin_s:
         track(rig, 0.02)
     return time.monotonic() - begin_s
+
+
+def added_error() -> Row:
+    """What the wire adds to the true antenna's error, 100 ms late and compensated, at 1°/s."""
+    dialect = DIALECTS / "reedmace.yaml"
+    late = {"control": {"latency_s": LATENCY_S + ORDER_BYTES * BITS_A_BYTE / BAUD_RATE}}
+    with TemporaryDirectory() as folder:
+        steel = machine(latency_s=LATENCY_S)
+        with dialect_bench(dialect, steel, on_pty(Path(folder)), baud_rate=BAUD_RATE) as bench:
+            settings = {"url": bench.url, "dialect": str(dialect), **late}
+            wired = DialectDriver.from_settings(settings, FACTS, SystemClock())
+            wired_deg = worst_error_deg(wired, lambda: steel.true_motion(time.monotonic()))
+    alike = {"latency_s": LATENCY_S, "control": {"latency_s": LATENCY_S}}
+    here = SimulatorDriver.from_settings(alike, FACTS, SystemClock())
+    added_deg = wired_deg - worst_error_deg(here, here.true_motion)
+    return Row(
+        f"pointing error added by the wire, {BAUD_RATE} baud, 100 ms of latency, 1°/s",
+        f"{added_deg:.4f}°",
+        f"{LARGEST_ADDED_DEG:g}°",
+        added_deg / LARGEST_ADDED_DEG,
+        1.0,
+        is_at_least=False,
+    )
+
+
+def worst_error_deg(driver: Driver, true_motion: Callable[[], DriverMotion]) -> float:
+    """Follow a goal that moves evenly; the worst error of the antenna once it has caught up."""
+    driver.open()
+    begin_s, worst_deg = time.monotonic(), 0.0
+    while (since_s := time.monotonic() - begin_s) < FOLLOWING_S:
+        driver.move(DriverMotion(20.0 + since_s, 61.9, 1.0, 0.0))
+        driver.read()
+        time.sleep(0.4 * TICK_S)
+        before_s = time.monotonic()
+        error_deg = true_motion().first_deg - 20.0 - (before_s - begin_s)
+        if since_s > SETTLING_S and time.monotonic() - before_s < LONGEST_LOOK_S:
+            worst_deg = max(worst_deg, abs(error_deg))
+    driver.halt()
+    driver.close()
+    return worst_deg
 
 
 def track(rig: Rig, lasts_s: float) -> None:
