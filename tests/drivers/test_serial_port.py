@@ -149,6 +149,52 @@ def test_the_kernel_switches_the_direction_from_the_first_byte_on() -> None:
     endpoint.close()
 
 
+class Held:
+    """What stands where pyserial's port does; its inputs are held up but for one."""
+
+    def __init__(self, url: str, **settings: Any) -> None:
+        self.url, self.settings = url, settings
+        self.cts = self.dsr = self.cd = self.ri = True
+        self.rts = self.dtr = False
+
+    def open(self) -> None:
+        """Nothing is behind it."""
+
+
+@pytest.mark.parametrize(("line", "name"), [("cts",) * 2, ("dsr",) * 2, ("dcd", "cd"), ("ri",) * 2])
+def test_each_line_can_be_the_stop(line: str, name: str) -> None:
+    made: list[Held] = []
+
+    def make(url: str, **settings: Any) -> Held:
+        made.append(Held(url, **settings))
+        return made[0]
+
+    settings = {"url": "rfc2217://127.0.0.1:4001", "stop_input": line, "power_output": "rts"}
+    near = SerialPort(checked(PortSettings, settings), SystemClock(), make)
+    near.open()
+    for each in ("cts", "dsr", "cd", "ri"):
+        setattr(made[0], each, False)
+        assert near.stop_pressed is (each == name)
+        setattr(made[0], each, True)
+    near.set_power(is_on=True)
+    assert (made[0].rts, made[0].dtr) == (True, False)
+
+
+def test_a_port_is_opened_as_the_settings_say_and_for_one_alone() -> None:
+    made: list[Held] = []
+
+    def make(url: str, **settings: Any) -> Held:
+        made.append(Held(url, **settings))
+        return made[0]
+
+    wanted = {"baud_rate": 2400, "data_bits": 7, "parity": "odd", "stop_bits": 2}
+    settings = {"url": "rfc2217://127.0.0.1:4001", **wanted}
+    SerialPort(checked(PortSettings, settings), SystemClock(), make).open()
+    given = made[0].settings
+    assert (given["baudrate"], given["bytesize"], given["parity"]) == (2400, 7, "O")
+    assert (given["stopbits"], given["exclusive"]) == (2, True)
+
+
 def test_a_port_server_switches_its_own_direction() -> None:
     for url in ("socket://127.0.0.1:4001", "rfc2217://127.0.0.1:4001"):
         with pytest.raises(BadSettings, match="rs485 needs a port of this computer"):
