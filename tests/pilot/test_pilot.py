@@ -120,6 +120,20 @@ def test_a_hazard_that_asks_for_stow_comes_before_any_contact() -> None:
     assert flight.turn().phase is Phase.STOWING
 
 
+def test_told_to_hold_it_goes_to_stow_all_the_same_when_a_hazard_asks_for_it() -> None:
+    flight = Flight((contact("a", 5.0, 500.0, FALLING),), place=FALLING.joints)
+    flight.wish, flight.must_stow = Wish.HOLD, True
+    assert flight.turn().phase is Phase.STOWING
+
+
+def test_standing_still_no_hazard_starts_it() -> None:
+    flight = Flight((contact("a", 5.0, 500.0, FALLING),), place=FALLING.joints)
+    flight.fly(20.0)
+    flight.wish, flight.must_stow = Wish.STAND, True
+    decision = flight.turn()
+    assert (decision.phase, decision.demand) == (Phase.HOLDING, None)
+
+
 def test_stopped_it_orders_nothing_and_forgets_its_way() -> None:
     flight = Flight((contact("a", 5.0, 500.0, FALLING),))
     flight.fly(2.0)

@@ -87,11 +87,11 @@ def test_while_stopped_nothing_that_could_move_the_mount_is_taken_on(
     assert rig.wish.wish is Wish.FOLLOW_PLAN
 
 
-def test_a_reset_lifts_the_stop_and_leaves_the_wish_at_hold(rig: Rig) -> None:
+def test_a_reset_lifts_the_stop_and_lets_the_mount_stand_still(rig: Rig) -> None:
     rig.desk.stop("the cow")
-    assert rig.ask("reset") == {"wish": "hold", "trouble": None}
+    assert rig.ask("reset") == {"wish": "stand still", "trouble": None}
     assert rig.desk.latched is None
-    assert rig.wish.wish is Wish.HOLD
+    assert rig.wish.wish is Wish.STAND
 
 
 @pytest.mark.parametrize(
@@ -117,7 +117,7 @@ def test_a_reset_is_refused_where_a_restart_would_move_the_mount(rig: Rig, tmp_p
     with pytest.raises(StopNotLifted, match="a restart would follow plan"):
         rig.ask("reset")
     assert rig.desk.latched is not None
-    assert rig.wish.wish is Wish.HOLD
+    assert rig.wish.wish is Wish.STAND
 
 
 def test_a_reset_is_refused_while_the_file_that_asked_for_the_stop_is_there(rig: Rig) -> None:
@@ -136,10 +136,10 @@ def test_status_and_reload_are_passed_on(rig: Rig) -> None:
     assert rig.around.reloads == 1
 
 
-def test_leave_to_come_back_inside_holds_the_mount_otherwise(rig: Rig) -> None:
+def test_leave_to_come_back_inside_lets_the_mount_stand_otherwise(rig: Rig) -> None:
     answer = rig.ask("recover")
-    assert answer["wish"] == "hold"
-    assert rig.wish.wish is Wish.HOLD
+    assert answer["wish"] == "stand still"
+    assert rig.wish.wish is Wish.STAND
     assert answer["goal_deg"] == list(rig.leave.way_back(OUTSIDE) or ())
     assert "inside" in rig.around.events[-1][1]
 

@@ -1,6 +1,9 @@
 """One control turn: read, decide, judge, hand over, tell."""
 
+from collections.abc import Sequence
 from dataclasses import dataclass, field
+
+import pytest
 
 from tests.mount.mounts import MOUNT
 from tests.pilot.flight import CLEARANCE, START_UTC_S
@@ -17,8 +20,9 @@ from trunnion.safety.world import World
 from trunnion.service.clock import VirtualClock
 from trunnion.service.link.status import LinkStatus
 from trunnion.service.turn import ControlTurn, Orders, Turn
+from trunnion.track.path import Assignment
 
-CALM = World(emergency=None, is_link_up=True, lateness_s=0.0)
+CALM = World(emergency=None, is_link_up=True, lateness_s=0.0, wind_gust_m_s=3.1)
 STOPPED = CALM._replace(emergency=EmergencyStop("button", START_UTC_S))
 PLAN = Orders((ASSIGNMENT,), Wish.FOLLOW_PLAN)
 
@@ -33,7 +37,7 @@ class Rig:
     status: LinkStatus = field(default_factory=LinkStatus)
 
     def __post_init__(self) -> None:
-        limits = SafetyLimits(MOUNT, CLEARANCE, transmit_floor_deg=10.3)
+        limits = SafetyLimits(MOUNT, CLEARANCE, transmit_floor_deg=10.3, wind_stow_gust_m_s=19.3)
         pilot = Pilot(Facts(MOUNT, CLEARANCE, tolerance_deg=0.23))
         self.control = ControlTurn(self.clock, self, pilot, Gate(limits), (self, self))
 
@@ -99,6 +103,21 @@ def test_without_a_plan_the_mount_holds_still() -> None:
     rig = Rig()
     turn = rig.run(Orders(None, Wish.FOLLOW_PLAN))
     assert (turn.decision.phase, turn.verdict.order) == (Phase.HOLDING, Halt())
+
+
+@pytest.mark.parametrize("assignments", [None, PLAN.assignments])
+def test_after_a_reset_no_wind_starts_the_mount(
+    assignments: Sequence[Assignment] | None,
+) -> None:
+    windy = CALM._replace(wind_gust_m_s=23.7)
+    held, standing = Rig(), Rig()
+    for _ in range(9):
+        moving = held.run(Orders(assignments, Wish.HOLD), windy)
+        resting = standing.run(Orders(assignments, Wish.STAND), windy)
+    assert moving.verdict.wants_stow
+    assert isinstance(moving.verdict.order, Move)
+    assert resting.verdict.wants_stow
+    assert set(standing.orders) == {Halt()}
 
 
 def test_stopped_nothing_but_a_halt_leaves() -> None:

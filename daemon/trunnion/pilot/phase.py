@@ -35,4 +35,7 @@ class Wish(Enum):
     STOW = "stow"
     """Go to stow and stay there until told to follow the plan again."""
     HOLD = "hold"
-    """Come to rest and stay there until told to follow the plan again."""
+    """Come to rest and stay there until told to follow the plan again; wind still leads to stow."""
+    STAND = "stand still"
+    """Stay there, whatever happens, until told otherwise: after a reset somebody may stand at the
+    mount, and no hazard may start it (ISO 13850: a reset starts nothing)."""

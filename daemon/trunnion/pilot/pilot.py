@@ -116,6 +116,8 @@ class Pilot:
     # -- what to do -----------------------------------------------------------------------------
 
     def _choose(self, now: Situation, upcoming: Assignment | None, base: Motion) -> _Errand:
+        if now.wish is Wish.STAND:
+            return _Errand(_Kind.HOLD)
         if now.must_stow or now.wish is Wish.STOW:
             return _Errand(_Kind.STOW)
         if now.wish is Wish.HOLD:

@@ -82,8 +82,8 @@ class Commands:
         return {"correction": plain_correction(given), "trouble": self._corrections.trouble}
 
     def _reset(self, _: Answer) -> Answer:
-        """Lift the stop, and wait: the wish to hold still is kept before the stop is gone."""
-        trouble = self._wish.set(Wish.HOLD)
+        """Lift the stop, and wait: the wish to stand still is kept before the stop is gone."""
+        trouble = self._wish.set(Wish.STAND)
         self._desk.reset(self._still_there() or trouble)
         self._around.record(EventKind.RESET, "emergency stop lifted; nothing moves until told to")
         return {"wish": self._wish.wish.value, "trouble": trouble}
@@ -94,13 +94,13 @@ class Commands:
         return pressed or self._around.stop_asked_by_file() or status.fault
 
     def _recover(self, _: Answer) -> Answer:
-        """Bring a mount back that was found outside, slowly; it holds still from there on."""
+        """Bring a mount back that was found outside, slowly; it stands still from there on."""
         self._must_not_be_stopped()
         goal = self._leave.grant()
-        trouble = self._wish.set(Wish.HOLD)
+        trouble = self._wish.set(Wish.STAND)
         told = f"told to come back inside, to {goal.first_deg:.1f}°/{goal.second_deg:.1f}°"
         self._around.record(EventKind.REQUEST, told)
-        return {"goal_deg": list(goal), "wish": Wish.HOLD.value, "trouble": trouble}
+        return {"goal_deg": list(goal), "wish": Wish.STAND.value, "trouble": trouble}
 
     def _must_not_be_stopped(self) -> None:
         stop = self._desk.latched

@@ -108,6 +108,8 @@ class Daemon:
     def _stow_at_the_end(self, cadence: Cadence) -> None:
         until_s = self._clock.monotonic_s() + LONGEST_STOWING_S
         desk = self._parts.keeping.desk
+        if self._parts.keeping.wish.wish is Wish.STAND:
+            return
         while self._clock.monotonic_s() < until_s and desk.latched is None:
             if self._beat(cadence, Wish.STOW).decision.phase is Phase.STOWED:
                 return

@@ -1,8 +1,8 @@
 """The operator's standing wish, kept over a restart.
 
 Whoever sent the antenna to stow to work on it must find it there after a power cut, too. A file
-that cannot be understood means: hold still. So does a draft that was left behind, by a power cut or
-on a full disk: somebody wished for something, and nobody knows what.
+that cannot be understood means: stand still. So does a draft that was left behind, by a power cut
+or on a full disk: somebody wished for something, and nobody knows what.
 """
 
 from pathlib import Path
@@ -34,12 +34,12 @@ class StandingWish:
         """What a restart would find."""
         try:
             if draft_of(self._path).exists():
-                return Wish.HOLD
+                return Wish.STAND
             return Wish(self._path.read_text(encoding="utf-8").strip())
         except FileNotFoundError:
             return Wish.FOLLOW_PLAN
         except (OSError, ValueError):
-            return Wish.HOLD
+            return Wish.STAND
 
     def set(self, wish: Wish) -> str | None:
         """Take up a wish at once, and keep it; what went wrong on disk, if anything did."""

@@ -45,6 +45,12 @@ class Orders(NamedTuple):
     wish: Wish
     way_back: Joints | None = None
 
+    @property
+    def wish_in_force(self) -> Wish:
+        """Without a plan the mount holds still, unless it has to stand still anyway."""
+        has_to_hold = self.assignments is None and self.wish is not Wish.STAND
+        return Wish.HOLD if has_to_hold else self.wish
+
 
 class ControlTurn:
     """Runs turn after turn; keeps only what the mount was last ordered to do."""
@@ -78,10 +84,10 @@ class ControlTurn:
                 reading,
                 self._ordered,
                 orders.assignments or (),
-                Wish.HOLD if orders.assignments is None else orders.wish,
+                orders.wish_in_force,
                 self._must_stow,
                 world.emergency is not None,
-                orders.way_back or self._way_out,
+                orders.way_back or (None if orders.wish is Wish.STAND else self._way_out),
                 world.sun,
             )
         )

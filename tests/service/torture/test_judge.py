@@ -28,7 +28,7 @@ def broken(flown: Scenario, rate_deg_s: float, until_s: float = 60.0) -> set[str
             START_UTC_S + since_s,
             true,
             "stop",
-            Wish.HOLD,
+            Wish.STAND,
             may_transmit=False,
             is_alive=True,
             interventions=(),
@@ -67,7 +67,7 @@ def returned(rate_deg_s: float, begin_s: float = 5.0) -> set[str]:
         way_deg = max(0.0, since_s - begin_s) * rate_deg_s
         share = way_deg / max(map(abs, inwards))
         true = Motion(first_deg + share * inwards[0], second_deg + share * inwards[1])
-        now = Instant(since_s, START_UTC_S + since_s, true, None, Wish.HOLD,
+        now = Instant(since_s, START_UTC_S + since_s, true, None, Wish.STAND,
                       may_transmit=False, is_alive=True, interventions=())  # fmt: skip
         found |= {violation.guarantee for violation in judge.note(now)}
     return found

@@ -162,7 +162,7 @@ class Checker:
 
     def _rests_after_reset(self, now: Instant) -> str | None:
         before = self._before
-        if before is None or now.stopped is not None or now.wish is not Wish.HOLD:
+        if before is None or now.stopped is not None or now.wish is not Wish.STAND:
             self._held = None
             return None
         if before.stopped is not None:
