@@ -24,6 +24,7 @@ from trunnion_drivers.simulator.faults import (
     healthy,
     timetable,
 )
+from trunnion_drivers.simulator.mount import CREEP
 
 SOUND = JointFault.NONE
 
@@ -115,6 +116,46 @@ def test_a_joint_that_runs_away(
     driver.cut_power()
     clock.sleep(2.0)
     assert driver.true_motion().first_rate_deg_s == 0.0
+
+
+def test_a_slipping_brake_lets_a_resting_joint_creep(
+    driver: SimulatorDriver, clock: HandClock
+) -> None:
+    driver.move(HOME._replace(first_deg=40.0))
+    clock.sleep(1.0)
+    now_wrong(driver, joints=(JointFault.SLIPPING, SOUND))
+    driver.halt()
+    clock.sleep(2.0)
+    creep_deg_s = FACTS.first.rate_deg_s * CREEP
+    assert driver.true_motion().first_rate_deg_s == pytest.approx(creep_deg_s)
+    driver.cut_power()
+    clock.sleep(2.0)
+    assert driver.true_motion().first_rate_deg_s == pytest.approx(creep_deg_s)
+    driver.inject(healthy)
+    driver.read()
+    clock.sleep(2.0)
+    assert driver.true_motion()[2:] == (0.0, 0.0)
+
+
+def test_a_slipping_brake_does_not_hinder_motion(driver: SimulatorDriver, clock: HandClock) -> None:
+    now_wrong(driver, joints=(SOUND, JointFault.SLIPPING))
+    driver.move(HOME._replace(second_deg=HOME.second_deg - 1.3))
+    clock.sleep(1.9)
+    assert driver.true_motion().second_deg == pytest.approx(HOME.second_deg - 1.3)
+
+
+def test_two_episodes_at_once_both_hold() -> None:
+    faults_at = timetable(
+        (
+            Episode(1.3, 9.7, Faults(LinkFault.SILENT, (JointFault.JAMMED, SOUND))),
+            Episode(4.1, 6.2, Faults(LinkFault.DEAF, (SOUND, JointFault.REVERSED), words="hot")),
+        )
+    )
+    both = Faults(LinkFault.DEAF, (JointFault.JAMMED, JointFault.REVERSED), words="hot")
+    assert faults_at(5.0) == both
+    assert faults_at(5.1) is faults_at(5.0)
+    assert faults_at(1.2) == HEALTHY
+    assert faults_at(7.0).link is LinkFault.SILENT
 
 
 def test_a_joint_without_power_does_not_begin_to_run_away(

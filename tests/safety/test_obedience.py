@@ -32,6 +32,24 @@ joints = pytest.mark.parametrize("joint", [0, 1])
 
 
 @joints
+def test_a_mount_that_ran_on_in_a_late_turn_and_is_led_back_is_not_disobedient(joint: int) -> None:
+    obedience, seen, read_deg = Obedience(LIMITS), set(), [20.3, 41.3]
+    ordered = list(read_deg)
+    for mono_s in (71.2, 71.3, 71.4, 72.1, 72.2, 72.3):
+        rates = [0.0, 0.0]
+        rates[joint] = 4.5
+        read_deg[joint] = 50.0 + 4.5 * (mono_s - 71.2)
+        ordered[joint] = read_deg[joint] - (2.7 if mono_s > 72.0 else 0.0)
+        reading = Reading(mono_s, *read_deg)
+        seen |= {each.rule for each in obedience.find(Motion(*ordered, *rates), mono_s, reading)}
+    assert seen == set()
+    ordered[joint] = read_deg[joint] = 55.0 + 2.3
+    ordered[joint] -= 2.3 + 2.7
+    found = obedience.find(Motion(*ordered, *rates), 72.4, Reading(72.4, *read_deg))
+    assert Rule.WRONG_WAY in {each.rule for each in found}
+
+
+@joints
 def test_a_joint_that_follows_its_orders_obeys(joint: int) -> None:
     watched = Watched(joint)
     for step in range(300):

@@ -46,6 +46,14 @@ class _Joint:
         self._way = _Mark(ordered_deg, read_deg)
         return False
 
+    def begin_anew(self) -> None:
+        """Judge its way from here on: the orders did not go on where they had led."""
+        self._way = None
+
+    def led_aside(self, expected_deg: float, ordered_deg: float) -> bool:
+        """Whether an order lies farther from where the last one led than any slip."""
+        return abs(ordered_deg - expected_deg) > self._most_deg
+
     def is_frozen(self, ordered_deg: float, read_deg: float, *, is_new: bool) -> bool:
         """Whether reading after reading is the same while the orders have moved on."""
         if self._same is None or read_deg != self._same.read_deg:
@@ -66,12 +74,14 @@ class Obedience:
         """The orders have ended; what follows begins anew."""
         self._joints = (_Joint(self._limits), _Joint(self._limits))
         self._taken_s: float | None = None
+        self._last: tuple[Motion, float] | None = None
 
     def find(self, ordered: Motion, ordered_s: float, reading: Reading) -> Iterator[Hazard]:
         """Everything wrong with this reading, given what was ordered in the turn before, and when.
 
         Since then the mount may have gone on at the rate that was ordered, or not.
         """
+        self._notice_jumps(ordered, ordered_s)
         since_s = max(0.0, reading.taken_s - ordered_s)
         is_new, self._taken_s = reading.taken_s != self._taken_s, reading.taken_s
         for number in (0, 1):
@@ -87,6 +97,16 @@ class Obedience:
             if behind_deg > self._limits.stall_error_deg:
                 finding = f"the {name} joint is {behind_deg:.1f}° from where it was ordered to be"
                 yield Hazard(Rule.STALLED, finding)
+
+    def _notice_jumps(self, ordered: Motion, ordered_s: float) -> None:
+        """After a turn that came late the mount has gone on, and is led back: no disobedience."""
+        if self._last is not None:
+            last, last_s = self._last
+            for number, joint in enumerate(self._joints):
+                expected_deg = last[number] + last[number + 2] * (ordered_s - last_s)
+                if joint.led_aside(expected_deg, ordered[number]):
+                    joint.begin_anew()
+        self._last = ordered, ordered_s
 
 
 def _nearest(read_deg: float, ordered_deg: float, run_deg: float) -> float:

@@ -1,9 +1,10 @@
 """What can go wrong with a simulated mount, as a value; and when, as a function of time."""
 
 from collections.abc import Callable, Sequence
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, fields
 from enum import Enum
-from typing import TypeAlias
+from functools import lru_cache, reduce
+from typing import Any, TypeAlias
 
 
 class LinkFault(Enum):
@@ -34,6 +35,8 @@ class JointFault(Enum):
     """It moves up at half its rate, whatever it is told; only a halt or a power cut stops it."""
     UNSTOPPABLE = "unstoppable"
     """The same, and a halt does not stop it either."""
+    SLIPPING = "slipping"
+    """It obeys, but told to rest it creeps up at a twentieth of its rate, power or not."""
 
 
 class EncoderFault(Enum):
@@ -89,13 +92,29 @@ class Episode:
 
 
 def timetable(episodes: Sequence[Episode]) -> FaultSchedule:
-    """One episode after the other; where two overlap, the later one in the list holds."""
-    latest_first = tuple(reversed(episodes))
+    """All episodes; where two say different things of one part, the later in the list holds."""
+
+    @lru_cache(maxsize=64)
+    def together(present: tuple[Faults, ...]) -> Faults:
+        return reduce(_and_then, present, HEALTHY)
 
     def faults_at(mono_s: float) -> Faults:
-        for episode in latest_first:
-            if episode.begin_s <= mono_s < episode.end_s:
-                return episode.faults
-        return HEALTHY
+        return together(tuple(e.faults for e in episodes if e.begin_s <= mono_s < e.end_s))
 
     return faults_at
+
+
+def _and_then(earlier: Faults, later: Faults) -> Faults:
+    """Both at once; what the later says of a part counts."""
+    return Faults(
+        **{
+            part.name: _said_of(*(getattr(each, part.name) for each in (HEALTHY, earlier, later)))
+            for part in fields(Faults)
+        }
+    )
+
+
+def _said_of(sound: Any, earlier: Any, later: Any) -> Any:
+    if isinstance(sound, tuple):
+        return tuple(map(_said_of, sound, earlier, later))
+    return earlier if later == sound else later

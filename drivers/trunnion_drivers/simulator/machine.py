@@ -2,8 +2,8 @@
 
 It models rate and acceleration limits, backlash, static friction, run-on, limit switches, hard
 stops, wind that bends the antenna, encoders, latency, a watchdog, a brake that holds at once and
-against any motor, and the faults of `faults.py`. It does not model vibration, temperature, brakes
-that slip, nor a motor whose torque runs out.
+against any motor, and the faults of `faults.py`. It does not model vibration, temperature,
+nor a motor whose torque runs out.
 """
 
 from typing import NamedTuple

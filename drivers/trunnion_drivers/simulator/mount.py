@@ -17,6 +17,9 @@ JointFaults = tuple[JointFault, JointFault]
 _SOUND: JointFaults = (JointFault.NONE, JointFault.NONE)
 _RUNNING = (JointFault.RUNNING_AWAY, JointFault.UNSTOPPABLE)
 
+CREEP = 0.05
+"""The part of its highest rate at which a joint creeps whose brake slips."""
+
 
 class _Due(NamedTuple):
     """A command under way to the controller; None brings both joints to rest."""
@@ -73,10 +76,13 @@ class SimulatedMount:
         if faults is self._faults or faults == self._faults:
             return
         self._advance(mono_s)
+        held = [fault is JointFault.SLIPPING for fault in self._faults]
         self._faults = faults
-        for joint, fault in zip(self._joints, faults, strict=True):
+        for number, (joint, fault) in enumerate(zip(self._joints, faults, strict=True)):
             if fault is JointFault.JAMMED:
                 joint.seize(mono_s)
+            elif self._is_at_rest and held[number] != (fault is JointFault.SLIPPING):
+                joint.run_at(mono_s, self._creep_deg_s(number))
         self._run_away(mono_s)
 
     def power(self, mono_s: float, *, is_on: bool) -> None:
@@ -86,8 +92,8 @@ class SimulatedMount:
             self._has_power = is_on
             self._under_way.clear()
             self._expires_s = inf
-            for joint in self._joints:
-                joint.run_at(mono_s, 0.0)
+            for number, joint in enumerate(self._joints):
+                joint.run_at(mono_s, self._creep_deg_s(number))
             self._run_away(mono_s)
 
     def _run_away(self, mono_s: float) -> None:
@@ -131,10 +137,20 @@ class SimulatedMount:
             self._rest(self._expires_s)
 
     def _rest(self, mono_s: float) -> None:
-        for joint, fault in zip(self._joints, self._faults, strict=True):
-            if fault is not JointFault.UNSTOPPABLE:
-                joint.run_at(mono_s, 0.0)
+        for number, joint in enumerate(self._joints):
+            if self._faults[number] is not JointFault.UNSTOPPABLE:
+                joint.run_at(mono_s, self._creep_deg_s(number))
         self._expires_s = inf
+
+    @property
+    def _is_at_rest(self) -> bool:
+        """Whether no order is being carried out."""
+        return self._expires_s == inf
+
+    def _creep_deg_s(self, number: int) -> float:
+        """How fast a joint goes that is told to rest."""
+        slips = self._faults[number] is JointFault.SLIPPING
+        return CREEP * self._builds[number].bounds.rate_deg_s if slips else 0.0
 
 
 _DISOBEDIENT = (JointFault.JAMMED, *_RUNNING)

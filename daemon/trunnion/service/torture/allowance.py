@@ -4,9 +4,14 @@ from trunnion.service.torture.mishap import MishapKind as Kind
 from trunnion.service.torture.scenario import Scenario
 
 ENCODER_ERROR_DEG = 0.05
+BENT_S = 3.0
+"""A bent antenna is brought back within its limits so long after, where it can be."""
 
-UNRULY = frozenset({Kind.REVERSED, Kind.RUNNING_AWAY, Kind.UNSTOPPABLE})
-"""Steel that does something else than it is told."""
+RUNNING = frozenset({Kind.REVERSED, Kind.RUNNING_AWAY, Kind.UNSTOPPABLE})
+"""Steel that moves otherwise than it is told, whatever it is told."""
+
+UNRULY = RUNNING | {Kind.SLIPPING}
+"""The same, and steel that does not rest when told to."""
 
 BLINDING = frozenset({Kind.CABLE_PULLED, Kind.SILENT, Kind.GARBLED, Kind.DEAD})
 """While one of these lasts nobody knows where the mount is."""
@@ -14,8 +19,9 @@ BLINDING = frozenset({Kind.CABLE_PULLED, Kind.SILENT, Kind.GARBLED, Kind.DEAD})
 DEAFENING = frozenset({Kind.CABLE_PULLED, Kind.SILENT, Kind.DEAF, Kind.SLOW_CALLS, Kind.DEATH})
 """While one of these lasts not even a halt gets through; the mount's own watchdog ends motion."""
 
-HINDERING = DEAFENING | {Kind.TORN_LATCH, Kind.STALL}
-"""While one of these lasts, and a time after it, the motors may have power all the same."""
+HINDERING = DEAFENING | {Kind.TORN_LATCH, Kind.STALL, Kind.SLIPPING}
+"""While one of these lasts, and a time after it, the motors may have power all the same, or the
+antenna moves without."""
 
 STOWING = frozenset({Kind.WIND, Kind.WIND_UNKNOWN, Kind.HEARTBEAT_LOST})
 
@@ -48,7 +54,19 @@ def excused_deg(scenario: Scenario, since_s: float) -> float:
         for each in scenario.mishaps
         if each.kind is Kind.OFFSET and each.at_s <= since_s
     ]
-    return ENCODER_ERROR_DEG + sum(offsets_deg)
+    return ENCODER_ERROR_DEG + sum(offsets_deg) + bent_deg(scenario, since_s)
+
+
+def bent_deg(scenario: Scenario, since_s: float) -> float:
+    """How far the wind bends the antenna, at most, until the readings have told of it."""
+    return max(
+        (
+            abs(each.amount)
+            for each in scenario.mishaps
+            if each.kind is Kind.WIND_PUSH and each.is_on(since_s, BENT_S)
+        ),
+        default=0.0,
+    )
 
 
 def is_unruly(scenario: Scenario, since_s: float) -> bool:

@@ -5,6 +5,7 @@ Written apart from the gate, and knows nothing of it. Each check stands for one 
 
 from collections import deque
 from collections.abc import Callable, Iterable, Iterator
+from math import inf
 from typing import NamedTuple
 
 from trunnion.mount.joints import Joints
@@ -147,7 +148,7 @@ class Checker:
         if self._rest is None:
             self._rest = now
         moved_deg = _apart_deg(now.true.joints, self._rest.true.joints)
-        if _is_moving(now) or moved_deg > STILL_DEG:
+        if _is_moving(now) or moved_deg > self._still_deg(now):
             return f"{moved_deg:.3f}° of motion while stopped"
         return None
 
@@ -198,8 +199,11 @@ class Checker:
         return f"moving blindly for {blind_s:.1f} s" if _is_moving(now) else None
 
     def _latches_disobedience(self, now: Instant) -> str | None:
+        if self._off_target_deg(now) < CONTACT_LOST_DEG:
+            self._runs_from.clear()  # along with the target nobody can tell it from obedience
+            return None
         for mishap in self._scenario.mishaps:
-            if mishap.kind not in allowance.UNRULY or not mishap.is_on(now.since_s):
+            if mishap.kind not in allowance.RUNNING or not mishap.is_on(now.since_s):
                 continue
             angle_deg = now.true[mishap.joint]
             ran_deg = abs(angle_deg - self._runs_from.setdefault(mishap, angle_deg))
@@ -208,6 +212,14 @@ class Checker:
             ):
                 return f"joint {mishap.joint + 1} ran {ran_deg:.1f}° and nothing was stopped"
         return None
+
+    def _off_target_deg(self, now: Instant) -> float:
+        """How far the true beam is off the target of the contact that is followed."""
+        if now.wish is not Wish.FOLLOW_PLAN:
+            return inf
+        place = self._scenario.mount.hinges.boresight(now.true.joints)
+        looks = (arc.look(now.utc_s) for arc in self._scenario.contacts if arc.is_on(now.utc_s))
+        return min((separation_deg(look[0], look[1], *place) for look in looks), default=inf)
 
     def _runaway_deg(self, joint: int) -> float:
         """How far a joint may run before it is noticed, at rest or under way."""
@@ -241,20 +253,26 @@ class Checker:
         if any(each.kind is Kind.RECOVER and each.at_s <= now.since_s for each in self._mishaps):
             return self._returns_slowly(now)
         moved_deg = _apart_deg(now.true.joints, self._scenario.start)
-        return f"moved {moved_deg:.2f}° from outside" if moved_deg > STILL_DEG else None
+        is_still = moved_deg <= self._still_deg(now)
+        return None if is_still else f"moved {moved_deg:.2f}° from outside"
+
+    def _still_deg(self, now: Instant) -> float:
+        """What counts as no motion: wind bends an antenna whose joints stand still."""
+        return STILL_DEG + allowance.bent_deg(self._scenario, now.since_s)
 
     def _returns_slowly(self, now: Instant) -> str | None:
         """Told to come back inside: by the shortest way, slowly, never further out."""
         place, last = now.true.joints, self._trail[-1] if self._trail else self._scenario.start
         self._trail.append(place)
         moved_deg = _apart_deg(place, self._trail[0])
-        if moved_deg > RETURN_DEG:
+        bent_deg = allowance.bent_deg(self._scenario, now.since_s)
+        if moved_deg > RETURN_DEG + bent_deg:
             return f"comes back inside by {moved_deg:.2f}° in a second"
         mount = self._scenario.mount
         for joint, before_deg, now_deg in zip(
             (mount.first, mount.second), last, place, strict=True
         ):
-            if _beyond_deg(now_deg, joint) > _beyond_deg(before_deg, joint) + STILL_DEG:
+            if _beyond_deg(now_deg, joint) > _beyond_deg(before_deg, joint) + STILL_DEG + bent_deg:
                 return f"led further out, to {place}"
         return None
 

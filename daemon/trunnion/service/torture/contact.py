@@ -38,6 +38,10 @@ class Arc(NamedTuple):
             share_per_s * second_deg,
         )
 
+    def is_on(self, utc_s: float) -> bool:
+        """Whether the contact is on at this instant."""
+        return self.begin_s <= utc_s < self.end_s
+
     def look(self, utc_s: float) -> Look:
         """Where the target stands; its rates are those of the joints and serve nobody here."""
         motion = self.at(utc_s)

@@ -16,6 +16,8 @@ class MishapKind(Enum):
     REVERSED = "joint reversed"
     RUNNING_AWAY = "joint running away"
     UNSTOPPABLE = "joint unstoppable"
+    SLIPPING = "brake slipping"
+    WIND_PUSH = "wind bends the antenna"
     FROZEN = "encoder frozen"
     DEAD = "encoder dead"
     OFFSET = "encoder offset"

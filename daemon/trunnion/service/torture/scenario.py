@@ -221,6 +221,7 @@ _LONG = frozenset({MishapKind.WIND, MishapKind.WIND_UNKNOWN, MishapKind.HEARTBEA
 
 _MOST = {
     MishapKind.OFFSET: 30.0,
+    MishapKind.WIND_PUSH: 0.6,
     MishapKind.CLOCK_STEP: 20.0,
     MishapKind.OLD_READINGS: 5.0,
     MishapKind.SLOW_CALLS: 0.9,

@@ -2,6 +2,7 @@
 
 from collections.abc import Callable, Mapping
 from importlib.metadata import entry_points
+from math import sqrt
 from typing import Protocol, cast
 
 from trunnion.mount.joints import Motion
@@ -9,6 +10,8 @@ from trunnion.service.torture.mishap import Mishap, MishapKind
 from trunnion.service.torture.scenario import Scenario
 from trunnion_drivers.interface.driver import Driver
 from trunnion_drivers.interface.values import Clock, DriverMotion, JointFacts, MountFacts
+
+BEND_DEG_S2_M2 = 0.001
 
 
 class _Truthful(Protocol):
@@ -27,6 +30,7 @@ class Steel:
         settings: dict[str, object] = {
             **scenario.machine,
             "start_deg": tuple(scenario.start),
+            "bend_deg_s2_m2": BEND_DEG_S2_M2,
             "switches_deg": 3.0,
             "overtravel_deg": 5.0,
             "faults": tuple(_episode(each) for each in scenario.mishaps if each.kind in _FAULTS),
@@ -50,6 +54,11 @@ def _episode(mishap: Mishap) -> dict[str, object]:
     return {"after_s": mishap.at_s, "for_s": mishap.lasts_s, **_FAULTS[mishap.kind](mishap)}
 
 
+def bent_by_m_s(bend_deg: float) -> float:
+    """The wind that bends the antenna so far."""
+    return sqrt(bend_deg / BEND_DEG_S2_M2)
+
+
 def _of_joint(mishap: Mishap, key: str, fault: str) -> dict[str, object]:
     pair = ["none", "none"]
     pair[mishap.joint] = fault
@@ -66,6 +75,8 @@ _FAULTS: Mapping[MishapKind, Callable[[Mishap], dict[str, object]]] = {
     MishapKind.REVERSED: lambda each: _of_joint(each, "joints", "reversed"),
     MishapKind.RUNNING_AWAY: lambda each: _of_joint(each, "joints", "running away"),
     MishapKind.UNSTOPPABLE: lambda each: _of_joint(each, "joints", "unstoppable"),
+    MishapKind.SLIPPING: lambda each: _of_joint(each, "joints", "slipping"),
+    MishapKind.WIND_PUSH: lambda each: {"wind_m_s": bent_by_m_s(abs(each.amount))},
     MishapKind.FROZEN: lambda each: _of_joint(each, "encoders", "frozen"),
     MishapKind.DEAD: lambda each: _of_joint(each, "encoders", "dead"),
     MishapKind.OFFSET: lambda each: {
