@@ -1,6 +1,7 @@
 """`trunnion torture`: whole stations in virtual time under every fault we could think of."""
 
 import os
+from collections import Counter
 from typing import TYPE_CHECKING, Annotated
 
 import typer
@@ -48,7 +49,9 @@ def _plain(results: "list[SeedResult]", failed: "list[SeedResult]") -> dict[str,
     return {
         "seeds": len(results),
         "contacts": sum(each.contacts for each in results),
-        "mishaps": sum(each.mishaps for each in results),
+        "mishaps": _by_kind(results),
+        "broken": _by_guarantee(failed),
+        "deepest_deg": max(each.deepest_deg for each in results),
         "failed": [
             {
                 "seed": each.seed,
@@ -70,9 +73,31 @@ def _print(results: "list[SeedResult]", failed: "list[SeedResult]") -> None:
                 f"  broken {violation.guarantee}, after {violation.since_s:.1f} s: "
                 f"{violation.sentence}"
             )
+    for counts in (_by_kind(results), _by_guarantee(failed)):
+        for what, count in counts.items():
+            print_text(f"{count:6d}  {what}")
     contacts = sum(each.contacts for each in results)
-    mishaps = sum(each.mishaps for each in results)
+    mishaps = sum(len(each.mishaps) for each in results)
+    print_text(_depth(max(each.deepest_deg for each in results)))
     print_text(
         f"{len(results)} stations, {contacts} contacts, {mishaps} mishaps; "
         f"promises broken at {len(failed)} stations"
+    )
+
+
+def _by_kind(results: "list[SeedResult]") -> dict[str, int]:
+    counted = Counter(kind.value for each in results for kind in each.mishaps)
+    return dict(counted.most_common())
+
+
+def _by_guarantee(failed: "list[SeedResult]") -> dict[str, int]:
+    counted = Counter(f"broken: {each.guarantee}" for one in failed for each in one.violations)
+    return dict(counted.most_common())
+
+
+def _depth(deepest_deg: float) -> str:
+    where = "above" if deepest_deg < 0.0 else "below"
+    return (
+        f"lowest true beam: {abs(deepest_deg):.3f}° {where} floor and mask, less the encoder's "
+        "own error"
     )

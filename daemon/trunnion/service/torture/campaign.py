@@ -6,6 +6,7 @@ from multiprocessing import get_context
 from typing import NamedTuple
 
 from trunnion.service.torture.checker import Violation
+from trunnion.service.torture.mishap import MishapKind
 from trunnion.service.torture.scenario import draw
 from trunnion.service.torture.trial import shrink, try_out
 
@@ -13,14 +14,16 @@ CHUNK = 4
 
 
 class SeedResult(NamedTuple):
-    """What came of one seed: how many contacts and mishaps, and what was violated.
+    """What came of one seed: how many contacts, which mishaps, and what was violated.
 
+    `deepest_deg` is how far the true beam came below floor and mask; negative is the room left.
     `fewest` are the mishaps, in words, that are needed to see the violations again.
     """
 
     seed: int
     contacts: int
-    mishaps: int
+    mishaps: tuple[MishapKind, ...]
+    deepest_deg: float
     violations: tuple[Violation, ...]
     fewest: tuple[str, ...]
 
@@ -28,11 +31,12 @@ class SeedResult(NamedTuple):
 def try_seed(seed: int) -> SeedResult:
     """Fly a seed; where it fails, find the fewest mishaps that still fail."""
     outcome = try_out(draw(seed))
-    contacts, mishaps = len(outcome.scenario.contacts), len(outcome.scenario.mishaps)
+    contacts, deepest_deg = len(outcome.scenario.contacts), outcome.deepest_deg
+    mishaps = tuple(each.kind for each in outcome.scenario.mishaps)
     if outcome.violations:
         outcome = shrink(outcome)
     fewest = tuple(map(str, outcome.scenario.mishaps)) if outcome.violations else ()
-    return SeedResult(seed, contacts, mishaps, outcome.violations, fewest)
+    return SeedResult(seed, contacts, mishaps, deepest_deg, outcome.violations, fewest)
 
 
 def try_seeds(seeds: range, workers: int) -> Iterator[SeedResult]:

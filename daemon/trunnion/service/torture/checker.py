@@ -32,6 +32,8 @@ RETURN_DEG = 1.2
 steel that swings round its orders, which come from readings that are a little wrong."""
 READING_MAX_AGE_S = 1.0
 CONTACT_LOST_DEG = 1.0
+NOTICED_DEG = 2.5
+"""A joint that should rest has moved so far at most when it is stopped for good."""
 SHORT_S = 1.1
 SOON_S, LATE_S = 25.0, 90.0
 """On target again so long after a short mishap, or after a longer one."""
@@ -56,6 +58,9 @@ class Checker:
         self._rest: Instant | None = None
         self._runs_from: dict[Mishap, float] = {}
         self._held: Instant | None = None
+        self._rests_from: tuple[float, Joints] | None = None
+        self.deepest_deg = -inf
+        """How far the true beam came below what is allowed, all excuses granted."""
         mount = scenario.mount
         self._braking_s = max(_braking_s(mount.first), _braking_s(mount.second))
         self._begins_outside = self._is_outside = not self._is_inside(scenario.start)
@@ -80,6 +85,7 @@ class Checker:
             ("3 reset starts nothing", self._rests_after_reset),
             ("4 blind", self._rests_when_blind),
             ("5 disobedience", self._latches_disobedience),
+            ("5 rests", self._notices_slipping),
             ("6 outside", self._stays_outside),
             ("7 stow", self._stows),
             ("8 transmit", self._transmits_on_target),
@@ -119,6 +125,7 @@ class Checker:
             clearance.lowest_deg((azimuth_deg + aside_deg) % 360.0)
             for aside_deg in (-excused_deg, 0.0, excused_deg)
         )
+        self.deepest_deg = max(self.deepest_deg, lowest_deg - excused_deg - elevation_deg)
         if elevation_deg < lowest_deg - excused_deg:
             return f"beam at {azimuth_deg:.2f}°/{elevation_deg:.3f}°, lowest is {lowest_deg:.3f}°"
         corners = (
@@ -213,6 +220,19 @@ class Checker:
                 return f"joint {mishap.joint + 1} ran {ran_deg:.1f}° and nothing was stopped"
         return None
 
+    def _notices_slipping(self, now: Instant) -> str | None:
+        """A joint that should rest and creeps is stopped for good, unless nobody can see it."""
+        is_to_rest = now.wish in {Wish.STAND, Wish.HOLD} and now.stopped is None
+        if not is_to_rest or any(self._was(now, kind, 30.0) for kind in _MOVING | _HIDING):
+            self._rests_from = None
+            return None
+        since_s, place = self._rests_from = self._rests_from or (now.since_s, now.true.joints)
+        if now.since_s - since_s < self._rest_after_s(now.since_s):
+            self._rests_from = since_s, now.true.joints
+        crept_deg = _apart_deg(now.true.joints, place)
+        is_unseen = crept_deg > NOTICED_DEG and _is_moving(now)
+        return f"a brake slipped by {crept_deg:.1f}°, unnoticed" if is_unseen else None
+
     def _off_target_deg(self, now: Instant) -> float:
         """How far the true beam is off the target of the contact that is followed."""
         if now.wish is not Wish.FOLLOW_PLAN:
@@ -231,20 +251,10 @@ class Checker:
         """How far it may run while nobody sees it."""
         mount = self._scenario.mount
         rate_deg_s = (mount.second if joint else mount.first).rate_deg_s
-        hiding = allowance.BLINDING | {
-            Kind.OLD_READINGS,
-            Kind.SLOW_CALLS,
-            Kind.STALL,
-            Kind.FROZEN,
-            Kind.DEATH,
-            Kind.TORN_LATCH,
-            Kind.DEAF,
-            Kind.REFUSING,
-        }
         return sum(
             rate_deg_s * (each.lasts_s + 4.0)
             for each in self._scenario.mishaps
-            if each.kind in hiding
+            if each.kind in _HIDING
         )
 
     def _stays_outside(self, now: Instant) -> str | None:
@@ -347,6 +357,21 @@ class Checker:
             for each in self._scenario.mishaps
         )
 
+
+_MOVING = allowance.STOWING | {Kind.RECOVER, Kind.CLOCK_UNTRUSTED}
+"""With one of these a mount that is told to hold moves all the same."""
+
+_HIDING = allowance.BLINDING | {
+    Kind.OLD_READINGS,
+    Kind.SLOW_CALLS,
+    Kind.STALL,
+    Kind.FROZEN,
+    Kind.DEATH,
+    Kind.TORN_LATCH,
+    Kind.DEAF,
+    Kind.REFUSING,
+}
+"""While one of these lasts, nobody can see what a joint does."""
 
 _STRAYING = frozenset({Kind.BAD_PLAN, Kind.NEW_PLAN, Kind.NO_PLAN, Kind.CLOCK_STEP})
 """With one of these the contacts as drawn do not say what the target is."""

@@ -9,10 +9,14 @@ from trunnion.service.torture.scenario import Scenario
 
 
 class Outcome(NamedTuple):
-    """What came of one scenario: its first violation of each guarantee."""
+    """What came of one scenario: its first violation of each guarantee.
+
+    `deepest_deg` is how far the true beam came below floor and mask; negative is the room left.
+    """
 
     scenario: Scenario
     violations: tuple[Violation, ...]
+    deepest_deg: float
 
 
 def try_out(scenario: Scenario, gate_of: GateOf = Gate) -> Outcome:
@@ -22,7 +26,7 @@ def try_out(scenario: Scenario, gate_of: GateOf = Gate) -> Outcome:
     for instant in Flight(scenario, gate_of).instants():
         for violation in checker.note(instant):
             first.setdefault(violation.guarantee, violation)
-    return Outcome(scenario, tuple(first.values()))
+    return Outcome(scenario, tuple(first.values()), checker.deepest_deg)
 
 
 def shrink(outcome: Outcome, gate_of: GateOf = Gate) -> Outcome:
