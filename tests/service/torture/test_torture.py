@@ -18,7 +18,7 @@ from trunnion.service.torture.campaign import try_seed, try_seeds
 from trunnion.service.torture.contact import Arc
 from trunnion.service.torture.flight import Flight, GateOf
 from trunnion.service.torture.mishap import Mishap, MishapKind
-from trunnion.service.torture.scenario import START_UTC_S, Scenario, draw
+from trunnion.service.torture.scenario import START_UTC_S, Scenario, Sun, draw
 from trunnion.service.torture.trial import Outcome, shrink, try_out
 
 MOUNT = Mount(
@@ -107,6 +107,10 @@ SLIPPING = replace(
 )
 
 
+WAY = ARC.at(START_UTC_S + 90.0).joints
+IN_THE_SUN = replace(given(MishapKind.RESUME, 3.1), sun=Sun(*MOUNT.hinges.boresight(WAY), 6.3))
+"""The contact leads through the circle, and is lost there; a button excuses that."""
+
 # each: what goes wrong, the gate that is put to the test, the promise that it breaks
 SPOILT = [
     (
@@ -120,6 +124,7 @@ SPOILT = [
         "5 disobedience",
     ),
     (given(MishapKind.REVERSED), without(Rule.WRONG_WAY, Rule.STALLED), "5 disobedience"),
+    (IN_THE_SUN, OpenGate, "2 Sun"),
     (SLIPPING, without(Rule.SLIPPED), "5 rests"),
     (given(MishapKind.STOP), without(Rule.EMERGENCY_STOP), "8 transmit"),
     (lasting(MishapKind.WIND), without(Rule.WIND), "7 stow"),

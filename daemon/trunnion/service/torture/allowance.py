@@ -41,6 +41,7 @@ HARMLESS = frozenset(
         Kind.DISK_FULL,
         Kind.NEW_PLAN,
         Kind.RECOVER,
+        Kind.SUN_UNKNOWN,
         *STOWING,
     }
 )

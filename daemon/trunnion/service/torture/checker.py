@@ -79,6 +79,7 @@ class Checker:
         return (
             ("1 travel", self._in_travel),
             ("2 sky", self._in_the_clear),
+            ("2 Sun", self._off_the_sun),
             ("3 stop holds", self._stop_holds),
             ("3 stop rests", self._rests_when_stopped),
             ("3 stop takes the power", self._rests_without_power),
@@ -135,6 +136,15 @@ class Checker:
         )
         if all(clearance.keep_out(*corner) is not None for corner in corners):
             return f"beam at {azimuth_deg:.2f}°/{elevation_deg:.2f}°, in a keep-out"
+        return None
+
+    def _off_the_sun(self, now: Instant) -> str | None:
+        sun = self._scenario.sun
+        if sun is None or allowance.is_unruly(self._scenario, now.since_s) or self._is_outside:
+            return None
+        apart_deg = sun.apart_deg(*self._scenario.mount.hinges.boresight(now.true.joints))
+        if apart_deg < sun.keep_out_deg - allowance.excused_deg(self._scenario, now.since_s):
+            return f"beam {apart_deg:.2f}° from the Sun, {sun.keep_out_deg:.2f}° are kept"
         return None
 
     # -- stops ----------------------------------------------------------------------------------

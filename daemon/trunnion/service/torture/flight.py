@@ -54,6 +54,7 @@ class Flight:
             clock_max_error_s=0.3,
             wind_stow_gust_m_s=WIND_LIMIT_M_S,
             heartbeat_max_age_s=5.0,
+            sun_keep_out_deg=scenario.sun.keep_out_deg if scenario.sun else None,
         )
         self._todo = [each for each in scenario.mishaps if each.kind in _AT_ONCE]
         self._assignments: Sequence[Assignment] | None = _assignments(scenario.contacts)
@@ -97,7 +98,14 @@ class Flight:
             None if self._is_on(MishapKind.WIND_UNKNOWN) else wind_m_s,
             None if self._is_on(MishapKind.HEARTBEAT_LOST) else 0.4,
             None if self._is_on(MishapKind.CLOCK_UNTRUSTED) else 0.02,
+            self._sun(),
         )
+
+    def _sun(self) -> tuple[float, float] | None:
+        sun = self._scenario.sun
+        if sun is None or self._is_on(MishapKind.SUN_UNKNOWN):
+            return None
+        return sun.azimuth_deg, sun.elevation_deg
 
     def _suffer(self, process: Process) -> Process:
         """Let happen what is due; the process may be another one afterwards."""

@@ -43,6 +43,7 @@ class MishapKind(Enum):
     WIND = "wind too high"
     WIND_UNKNOWN = "wind sensor lost"
     HEARTBEAT_LOST = "heartbeat lost"
+    SUN_UNKNOWN = "Sun unknown"
     RECOVER = "operator recovers"
 
 

@@ -36,6 +36,7 @@ class Weather(NamedTuple):
     wind_m_s: float | None = 3.7
     heartbeat_age_s: float | None = 0.4
     clock_error_s: float | None = 0.02
+    sun: tuple[float, float] | None = None
 
 
 class Process:
@@ -63,7 +64,9 @@ class Process:
         self._handlers = commands.handlers()
         self.desk.attach(self._link)
         mount = limits.mount.with_reserve(0.97, 0.7)
-        pilot = Pilot(Facts(mount, limits.clearance, TOLERANCE_DEG))
+        sun_deg = limits.sun_keep_out_deg
+        facts = Facts(mount, limits.clearance, TOLERANCE_DEG, sun_keep_out_deg=sun_deg)
+        pilot = Pilot(facts)
         self._transmit = TransmitJudge(limits, TOLERANCE_DEG)
         self._turn = ControlTurn(clock, self._link, pilot, gate, ())
         self._cadence = Cadence(clock, TICK_S)
@@ -111,4 +114,5 @@ class Process:
             wind_gust_m_s=weather.wind_m_s,
             heartbeat_age_s=weather.heartbeat_age_s,
             clock_error_s=weather.clock_error_s,
+            sun=weather.sun,
         )

@@ -1,13 +1,16 @@
 """One scenario, drawn from a seed: a station, its contacts, and what goes wrong."""
 
+from collections.abc import Sequence
 from dataclasses import dataclass, replace
 from random import Random
+from typing import NamedTuple
 
 from trunnion.mount.clearance import Clearance, Sector
 from trunnion.mount.hinges import Hinges
 from trunnion.mount.horizon import HorizonMask
 from trunnion.mount.joints import Joints
 from trunnion.mount.mount import JointLimits, Mount
+from trunnion.mount.sphere import separation_deg
 from trunnion.service.torture.contact import Arc
 from trunnion.service.torture.mishap import Mishap, MishapKind
 from trunnion.track.transit import NoWay, transit, transit_time_s
@@ -19,8 +22,23 @@ MARGIN_DEG = 1.0
 SHARE_OUTSIDE = 0.03
 """So many flights begin with the mount outside its travel."""
 
+SUN_ROOM_DEG = 5.0
+SHARE_IN_THE_SUN = 0.6
+
 PAUSE_S = 12.0
 LONGEST_MISHAP_S = 25.0
+
+
+class Sun(NamedTuple):
+    """Where the Sun stands (deg) for the short time of a flight, and how far the beam keeps off."""
+
+    azimuth_deg: float
+    elevation_deg: float
+    keep_out_deg: float
+
+    def apart_deg(self, azimuth_deg: float, elevation_deg: float) -> float:
+        """How far (deg) a direction is from the Sun."""
+        return separation_deg(self.azimuth_deg, self.elevation_deg, azimuth_deg, elevation_deg)
 
 
 @dataclass(frozen=True, slots=True)
@@ -34,6 +52,7 @@ class Scenario:
     machine: dict[str, float]
     contacts: tuple[Arc, ...]
     mishaps: tuple[Mishap, ...]
+    sun: Sun | None = None
 
     @property
     def end_s(self) -> float:
@@ -52,7 +71,8 @@ def draw(seed: int) -> Scenario:
     mount, clearance = _draw_station(chance)
     contacts = tuple(_draw_contacts(chance, mount, clearance))
     start = mount.stow if chance.random() > SHARE_OUTSIDE else _outside(chance, mount)
-    scenario = Scenario(seed, mount, clearance, start, _draw_machine(chance, seed), contacts, ())
+    machine, sun = _draw_machine(chance, seed), _draw_sun(seed, mount, contacts)
+    scenario = Scenario(seed, mount, clearance, start, machine, contacts, (), sun)
     count = chance.choice((0, 1, 1, 2, 2, 3, 5))
     mishaps = [_draw_mishap(chance, scenario.end_s) for _ in range(count)]
     if start != mount.stow:
@@ -195,6 +215,20 @@ def _is_free_way(start: Joints, goal: Joints, mount: Mount, clearance: Clearance
         )
         for step in range(81)
     )
+
+
+def _draw_sun(seed: int, mount: Mount, contacts: Sequence[Arc]) -> Sun | None:
+    """Near no contact, for those must not be lost; drawn apart, so that nothing else changes."""
+    chance = Random(f"Sun of {seed}")  # noqa: S311 - a drawn scenario, no secret
+    sun = Sun(chance.uniform(0.0, 360.0), chance.uniform(3.0, 70.0), chance.uniform(2.0, 12.0))
+    places = [mount.stow] + [
+        arc.at(arc.begin_s + step / 40 * (arc.end_s - arc.begin_s)).joints
+        for arc in contacts
+        for step in range(41)
+    ]
+    nearest_deg = min(sun.apart_deg(*mount.hinges.boresight(place)) for place in places)
+    has_room = nearest_deg > sun.keep_out_deg + SUN_ROOM_DEG
+    return sun if has_room and chance.random() < SHARE_IN_THE_SUN else None
 
 
 def _draw_machine(chance: Random, seed: int) -> dict[str, float]:
