@@ -95,12 +95,12 @@ def mutated(mutant: Mutant) -> ast.Module:
     return ast.fix_missing_locations(tree)
 
 
-class _Changed(MetaPathFinder, Loader):
+class Changed(MetaPathFinder, Loader):
     """Imports one module from a changed tree."""
 
-    def __init__(self, mutant: Mutant) -> None:
-        self._name = f"trunnion.safety.{mutant.module}"
-        self._tree = mutated(mutant)
+    def __init__(self, name: str, tree: ast.Module) -> None:
+        self._name = name
+        self._tree = tree
 
     def find_spec(
         self, fullname: str, path: Sequence[str] | None, target: ModuleType | None = None
@@ -113,7 +113,7 @@ class _Changed(MetaPathFinder, Loader):
 
 def survives(mutant: Mutant) -> bool:
     """Whether all tests pass with this change; run in a process of its own."""
-    sys.meta_path.insert(0, _Changed(mutant))
+    sys.meta_path.insert(0, Changed(f"trunnion.safety.{mutant.module}", mutated(mutant)))
     quiet = os.open(os.devnull, os.O_WRONLY)
     os.dup2(quiet, 1)
     os.dup2(quiet, 2)
