@@ -78,3 +78,12 @@ def test_the_way_back_inside_is_slow_never_outwards_and_only_by_leave() -> None:
     assert "6 outside" in returned(2.0)
     assert "6 outside" in returned(-0.3)
     assert "6 outside" in returned(0.4, begin_s=2.0)
+
+
+def test_records_that_are_not_written_are_a_broken_promise() -> None:
+    flown = scenario()
+    now = Instant(7.3, START_UTC_S + 7.3, Motion(*flown.mount.stow), None, Wish.FOLLOW_PLAN,
+                  may_transmit=False, is_alive=True, interventions=())  # fmt: skip
+    told = now._replace(records_trouble="records cannot be written: disk I/O error")
+    assert "records" not in {each.guarantee for each in Checker(flown).note(now)}
+    assert "records" in {each.guarantee for each in Checker(flown).note(told)}

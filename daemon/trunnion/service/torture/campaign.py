@@ -1,5 +1,6 @@
 """Many seeds, on all cores: what failed, what was lost, and how to see it again."""
 
+import logging
 from collections.abc import Iterator
 from concurrent.futures import ProcessPoolExecutor
 from multiprocessing import get_context
@@ -39,10 +40,16 @@ def try_seed(seed: int) -> SeedResult:
     return SeedResult(seed, contacts, mishaps, deepest_deg, outcome.violations, fewest)
 
 
+def _keep_quiet() -> None:
+    """What the daemon's parts log of their troubles is no news here."""
+    logging.getLogger("trunnion").addHandler(logging.NullHandler())
+
+
 def try_seeds(seeds: range, workers: int) -> Iterator[SeedResult]:
     """Fly every seed of a range, in order, in so many processes; one works in this process."""
+    _keep_quiet()
     if workers == 1:
         yield from map(try_seed, seeds)
         return
-    with ProcessPoolExecutor(workers, mp_context=get_context("spawn")) as pool:
+    with ProcessPoolExecutor(workers, get_context("spawn"), _keep_quiet) as pool:
         yield from pool.map(try_seed, seeds, chunksize=CHUNK)

@@ -90,6 +90,7 @@ class Checker:
             ("6 outside", self._stays_outside),
             ("7 stow", self._stows),
             ("8 transmit", self._transmits_on_target),
+            ("records", self._goes_on_record),
             ("comes back", self._comes_back),
             ("no false alarm", self._no_false_alarm),
         )
@@ -337,6 +338,11 @@ class Checker:
         return "transmitting is permitted outside all contacts"
 
     # -- what must not be lost ------------------------------------------------------------------
+
+    def _goes_on_record(self, now: Instant) -> str | None:
+        if self._was(now, Kind.TORN_LATCH, 5.0):
+            return None
+        return now.records_trouble
 
     def _comes_back(self, now: Instant) -> str | None:
         scenario = self._scenario

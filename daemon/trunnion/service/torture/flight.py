@@ -15,6 +15,7 @@ from trunnion.service.torture.contact import Arc
 from trunnion.service.torture.disk import TroubledLatch
 from trunnion.service.torture.mishap import Mishap, MishapKind
 from trunnion.service.torture.process import TICK_S, Process, Weather
+from trunnion.service.torture.records import TroubledBook, cannot_open
 from trunnion.service.torture.scenario import START_UTC_S, Scenario
 from trunnion.service.torture.steel import Steel
 from trunnion.track.path import Assignment
@@ -36,6 +37,7 @@ class Instant(NamedTuple):
     may_transmit: bool
     is_alive: bool
     interventions: tuple[str, ...]
+    records_trouble: str | None = None
 
 
 class Flight:
@@ -56,6 +58,7 @@ class Flight:
             heartbeat_max_age_s=5.0,
             sun_keep_out_deg=scenario.sun.keep_out_deg if scenario.sun else None,
         )
+        self.records_defect: str | None = None
         self._todo = [each for each in scenario.mishaps if each.kind in _AT_ONCE]
         self._assignments: Sequence[Assignment] | None = _assignments(scenario.contacts)
 
@@ -64,10 +67,12 @@ class Flight:
         with TemporaryDirectory(prefix="trunnion-") as folder:
             self._latch = TroubledLatch(Path(folder) / "latch")
             self._wish_file = Path(folder) / "wish"
+            self._records_file = Path(folder) / "records"
             process = self._start()
             while self._since_s() < self._scenario.end_s:
                 process = self._suffer(process)
                 turn, permit = process.beat(self._assignments, self._weather())
+                self._book.turn_over(is_full=self._is_on(MishapKind.DISK_FULL))
                 self._clock.sleep(0.5 * TICK_S)
                 stop = process.desk.latched
                 yield Instant(
@@ -79,11 +84,15 @@ class Flight:
                     permit.is_good_at(self._clock.monotonic_s()),
                     is_alive=True,
                     interventions=tuple(each.sentence for each in turn.verdict.interventions),
+                    records_trouble=self._book.trouble,
                 )
+            process.die(is_torn=False)
+            self.records_defect = cannot_open(self._records_file)
 
     def _start(self) -> Process:
-        gate = self._gate_of(self._limits)
-        return Process(gate, self._limits, self._steel, self._clock, self._latch, self._wish_file)
+        gate, limits, clock = self._gate_of(self._limits), self._limits, self._clock
+        self._book = book = TroubledBook(self._records_file, clock)
+        return Process(gate, limits, self._steel, clock, self._latch, self._wish_file, book)
 
     def _since_s(self) -> float:
         return self._clock.monotonic_s() - self._start_s
@@ -125,8 +134,9 @@ class Flight:
         elif kind in _PLANS:
             self._assignments = _PLANS[kind](self._scenario)
         else:
-            process.die()
-            if kind is MishapKind.TORN_LATCH:
+            is_torn = kind is MishapKind.TORN_LATCH
+            process.die(is_torn=is_torn)
+            if is_torn:
                 self._latch.tear()
             self._clock.sleep(min(mishap.lasts_s, 3.0))
             return self._start()

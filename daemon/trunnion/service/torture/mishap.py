@@ -30,7 +30,7 @@ class MishapKind(Enum):
     CLOCK_UNTRUSTED = "clock not synchronised"
     STALL = "turns stalled"
     DEATH = "process killed"
-    TORN_LATCH = "process killed, latch torn"
+    TORN_LATCH = "process killed, files torn"
     DISK_FULL = "disk full"
     STOP = "operator stops"
     RESET = "operator resets"

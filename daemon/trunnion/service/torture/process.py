@@ -14,16 +14,20 @@ from trunnion.safety.world import World
 from trunnion.service.cadence import Cadence
 from trunnion.service.clock import VirtualClock
 from trunnion.service.commands import Commands, Surroundings
+from trunnion.service.contact_log import ContactLog
 from trunnion.service.corrections import Corrections
 from trunnion.service.emergency_desk import EmergencyDesk, Keeping
 from trunnion.service.errors import ServiceError
 from trunnion.service.link.direct import DirectLink
 from trunnion.service.power_cut import PowerCut
+from trunnion.service.recorder import Recorder
 from trunnion.service.recovery_leave import RecoveryLeave
 from trunnion.service.standing_wish import StandingWish
 from trunnion.service.surroundings import HARDWARE_STOP, world_of
+from trunnion.service.torture.records import TroubledBook
 from trunnion.service.torture.steel import Steel
 from trunnion.service.turn import ControlTurn, Orders, Turn
+from trunnion.track.beam import Beam
 from trunnion.track.path import Assignment
 
 TICK_S = 0.1
@@ -50,8 +54,10 @@ class Process:
         clock: VirtualClock,
         latch: Keeping,
         wish_file: Path,
+        book: TroubledBook,
     ) -> None:
         self._steel = steel
+        self._book = book
         self.troubles: list[str] = []
         self.desk = EmergencyDesk(latch, clock, self.troubles.append)
         self.wish = StandingWish(wish_file)
@@ -68,7 +74,9 @@ class Process:
         facts = Facts(mount, limits.clearance, TOLERANCE_DEG, sun_keep_out_deg=sun_deg)
         pilot = Pilot(facts)
         self._transmit = TransmitJudge(limits, TOLERANCE_DEG)
-        self._turn = ControlTurn(clock, self._link, pilot, gate, ())
+        recorder = Recorder(book)
+        observers = (ContactLog(Beam(2.0 * TOLERANCE_DEG, TOLERANCE_DEG), recorder), recorder)
+        self._turn = ControlTurn(clock, self._link, pilot, gate, observers)
         self._cadence = Cadence(clock, TICK_S)
 
     def beat(
@@ -98,9 +106,10 @@ class Process:
             return False
         return True
 
-    def die(self) -> None:
-        """Be killed: nothing is said to the mount any more."""
+    def die(self, *, is_torn: bool) -> None:
+        """Be killed: nothing is said to the mount any more, and the disk may lose what is new."""
         self._steel.driver.close()
+        self._book.die(is_torn=is_torn)
 
     def _stop(self, cause: str) -> None:
         self._leave.withdraw()

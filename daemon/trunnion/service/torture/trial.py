@@ -23,9 +23,12 @@ def try_out(scenario: Scenario, gate_of: GateOf = Gate) -> Outcome:
     """Fly a scenario to its end, and judge every instant of it."""
     checker = Checker(scenario)
     first: dict[str, Violation] = {}
-    for instant in Flight(scenario, gate_of).instants():
+    flight = Flight(scenario, gate_of)
+    for instant in flight.instants():
         for violation in checker.note(instant):
             first.setdefault(violation.guarantee, violation)
+    if flight.records_defect is not None:
+        first["records"] = Violation(scenario.end_s, "records", flight.records_defect)
     return Outcome(scenario, tuple(first.values()), checker.deepest_deg)
 
 
