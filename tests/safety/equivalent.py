@@ -7,9 +7,14 @@ _NO_STEP = (
     "and the monotonic clock never goes back"
 )
 _CLOSER = "nothing is missed by a closer look than was needed, it only takes longer"
+_ORDER = "of these numbers only the order counts, and that stays"
 _GUARD = "it only keeps a division from being one by zero; anything tiny serves"
 
 EQUIVALENT: dict[str, str] = {
+    "verdict: SLOW = 1: less": _ORDER,
+    "verdict: LATCH = 4: greater": _ORDER,
+    "rest: self._settled_s = 0.0: greater": _NEVER_READ,
+    "rest: self._settled_s = 0.0: less": _NEVER_READ,
     "gate: self._ordered_s = 0.0: greater": _NEVER_READ,
     "gate: self._ordered_s = 0.0: less": _NEVER_READ,
     "obedience: self._readings = 0: greater": _NEVER_READ,

@@ -9,8 +9,10 @@ nothing that can be seen are listed in `EQUIVALENT`, each with its reason.
 import ast
 import os
 import sys
-from collections.abc import Iterator, Sequence
+from collections import Counter
+from collections.abc import Iterator, MutableSequence, Sequence
 from copy import deepcopy
+from functools import partial
 from importlib.abc import Loader, MetaPathFinder
 from importlib.machinery import ModuleSpec
 from importlib.util import spec_from_loader
@@ -19,6 +21,7 @@ from pathlib import Path
 from types import ModuleType
 from typing import NamedTuple
 
+import hypothesis.strategies  # noqa: F401 - imported once, before the processes fork
 import pytest
 
 from tests.safety.equivalent import EQUIVALENT
@@ -26,6 +29,9 @@ from tests.safety.equivalent import EQUIVALENT
 ROOM = Path(__file__).parents[2] / "daemon" / "trunnion" / "safety"
 TESTS = Path(__file__).parent
 PATIENCE_S = 60
+
+SLOW = ("test_checks_removed.py",)
+"""Tests that run all the others themselves."""
 
 SWAPS: dict[type[ast.cmpop], type[ast.cmpop]] = {
     ast.Lt: ast.LtE,
@@ -111,28 +117,64 @@ class Changed(MetaPathFinder, Loader):
         exec(compile(self._tree, self._name, "exec"), module.__dict__)
 
 
-def survives(mutant: Mutant) -> bool:
+class _Sooner:
+    """Orders the tests: recent killers, then those of the changed module, then the rest."""
+
+    def __init__(self, module: str, killers: Sequence[str]) -> None:
+        self._file = f"test_{module}.py"
+        self._killers = killers
+        self.killer: str | None = None
+
+    def pytest_collection_modifyitems(self, items: list[pytest.Item]) -> None:
+        items.sort(key=self._turn)
+
+    def pytest_runtest_logreport(self, report: pytest.TestReport) -> None:
+        if report.failed:
+            self.killer = report.nodeid
+
+    def _turn(self, item: pytest.Item) -> tuple[bool, int, bool]:
+        is_killer = item.nodeid in self._killers
+        last = max((at for at, each in enumerate(self._killers) if each == item.nodeid), default=0)
+        return not is_killer, -last, item.path.name != self._file
+
+
+def survives(mutant: Mutant, killers: MutableSequence[str]) -> bool:
     """Whether all tests pass with this change; run in a process of its own."""
     sys.meta_path.insert(0, Changed(f"trunnion.safety.{mutant.module}", mutated(mutant)))
     quiet = os.open(os.devnull, os.O_WRONLY)
     os.dup2(quiet, 1)
     os.dup2(quiet, 2)
     options = ["-x", "-q", "-p", "no:cacheprovider", f"--timeout={PATIENCE_S}"]
-    return pytest.main([*options, str(TESTS)]) == pytest.ExitCode.OK
+    slow = [f"--ignore={TESTS / name}" for name in SLOW]
+    warmed = ["-W", "ignore::pytest.PytestAssertRewriteWarning"]
+    sooner = _Sooner(mutant.module, list(killers))
+    outcome = pytest.main([*options, *slow, *warmed, str(TESTS)], [sooner])
+    if sooner.killer is not None:
+        killers.append(sooner.killer)
+    return outcome == pytest.ExitCode.OK
 
 
 def main(modules: Sequence[str]) -> int:
     """Try every mutant; the number of those that nobody noticed and nobody has explained."""
     known = sorted(path.stem for path in ROOM.glob("[a-z]*.py"))
     mutants = [mutant for module in modules or known for mutant in mutants_of(module)]
-    unexplained = 0
-    with get_context("fork").Pool(os.cpu_count(), maxtasksperchild=1) as pool:
-        for mutant, has_survived in zip(mutants, pool.imap(survives, mutants), strict=True):
-            if has_survived and mutant.name not in EQUIVALENT:
-                unexplained += 1
-                print(f"{mutant.module}.py:{mutant.line}  {mutant.name}", flush=True)
-    print(f"{len(mutants)} changes, {unexplained} that no test noticed")
-    return unexplained
+    survivors: Counter[str] = Counter()
+    unexplained: Counter[str] = Counter()
+    context = get_context("fork")
+    with context.Manager() as manager:
+        attempt = partial(survives, killers=manager.list())
+        with context.Pool(os.cpu_count(), maxtasksperchild=1) as pool:
+            for mutant, has_survived in zip(mutants, pool.imap(attempt, mutants), strict=True):
+                survivors[mutant.module] += has_survived
+                if has_survived and mutant.name not in EQUIVALENT:
+                    unexplained[mutant.module] += 1
+                    print(f"{mutant.module}.py:{mutant.line}  {mutant.name}", flush=True)
+    for module, tried in Counter(mutant.module for mutant in mutants).items():
+        print(
+            f"{module}: {tried} changes, {tried - survivors[module]} noticed, "
+            f"{survivors[module] - unexplained[module]} explained, {unexplained[module]} neither"
+        )
+    return unexplained.total()
 
 
 if __name__ == "__main__":

@@ -1,5 +1,7 @@
 """When the motors lose their power after a stop."""
 
+from math import inf, nextafter
+
 from tests.safety.bench_mount import LIMITS
 from trunnion.mount.joints import Reading
 from trunnion.safety.power import PowerJudge
@@ -48,3 +50,10 @@ def test_without_a_stop_it_stays_and_the_next_stop_is_counted_from_its_own_begin
     assert not judge.must_cut(later_s + 0.1, reading, is_stopped=True)
     assert not judge.must_cut(later_s + 0.1 + 0.9 * LONGEST_S, reading, is_stopped=True)
     assert judge.must_cut(later_s + 0.2 + LONGEST_S, reading, is_stopped=True)
+
+
+def test_the_last_moment_is_its_own() -> None:
+    judge = PowerJudge(LIMITS)
+    assert not judge.must_cut(0.0, None, is_stopped=True)
+    assert not judge.must_cut(LONGEST_S, None, is_stopped=True)
+    assert judge.must_cut(nextafter(LONGEST_S, inf), None, is_stopped=True)

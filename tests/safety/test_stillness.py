@@ -1,10 +1,12 @@
 """Whether the mount stands still."""
 
+from math import nextafter
+
 import pytest
 
 from tests.safety.bench_mount import LIMITS
 from trunnion.mount.joints import Reading
-from trunnion.safety.stillness import Stillness
+from trunnion.safety.stillness import STILL_S, Stillness
 
 # encoder error 0.05: up to 0.1 deg is no motion
 
@@ -36,3 +38,17 @@ def test_what_is_forgotten_has_to_be_seen_again() -> None:
     stillness.is_still(Reading(71.25, 50.0, 41.3))
     stillness.forget()
     assert not stillness.is_still(Reading(71.5, 50.0, 41.3))
+
+
+def test_the_moment_is_over_when_it_has_passed() -> None:
+    stillness = Stillness(LIMITS)
+    stillness.is_still(Reading(0.0, 50.0, 41.3))
+    assert not stillness.is_still(Reading(nextafter(STILL_S, 0.0), 50.0, 41.3))
+    assert stillness.is_still(Reading(STILL_S, 50.0, 41.3))
+
+
+@pytest.mark.parametrize("place", [(0.1, 0.0), (-0.1, 0.0), (0.0, 0.1), (0.0, -0.1)])
+def test_just_the_encoders_error_at_both_ends_is_no_motion(place: tuple[float, float]) -> None:
+    stillness = Stillness(LIMITS)
+    stillness.is_still(Reading(71.25, 0.0, 0.0))
+    assert stillness.is_still(Reading(71.5, *place))

@@ -15,6 +15,14 @@ SLOWED = MOVING._replace(
     interventions=(Intervention(Rule.RATE, Action.SLOW, "too fast: slowed down"),)
 )
 STOWING = MOVING._replace(interventions=(Intervention(Rule.WIND, Action.STOW, "gusts: to stow"),))
+HALTED_AND_STOWING = Verdict(
+    Halt(),
+    interventions=(
+        Intervention(Rule.RATE, Action.SLOW, "too fast: slowed down"),
+        Intervention(Rule.LINK_DOWN, Action.HALT, "no answer: halted"),
+        Intervention(Rule.WIND, Action.STOW, "gusts: to stow"),
+    ),
+)
 LATCHED = Verdict(Halt(), latch="the mount is stuck")
 
 
@@ -60,6 +68,8 @@ def test_the_beam_must_not_sink_below_the_floor_before_the_next_look() -> None:
     )
     assert gently.until_s is not None
     assert steeply == TransmitPermit(None, "on the way below the transmit floor of 10.7°")
+    lowest = Verdict(Move(Motion(201.7, 10.7)))
+    assert judged(permitted(), 72.1, elevation_deg=11.6, verdict=lowest).until_s is not None
     lower = Verdict(Move(Motion(201.7, 10.6)))
     assert judged(permitted(), 72.1, elevation_deg=11.6, verdict=lower).until_s is None
     assert judged(permitted(), 72.1, verdict=Verdict(Halt())).until_s is not None
@@ -77,6 +87,7 @@ def test_the_beam_must_not_sink_below_the_floor_before_the_next_look() -> None:
         ({"age_s": nan}, "nobody knows where the mount is"),
         ({"verdict": STOWING}, "gusts: to stow"),
         ({"verdict": LATCHED}, "the mount is stuck"),
+        ({"verdict": HALTED_AND_STOWING}, "no answer: halted"),
     ],
 )
 def test_it_ends_at_once_and_is_counted_anew(change: dict[str, object], reason: str) -> None:
