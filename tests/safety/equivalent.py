@@ -19,8 +19,12 @@ EQUIVALENT: dict[str, str] = {
     "gate: self._ordered_s = 0.0: less": _NEVER_READ,
     "obedience: self._readings = 0: greater": _NEVER_READ,
     "obedience: self._readings = 0: less": _NEVER_READ,
-    "obedience: if run_deg < 0.0:: 0 LtE": "a run of no length has both ends at one place",
-    "orders: return first_deg + second_deg < ROOM_DEG: 0 LtE": (
+    (
+        "obedience: if done_deg * gap_deg < 0.0 and abs(gap_deg) > abs(was_deg) + self._most_deg:"
+        ": 0 Lt LtE"
+    ): "a joint that has moved, and has no gap to its order, is not away from it either",
+    "obedience: if run_deg < 0.0:: 0 Lt LtE": "a run of no length has both ends at one place",
+    "orders: return first_deg + second_deg < ROOM_DEG: 0 Lt LtE": (
         "at the very edge of the room that was looked at nothing is forbidden either"
     ),
     "orders: limits.turn_s + rate_deg_s / (2.0 * braking.acceleration_deg_s2): less": _CLOSER,

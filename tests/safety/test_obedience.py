@@ -1,20 +1,25 @@
 """Readings held against orders: behind, frozen, away."""
 
+from dataclasses import replace
+
 import pytest
 
 from tests.safety.bench_mount import LIMITS
 from trunnion.mount.joints import Motion, Reading
+from trunnion.safety.limits import SafetyLimits
 from trunnion.safety.obedience import Obedience
 from trunnion.safety.verdict import Rule
 
 # stall error 3.0, slip 1.0, encoder error 0.05: more than 1.1 deg counts
+EXACT = replace(LIMITS, encoder_error_deg=0.0625)
+"""More than 1.125 deg counts, without any rounding."""
 
 
 class Watched:
     """An obedience that is fed with one joint's angles, the other one obeying exactly."""
 
-    def __init__(self, joint: int) -> None:
-        self.obedience = Obedience(LIMITS)
+    def __init__(self, joint: int, limits: SafetyLimits = LIMITS) -> None:
+        self.obedience = Obedience(limits)
         self.joint = joint
         self.mono_s = 71.25
 
@@ -131,6 +136,58 @@ def test_a_joint_that_was_halted_begins_anew() -> None:
     assert watched.see(50.0, 51.2) == set()
     assert watched.see(50.0, 52.2) == set()
     assert watched.see(50.0, 52.4) == {Rule.WRONG_WAY}
+
+
+@joints
+def test_having_moved_by_just_what_is_allowed_it_is_still_judged_from_its_begin(joint: int) -> None:
+    watched = Watched(joint, EXACT)
+    assert watched.see(0.0, 0.0) == set()
+    assert watched.see(0.0, 1.125) == set()
+    assert watched.see(0.0, 1.25) == {Rule.WRONG_WAY}
+
+
+@joints
+def test_a_gap_that_has_grown_by_just_what_is_allowed_is_allowed(joint: int) -> None:
+    watched = Watched(joint, EXACT)
+    watched.see(0.0, 0.0)
+    assert watched.see(-0.125, -1.25) == set()
+
+
+@joints
+@pytest.mark.parametrize(
+    ("aside_deg", "found"), [(1.125, {Rule.WRONG_WAY}), (1.25, set())], ids=["just", "more"]
+)
+def test_only_an_order_farther_aside_than_any_slip_begins_anew(
+    joint: int, aside_deg: float, found: set[Rule]
+) -> None:
+    watched = Watched(joint, EXACT)
+    watched.see(0.0, 0.0)
+    assert watched.see(aside_deg, -1.25) == found
+
+
+@joints
+def test_however_little_slip_is_allowed_the_way_is_told_from_the_orders_side(joint: int) -> None:
+    strict = replace(LIMITS, slip_deg=0.25, encoder_error_deg=0.0)
+    away = Watched(joint, strict)
+    away.see(0.0, 0.0)
+    assert away.see(0.0, -0.375) == {Rule.WRONG_WAY}
+    behind = Watched(joint, strict)
+    behind.see(0.0, 0.0)
+    assert behind.see(0.875, 0.375) == set()
+
+
+@joints
+def test_orders_that_moved_on_by_just_what_is_allowed_freeze_nothing(joint: int) -> None:
+    watched = Watched(joint, EXACT)
+    for ordered_deg in (0.0, 0.5, 0.75, 1.0, 1.125):
+        assert watched.see(ordered_deg, 0.0) == set()
+    assert watched.see(1.25, 0.0) == {Rule.FROZEN}
+
+
+def test_it_has_gone_on_for_no_longer_than_since_the_order() -> None:
+    ordered, reading = Motion(50.0, 41.3, 10.0, 0.0), Reading(71.35, 54.2, 41.3)
+    (found,) = Obedience(LIMITS).find(ordered, 71.25, reading)
+    assert found.rule is Rule.STALLED
 
 
 def test_findings_name_the_joint() -> None:

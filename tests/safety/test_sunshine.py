@@ -107,6 +107,15 @@ def test_the_way_out_is_the_nearest_and_only_for_the_sun() -> None:
     assert unread.way_out is None
 
 
+def test_the_way_out_ends_outside_with_room_to_spare_and_not_much_more() -> None:
+    # 4.3 to keep, 0.2 of leeway, 0.2 of room: 4.7
+    near = bench(Joints(211.7, 37.58)).turn(None, DAY).way_out
+    assert near == pytest.approx((211.7, 36.58))  # 4.72° away
+    far = bench(Joints(211.7, 37.63)).turn(None, DAY).way_out
+    assert far is not None
+    assert separation_deg(*far, *SUN) > 4.7  # straight down would be 4.67°
+
+
 def test_from_its_middle_every_mount_gets_out() -> None:
     for hinges_of in (Hinges.x_y_north_south(), Hinges.hour_angle_declination(47.3)):
         mount = replace(LIMITS.mount, hinges=hinges_of, second=JointLimits(-88.0, 91.0, 4.7, 2.1))
