@@ -8,6 +8,7 @@ _NO_STEP = (
 )
 _CLOSER = "nothing is missed by a closer look than was needed, it only takes longer"
 _ORDER = "of these numbers only the order counts, and that stays"
+_ROUNDING = "it only forgives rounding, and rounding is a thousand times smaller"
 _GUARD = "it only keeps a division from being one by zero; anything tiny serves"
 
 EQUIVALENT: dict[str, str] = {
@@ -17,6 +18,24 @@ EQUIVALENT: dict[str, str] = {
     "rest: self._settled_s = 0.0: less": _NEVER_READ,
     "gate: self._ordered_s = 0.0: greater": _NEVER_READ,
     "gate: self._ordered_s = 0.0: less": _NEVER_READ,
+    "places: FINEST_DEG = 0.02: less": _CLOSER,
+    "places: if reach_deg <= FINEST_DEG or _is_free_around(one, reach_deg, limits):: 0 LtE Lt": (
+        _CLOSER
+    ),
+    "places: ROUNDING_DEG = 1e-9: greater": _ROUNDING,
+    "places: ROUNDING_DEG = 1e-9: less": _ROUNDING,
+    "places: return _find_between(way, 0.0, 1.0, limits, allowance_deg): greater": (
+        "both joints are at rest by then, and stay there"
+    ),
+    (
+        "places: slowing = joint.acceleration_deg_s2 if rate_deg_s > 0.0 "
+        "else -joint.acceleration_deg_s2: 0 Gt GtE"
+    ): "a joint at rest brakes for no time",
+    (
+        "places: 0.0 if sector is None else "
+        "_depth_in_sector_deg(azimuth_deg, elevation_deg, sector),: less"
+    ): "the worst counts, and one of the others is 0",
+    "places: 0.0,: less": "a place in no sector has the depth 0 in it, and the worst counts",
     "obedience: self._readings = 0: greater": _NEVER_READ,
     "obedience: self._readings = 0: less": _NEVER_READ,
     (

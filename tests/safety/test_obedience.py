@@ -172,8 +172,8 @@ def test_however_little_slip_is_allowed_the_way_is_told_from_the_orders_side(joi
     away.see(0.0, 0.0)
     assert away.see(0.0, -0.375) == {Rule.WRONG_WAY}
     behind = Watched(joint, strict)
-    behind.see(0.0, 0.0)
-    assert behind.see(0.875, 0.375) == set()
+    ways = ((0.0, 0.0), (0.25, 0.05), (0.5, 0.1), (0.75, 0.15), (0.875, 0.375))
+    assert [behind.see(*way) for way in ways] == [set()] * 5
 
 
 @joints

@@ -6,6 +6,7 @@ import pytest
 
 from tests.mount.mounts import MOUNT
 from tests.safety.bench_mount import LIMITS
+from trunnion.mount.clearance import Circle, Clearance, Sector
 from trunnion.mount.joints import Joints, Motion
 from trunnion.mount.mount import JointBox
 from trunnion.safety.places import (
@@ -64,6 +65,23 @@ def test_the_limits_themselves_are_allowed(place: Joints) -> None:
     assert find_at(place, LIMITS) is None
 
 
+@pytest.mark.parametrize(
+    "place", [Joints(268.0, 41.3), Joints(-271.0, 41.3), Joints(201.7, 91.0), Joints(201.7, 1.5)]
+)
+def test_the_ends_of_the_travel_need_no_rounding(place: Joints) -> None:
+    assert find_at(place, replace(LIMITS, clearance=Clearance(-5.3, None)), 0.0) is None
+
+
+def test_floor_mask_and_circle_need_no_rounding_either() -> None:
+    assert find_at(Joints(130.1, 5.3), LIMITS, 0.0) is None
+    assert find_at(Joints(93.1, 11.7), LIMITS, 0.0) is None
+    circle = Circle("the Sun", 201.7, 41.3, 4.3)
+    limits = replace(LIMITS, clearance=LIMITS.clearance.with_circle(circle))
+    outside_deg = circle.depth_deg(201.7, 36.5)
+    assert find_at(Joints(201.7, 36.5), limits, outside_deg) is None
+    assert find_at(Joints(201.7, 36.5), limits, outside_deg - 0.001) is not None
+
+
 @pytest.mark.parametrize("place", [Joints(268.05, 41.3), Joints(130.1, 5.25), Joints(93.1, 11.65)])
 def test_an_allowance_forgives_that_much(place: Joints) -> None:
     assert find_at(place, LIMITS, 0.051) is None
@@ -96,6 +114,13 @@ def test_the_place_of_rest_counts_on_less_than_full_braking() -> None:
     assert stopping_place(Motion(201.7, 41.3, 5.0, -3.0), LIMITS) == pytest.approx(expected)
 
 
+@pytest.mark.parametrize("side", [-1.0, 1.0])
+def test_the_slowest_motion_goes_on_to_its_own_side_too(side: float) -> None:
+    expected = (201.7 + side * 0.25 / 4.64, 41.3)
+    place = stopping_place(Motion(201.7, 41.3, side * 0.5, 0.0), LIMITS)
+    assert place == pytest.approx(expected, abs=1e-9)
+
+
 def test_each_joint_brakes_by_itself_and_the_way_is_bent() -> None:
     """From here the straight way to rest passes the strut, and the real one does not."""
     motion = Motion(196.9, 54.0, 5.9, 0.9)
@@ -110,6 +135,25 @@ def test_what_is_in_the_way_of_stopping_is_found() -> None:
     assert find_while_stopping(Motion(138.0, 20.3, 1.9, 0.0), LIMITS) is None
     assert find_while_stopping(Motion(201.7, 7.3, 0.0, -2.9), LIMITS) is not None
     assert find_while_stopping(Motion(201.7, 9.3, 0.0, 2.9), LIMITS) is None
+
+
+@pytest.mark.parametrize(
+    ("pole_deg", "is_met"), [(137.5, False), (138.5, True), (145.1, True), (145.7, False)]
+)
+def test_stopping_takes_the_way_from_here_to_rest_and_no_more(
+    pole_deg: float, is_met: bool
+) -> None:
+    """From 5.9 deg/s at 4/5 of 2.9 deg/s²: 7.502 degrees, to 145.502."""
+    pole = Sector("the pole", pole_deg, pole_deg + 0.03, 1.1, 27.9)
+    limits = replace(LIMITS, clearance=Clearance(5.3, None, (pole,)))
+    found = find_while_stopping(Motion(138.0, 20.3, 5.9, 0.0), limits)
+    assert (found is not None) == is_met
+
+
+def test_a_step_over_a_pole_hardly_wider_than_the_finest_is_seen() -> None:
+    pole = Sector("the pole", 144.122, 144.143, 1.1, 27.9)
+    limits = replace(LIMITS, clearance=Clearance(5.3, None, (pole,)))
+    assert find_on_the_way(Joints(144.12, 20.3), Joints(144.145, 20.3), limits) is not None
 
 
 @pytest.mark.parametrize(
@@ -136,3 +180,14 @@ def test_depth_is_how_far_outside_the_worst_of_them(place: Joints, depth: float)
 )
 def test_depth_in_a_forbidden_box_is_the_way_to_its_nearest_face(place: Joints) -> None:
     assert depth_deg(place, STRUTTED) == pytest.approx(0.7)
+
+
+@pytest.mark.parametrize(
+    ("from_deg", "to_deg", "azimuth_deg"), [(350.0, 20.0, 2.0), (340.0, 10.0, -2.0)]
+)
+def test_depth_in_a_sector_across_north_is_the_way_to_its_nearer_side(
+    from_deg: float, to_deg: float, azimuth_deg: float
+) -> None:
+    across = Sector("the mast", from_deg, to_deg, 1.1, 60.7)
+    limits = replace(LIMITS, clearance=Clearance(5.3, None, (across,)))
+    assert depth_deg(Joints(azimuth_deg, 30.1), limits) == pytest.approx(12.0)

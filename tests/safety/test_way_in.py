@@ -1,10 +1,13 @@
 """The way back inside, from every kind of outside."""
 
+from dataclasses import replace
+
 import pytest
 from hypothesis import given
 from hypothesis import strategies as st
 
 from tests.safety.bench_mount import LIMITS
+from trunnion.mount.clearance import Clearance
 from trunnion.mount.joints import Joints
 from trunnion.safety.places import depth_deg, find_at
 from trunnion.safety.way_in import LONGEST_DEG, ROOM_DEG, find_way_in
@@ -37,6 +40,12 @@ def test_it_is_the_nearest_place_inside(place: Joints, goal: Joints) -> None:
 def test_inside_there_is_none_and_from_too_far_outside_neither() -> None:
     assert find_way_in(Joints(201.7, 41.3), LIMITS) is None
     assert find_way_in(Joints(201.7, -90.0 - LONGEST_DEG), LIMITS) is None
+
+
+def test_up_to_forty_degrees_away_a_way_is_looked_for() -> None:
+    high = replace(LIMITS, clearance=Clearance(45.0, None))
+    assert find_way_in(Joints(201.7, 5.3), high) is not None
+    assert find_way_in(Joints(201.7, 4.9), high) is None
 
 
 @given(first_deg=st.floats(-290.0, 290.0), second_deg=st.floats(-10.0, 100.0))
