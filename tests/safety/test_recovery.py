@@ -22,3 +22,10 @@ def test_past_the_travel_the_other_joint_stays_where_it_is() -> None:
     bench = Bench(place=Joints(268.9, 41.3)).settle()
     assert rules(bench.turn(Motion(268.9, 45.1), LEAVE)) == {Rule.OUTSIDE}
     assert not rules(bench.turn(Motion(267.3, 45.1), LEAVE))
+
+
+def test_leave_takes_nothing_from_a_mount_inside() -> None:
+    bench = Bench(place=Joints(267.6, 41.3)).settle()
+    demand = Motion(267.6, 41.303)
+    verdict = bench.turn(demand, LEAVE)
+    assert (verdict.order, rules(verdict)) == (Move(demand), set())
