@@ -234,7 +234,10 @@ class Checker:
     def _notices_slipping(self, now: Instant) -> str | None:
         """A joint that should rest and creeps is stopped for good, unless nobody can see it."""
         is_to_rest = now.wish in {Wish.STAND, Wish.HOLD} and now.stopped is None
-        if not is_to_rest or any(self._was(now, kind, 30.0) for kind in _MOVING | _HIDING):
+        slips = allowance.is_any_on(self._scenario, _SLIPPING, now.since_s)
+        if not (is_to_rest and slips) or any(
+            self._was(now, kind, 30.0) for kind in _MOVING | _HIDING
+        ):
             self._rests_from = None
             return None
         since_s, place = self._rests_from = self._rests_from or (now.since_s, now.true.joints)
@@ -376,6 +379,8 @@ class Checker:
 
 _MOVING = allowance.STOWING | {Kind.RECOVER, Kind.CLOCK_UNTRUSTED}
 """With one of these a mount that is told to hold moves all the same."""
+
+_SLIPPING = frozenset({Kind.SLIPPING})
 
 _HIDING = allowance.BLINDING | {
     Kind.OLD_READINGS,
