@@ -1,6 +1,8 @@
 """The tools that drivers bring along: each has a command line of its own, found by entry point."""
 
 from importlib.metadata import entry_points
+from pathlib import Path
+from typing import NoReturn
 
 import typer
 
@@ -24,11 +26,21 @@ def dialect(context: typer.Context) -> None:
 
 
 def commission(context: typer.Context) -> None:
-    """Try a new mount step by step, slowly, with your agreement at each."""
-    _hand_over("commission", context.args)
+    """Try a new mount step by step, slowly, with your agreement at each.
+
+    Refused while a daemon has the mount, or an emergency stop is in force.
+    """
+    from trunnion.files.station import load_station
+    from trunnion.service.commissioning import free_to_commission
+
+    named = [Path(each) for each in context.args if Path(each).is_file()]
+    if not named:
+        _hand_over("commission", context.args)
+    with free_to_commission(load_station(named[0]).files.latch):
+        _hand_over("commission", context.args)
 
 
-def _hand_over(name: str, arguments: list[str]) -> None:
+def _hand_over(name: str, arguments: list[str]) -> NoReturn:
     found = entry_points(group=GROUP, name=name)
     if not found:
         say(f"expected an installed tool {name!r}, and there is none; is the installation whole?")

@@ -13,8 +13,8 @@ from trunnion_drivers.commission.stow_step import stow
 from trunnion_drivers.interface.errors import DriverError
 
 CAUTIONS = """\
-CAUTION. This moves heavy machinery, and nothing here guards it: the elevation floor is kept, the
-horizon mask and the keep-outs are not. Before you go on:
+CAUTION. This moves heavy machinery, and nothing here guards it: goals are chosen above the
+elevation floor, and nothing else keeps floor, horizon mask or keep-outs. Before you go on:
   - nobody stands where the antenna can reach, and the transmitter is off and locked;
   - somebody has a hand on the hard-wired emergency stop, which works without this computer;
   - limit switches are wired to the motors, not only to this program;
