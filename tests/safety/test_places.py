@@ -191,3 +191,10 @@ def test_depth_in_a_sector_across_north_is_the_way_to_its_nearer_side(
     across = Sector("the mast", from_deg, to_deg, 1.1, 60.7)
     limits = replace(LIMITS, clearance=Clearance(5.3, None, (across,)))
     assert depth_deg(Joints(azimuth_deg, 30.1), limits) == pytest.approx(12.0)
+
+
+def test_room_is_kept_over_the_highest_of_all_obstacles() -> None:
+    bare = replace(LIMITS, clearance=Clearance(45.3, None))
+    assert find_at(Joints(130.1, 45.4), bare, -0.2) is not None
+    assert find_at(Joints(130.1, 45.6), bare, -0.2) is None
+    assert find_at(Joints(130.1, 45.4), bare) is None

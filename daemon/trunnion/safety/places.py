@@ -27,6 +27,8 @@ def find_at(
 ) -> Hazard | None:
     """What forbids this place, if anything; `allowance_deg` forgives that much below or outside.
 
+    Below zero it asks for that much more room.
+
     Inside a circle nothing is forgiven: it moves, and would be forgiven again and again.
     """
     mount = limits.mount
@@ -41,7 +43,7 @@ def find_at(
             finding = f"joints at {first_deg:.1f}°/{second_deg:.1f}° are in {box.name}"
             return Hazard(Rule.KEEP_OUT, finding)
     azimuth_deg, elevation_deg = mount.hinges.boresight(place)
-    if elevation_deg > limits.clearance.free_above_deg:
+    if elevation_deg + min(allowance_deg, 0.0) > limits.clearance.free_above_deg:
         return None
     return _find_in_sky(azimuth_deg, elevation_deg, limits, allowance_deg)
 
