@@ -64,7 +64,7 @@ class Checker:
         mount = scenario.mount
         self._braking_s = max(_braking_s(mount.first), _braking_s(mount.second))
         self._begins_outside = self._is_outside = not self._is_inside(scenario.start)
-        self._trail: deque[Joints] = deque(maxlen=round(1.0 / TICK_S) + 1)
+        self._trail: deque[tuple[float, Joints]] = deque()
 
     def note(self, now: Instant) -> Iterator[Violation]:
         """What this instant violates."""
@@ -286,9 +286,11 @@ class Checker:
 
     def _returns_slowly(self, now: Instant) -> str | None:
         """Told to come back inside: by the shortest way, slowly, never further out."""
-        place, last = now.true.joints, self._trail[-1] if self._trail else self._scenario.start
-        self._trail.append(place)
-        moved_deg = _apart_deg(place, self._trail[0])
+        place, last = now.true.joints, self._trail[-1][1] if self._trail else self._scenario.start
+        self._trail.append((now.since_s, place))
+        while self._trail[0][0] < now.since_s - 1.0 - 0.5 * TICK_S:
+            self._trail.popleft()  # a dead process shows no instants, and the mount moves on
+        moved_deg = _apart_deg(place, self._trail[0][1])
         bent_deg = allowance.bent_deg(self._scenario, now.since_s)
         if moved_deg > RETURN_DEG + bent_deg:
             return f"comes back inside by {moved_deg:.2f}° in a second"
