@@ -58,13 +58,13 @@ def excused_deg(scenario: Scenario, since_s: float) -> float:
     return ENCODER_ERROR_DEG + sum(offsets_deg) + bent_deg(scenario, since_s)
 
 
-def bent_deg(scenario: Scenario, since_s: float) -> float:
-    """How far the wind bends the antenna, at most, until the readings have told of it."""
+def bent_deg(scenario: Scenario, since_s: float, grace_s: float = BENT_S) -> float:
+    """How far the wind bends the antenna, at most, or has within the last `grace_s` seconds."""
     return max(
         (
             abs(each.amount)
             for each in scenario.mishaps
-            if each.kind is Kind.WIND_PUSH and each.is_on(since_s, BENT_S)
+            if each.kind is Kind.WIND_PUSH and each.is_on(since_s, grace_s)
         ),
         default=0.0,
     )

@@ -281,8 +281,8 @@ class Checker:
         return None if is_still else f"moved {moved_deg:.2f}° from outside"
 
     def _still_deg(self, now: Instant) -> float:
-        """What counts as no motion: wind bends an antenna whose joints stand still."""
-        return STILL_DEG + allowance.bent_deg(self._scenario, now.since_s)
+        """What counts as no motion: wind bends an antenna whose joints stand still, and lets go."""
+        return STILL_DEG + allowance.bent_deg(self._scenario, now.since_s, grace_s=inf)
 
     def _returns_slowly(self, now: Instant) -> str | None:
         """Told to come back inside: by the shortest way, slowly, never further out."""
