@@ -8,7 +8,7 @@ import typer
 
 from trunnion.cli.arguments import AsJson
 from trunnion.cli.errors import FAILED
-from trunnion.cli.output import print_json, print_text, progress
+from trunnion.cli.output import print_json, print_text, progress, say
 
 if TYPE_CHECKING:
     from trunnion.service.torture.campaign import SeedResult
@@ -27,22 +27,35 @@ def torture(
 ) -> None:
     """Fly invented stations through contacts full of faults, and judge what truly happened.
 
-    The same seed is the same flight. Moves no real mount. Exit code 1 when a promise was broken.
+    The same seed is the same flight. Moves no real mount. Ctrl-C ends it early and tells what was
+    flown. Exit code 1 when a promise was broken, or it was ended early.
     """
-    from trunnion.service.torture.campaign import try_seeds
-
-    results = []
-    with progress("torturing", count) as advance:
-        for result in try_seeds(range(seed, seed + count), workers or os.cpu_count() or 1):
-            results.append(result)
-            advance(1)
+    seeds = range(seed, seed + count)
+    results = _flown(seeds, workers or os.cpu_count() or 1)
+    if not results:
+        raise typer.Exit(FAILED)
     failed = [each for each in results if each.violations]
     if as_json:
         print_json(_plain(results, failed))
     else:
         _print(results, failed)
-    if failed:
+    if failed or len(results) < len(seeds):
         raise typer.Exit(FAILED)
+
+
+def _flown(seeds: range, workers: int) -> "list[SeedResult]":
+    """What came of the seeds, in order; of fewer of them where somebody has had enough."""
+    from trunnion.service.torture.campaign import try_seeds
+
+    results: list[SeedResult] = []
+    try:
+        with progress("torturing", len(seeds)) as advance:
+            for result in try_seeds(seeds, workers):
+                results.append(result)
+                advance(1)
+    except KeyboardInterrupt:
+        say(f"ended early, after {len(results)} of {len(seeds)} stations")
+    return results
 
 
 def _plain(results: "list[SeedResult]", failed: "list[SeedResult]") -> dict[str, object]:

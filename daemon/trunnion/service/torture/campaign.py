@@ -1,6 +1,7 @@
 """Many seeds, on all cores: what failed, what was lost, and how to see it again."""
 
 import logging
+import signal
 from collections.abc import Iterator
 from concurrent.futures import ProcessPoolExecutor
 from multiprocessing import get_context
@@ -45,11 +46,17 @@ def _keep_quiet() -> None:
     logging.getLogger("trunnion").addHandler(logging.NullHandler())
 
 
+def _begin_worker() -> None:
+    """A Ctrl-C is for the process that tells what was flown."""
+    signal.signal(signal.SIGINT, signal.SIG_IGN)
+    _keep_quiet()
+
+
 def try_seeds(seeds: range, workers: int) -> Iterator[SeedResult]:
     """Fly every seed of a range, in order, in so many processes; one works in this process."""
     _keep_quiet()
     if workers == 1:
         yield from map(try_seed, seeds)
         return
-    with ProcessPoolExecutor(workers, get_context("spawn"), _keep_quiet) as pool:
+    with ProcessPoolExecutor(workers, get_context("spawn"), _begin_worker) as pool:
         yield from pool.map(try_seed, seeds, chunksize=CHUNK)
