@@ -5,7 +5,7 @@ from math import dist
 import erfa
 import numpy as np
 import pytest
-from hypothesis import given
+from hypothesis import example, given
 from hypothesis import strategies as st
 
 from trunnion.sky.errors import SkyError
@@ -15,6 +15,9 @@ WGS84 = 1
 """ERFA's number of the ellipsoid."""
 
 
+@example(90.0, 33.3, 4.1)
+@example(-90.0, -12.7, 2835.0)
+@example(31.5, 35.5, -430.0)
 @given(st.floats(-90.0, 90.0), st.floats(-180.0, 180.0), st.floats(-500.0, 9000.0))
 def test_place_and_meridian_are_erfas_and_the_axes_are_a_frame(
     latitude_deg: float, longitude_deg: float, height_m: float
