@@ -181,3 +181,10 @@ def test_a_key_at_a_terminal_is_seen_without_return(monkeypatch: pytest.MonkeyPa
         time.sleep(0.05)
         assert operator.wants_stop()
     os.close(near)
+
+
+@pytest.mark.parametrize("creep", ["0", "-1.3", "10.1", "nan", "inf"])
+def test_a_slow_motion_is_slow(creep: str, capsys: pytest.CaptureFixture[str]) -> None:
+    with pytest.raises(SystemExit):
+        main(["station.yaml", f"--creep={creep}"])
+    assert f"expected more than 0 and at most 10, got {creep}" in capsys.readouterr().err

@@ -21,6 +21,8 @@ from trunnion_drivers.interface.driver import Driver
 from trunnion_drivers.interface.errors import BadSettings, SettingProblem
 from trunnion_drivers.interface.values import Clock
 
+FASTEST_CREEP_DEG_S = 10.0
+
 
 class _SystemClock:
     def monotonic_s(self) -> float:
@@ -63,14 +65,25 @@ def _now(pattern: str) -> str:
     return time.strftime(pattern, time.gmtime())
 
 
+def _creep_deg_s(text: str) -> float:
+    """Above zero: at no speed, or a negative one, nothing would hold the mount to a slow one."""
+    creep_deg_s = float(text)
+    if not 0.0 < creep_deg_s <= FASTEST_CREEP_DEG_S:
+        raise argparse.ArgumentTypeError(
+            f"expected more than 0 and at most {FASTEST_CREEP_DEG_S:g}, got {text}"
+        )
+    return creep_deg_s
+
+
 def _parser() -> argparse.ArgumentParser:
     parser = argparse.ArgumentParser(prog="trunnion commission", description=__doc__)
     parser.add_argument("station", type=Path, help="the station file")
     parser.add_argument(
         "--creep",
-        type=float,
+        type=_creep_deg_s,
         default=CREEP_DEG_S,
-        help=f"degrees a second of slow motions; default {CREEP_DEG_S:g}",
+        help=f"degrees a second of slow motions, {FASTEST_CREEP_DEG_S:g} at most; "
+        f"default {CREEP_DEG_S:g}",
     )
     return parser
 
